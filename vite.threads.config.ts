@@ -1,0 +1,17 @@
+import { fileURLToPath } from 'node:url';
+import { defineConfig } from 'vite';
+
+/** Bundles what runs in worker threads; after the application's own build, because the adapter empties build/. */
+export default defineConfig({
+	publicDir: false,
+	resolve: { alias: { $lib: fileURLToPath(new URL('./src/lib', import.meta.url)) } },
+	build: {
+		ssr: true,
+		outDir: 'build/threads',
+		emptyOutDir: true,
+		rollupOptions: {
+			input: { 'engine-task': 'src/lib/server/compute/task.ts' },
+			output: { format: 'es', entryFileNames: '[name].js' }
+		}
+	}
+});
