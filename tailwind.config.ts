@@ -46,7 +46,9 @@ export default {
 			title: ['25px', '1.15'],
 			display: ['36px', '1.1']
 		},
-		spacing: Object.fromEntries([0, 1, 2, 3, 4, 5, 6, 7, 8, 10, 12, 14, 16, 20, 24].map((n) => [n, `${n * 4}px`])),
+		spacing: Object.fromEntries(
+			[0, 1, 2, 3, 4, 5, 6, 7, 8, 10, 12, 14, 16, 20, 24].map((n) => [n, `${n * 4}px`])
+		),
 		screens: { phone: { max: '600px' }, narrow: { max: '1100px' }, wide: '1101px' }
 	}
 } satisfies Config;

@@ -1,0 +1,102 @@
+import { z } from 'zod';
+import type { ForceRequestOf } from '../engine/contract.ts';
+import { permeabilityModel, permittivityModel } from './permittivity.ts';
+
+/** The contract's request to the engine, for callers outside: a material is a pinned version or a model in place. */
+
+/** What a request gets where it is silent. */
+export const FORCE_DEFAULTS = { relativeAccuracy: 1e-6, temperatureK: 300 } as const;
+
+export const SEPARATIONS_MAX = 2000;
+export const LAYERS_MAX = 40;
+
+export const versionRef = z
+	.string()
+	.max(120)
+	.regex(/^[a-z0-9]+(-[a-z0-9]+)*@\d+\.\d+$/, 'a version is named slug@major.minor, as gold-drude@1.0')
+	.meta({ id: 'VersionRef', example: 'gold-drude@1.0' });
+
+export const zeroFrequencyRule = z.enum(['drude', 'plasma', 'ideal']).meta({ id: 'ZeroFrequencyRule' });
+
+const pinned = z.strictObject({ version: versionRef, zeroFrequency: zeroFrequencyRule.optional() });
+const inPlace = z.strictObject({
+	permittivity: permittivityModel,
+	permeability: permeabilityModel.optional(),
+	zeroFrequency: zeroFrequencyRule.optional()
+});
+
+export type PinnedMaterial = z.infer<typeof pinned>;
+export type InPlaceMaterial = z.infer<typeof inPlace>;
+export type MaterialChoice = PinnedMaterial | InPlaceMaterial;
+
+/** Told apart by the field `version`, so that a slip inside a model is reported where it is and not as "no alternative fits". */
+export const materialChoice: z.ZodType<MaterialChoice> = z
+	.unknown()
+	.transform((value, context): MaterialChoice => {
+		const named = typeof value === 'object' && value !== null && 'version' in value;
+		const parsed = (named ? pinned : inPlace).safeParse(value);
+		if (parsed.success) return parsed.data;
+		for (const { path, message } of parsed.error.issues) context.addIssue({ code: 'custom', path, message });
+		return z.NEVER;
+	})
+	.meta({ id: 'Material' });
+
+/** The same for the API's description, where a transform cannot be drawn. */
+export const materialChoiceDescribed = z.union([pinned, inPlace]).meta({ id: 'Material' });
+
+const lengthNm = z.number().positive();
+
+export const body = z.strictObject({
+	layers: z
+		.array(z.strictObject({ of: materialChoice, thicknessNm: lengthNm }))
+		.max(LAYERS_MAX)
+		.default([]),
+	substrate: materialChoice
+});
+
+const radiusUm = z.number().positive().max(1e6);
+
+export const shape = z
+	.discriminatedUnion('kind', [
+		z.strictObject({ kind: z.literal('plates') }),
+		z.strictObject({ kind: z.literal('spherePlate'), radiusUm }),
+		z.strictObject({ kind: z.literal('spheres'), leftRadiusUm: radiusUm, rightRadiusUm: radiusUm }),
+		z.strictObject({ kind: z.literal('crossedCylinders'), leftRadiusUm: radiusUm, rightRadiusUm: radiusUm }),
+		z.strictObject({ kind: z.literal('cylinderPlate'), radiusUm }),
+		z.strictObject({ kind: z.literal('parallelCylinders'), leftRadiusUm: radiusUm, rightRadiusUm: radiusUm })
+	])
+	.meta({ id: 'Shape' });
+
+export const arrangement = z.strictObject({
+	left: body,
+	medium: materialChoice,
+	right: body,
+	shape: shape.default({ kind: 'plates' }),
+	temperatureK: z.number().nonnegative().default(FORCE_DEFAULTS.temperatureK),
+	debyeLengthNm: lengthNm.optional()
+});
+
+export const separations = z.union([
+	z.array(lengthNm).min(1).max(SEPARATIONS_MAX),
+	z.strictObject({
+		from: lengthNm,
+		to: lengthNm,
+		count: z.int().min(1).max(SEPARATIONS_MAX),
+		spacing: z.enum(['log', 'linear']).default('log')
+	})
+]);
+
+export const forceRequest = z.strictObject({
+	arrangement,
+	separationsNm: separations,
+	relativeAccuracy: z.number().min(1e-11).max(1e-3).default(FORCE_DEFAULTS.relativeAccuracy),
+	include: z
+		.array(z.enum(['breakdown']))
+		.max(1)
+		.default([])
+});
+
+/** As it comes in, defaults still open. */
+export type ForceRequestInput = z.input<typeof forceRequest>;
+/** Complete: every default filled in. */
+export type ForceRequestComplete = ForceRequestOf<MaterialChoice>;
