@@ -1,0 +1,28 @@
+import { z } from 'zod';
+import { versionSummary } from './version.ts';
+
+/** One line of permittivity data for one material. */
+
+export const datasetSlug = z
+	.string()
+	.max(100)
+	.regex(/^[a-z0-9]+(-[a-z0-9]+)*$/, 'lower-case letters, digits and single hyphens, as gold-lorentz-drude');
+
+export const datasetFields = z.strictObject({
+	slug: datasetSlug,
+	title: z.string().min(1).max(200),
+	material: z.string()
+});
+
+/** Versions newest first; `latest` is the number of the newest published one. */
+export const datasetWithVersions = z
+	.object({
+		slug: datasetSlug,
+		title: z.string(),
+		latest: z.string().nullable(),
+		versions: z.array(versionSummary)
+	})
+	.meta({ id: 'DatasetWithVersions' });
+
+export type DatasetFields = z.infer<typeof datasetFields>;
+export type DatasetWithVersions = z.infer<typeof datasetWithVersions>;
