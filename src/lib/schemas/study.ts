@@ -1,0 +1,124 @@
+import { z } from 'zod';
+import { LAYERS_MAX, shape, versionRef, zeroFrequencyRule } from './force.ts';
+
+/**
+ * A study as an address carries it: one arrangement of pinned versions, up to five model choices that each name only what
+ * they change, and where the reader stands (quantity, range, hairline). Results are never part of it: they follow from it.
+ */
+
+export const CHOICES_MAX = 5;
+export const CHOICE_NAME_MAX = 60;
+/** Widest axis: what the engine accepts. */
+export const SEPARATION_RANGE_NM = { min: 0.1, max: 1e6 } as const;
+export const THICKNESS_RANGE_NM = { min: 0.1, max: 1e6 } as const;
+export const TEMPERATURE_RANGE_K = { min: 0.5, max: 5000 } as const;
+
+export const slotMaterial = z.strictObject({
+	version: versionRef,
+	/** Absent: the limit of the model as written. */
+	zeroFrequency: zeroFrequencyRule.optional()
+});
+
+export const studyLayer = z.strictObject({
+	of: slotMaterial,
+	thicknessNm: z.number().min(THICKNESS_RANGE_NM.min).max(THICKNESS_RANGE_NM.max)
+});
+
+/** Layers run from the gap outwards, as in the engine's request. */
+export const studyBody = z.strictObject({
+	layers: z.array(studyLayer).max(LAYERS_MAX),
+	substrate: slotMaterial
+});
+
+/** `left`, `medium`, `right` are the substrates and the medium; `left1` is the left layer nearest the gap. */
+export const slotName = z
+	.string()
+	.regex(/^(medium|(left|right)([1-9]\d?)?)$/, 'a place is left, left1, medium, right, ...');
+
+/** What a choice changes at one place. `written` takes back a rule that the arrangement sets. */
+export const slotChange = z.strictObject({
+	version: versionRef.optional(),
+	zeroFrequency: z.union([zeroFrequencyRule, z.literal('written')]).optional()
+});
+
+export const modelChoice = z.strictObject({
+	name: z.string().max(CHOICE_NAME_MAX),
+	changes: z.record(slotName, slotChange),
+	/** `none` takes the ions out of an arrangement that has them. */
+	debyeLengthNm: z.union([z.number().min(0.1).max(1e6), z.literal('none')]).optional()
+});
+
+export const QUANTITIES = ['pressure', 'energy', 'gradient', 'force'] as const;
+export const quantity = z.enum(QUANTITIES);
+
+const separationNm = z.number().min(SEPARATION_RANGE_NM.min).max(SEPARATION_RANGE_NM.max);
+
+export const study = z.strictObject({
+	left: studyBody,
+	medium: slotMaterial,
+	right: studyBody,
+	shape,
+	temperatureK: z.union([z.literal(0), z.number().min(TEMPERATURE_RANGE_K.min).max(TEMPERATURE_RANGE_K.max)]),
+	debyeLengthNm: z.number().min(0.1).max(1e6).optional(),
+	choices: z.array(modelChoice).min(1).max(CHOICES_MAX),
+	fromNm: separationNm,
+	toNm: separationNm,
+	quantity,
+	/** The red hairline. */
+	atNm: separationNm,
+	/** The grey, parked one. */
+	parkedNm: separationNm.optional(),
+	/** What the comparison strip holds the curves against: ideal conductors, or the choice with this index. */
+	against: z.union([
+		z.literal('ideal'),
+		z
+			.int()
+			.min(0)
+			.max(CHOICES_MAX - 1)
+	])
+});
+
+export type SlotMaterial = z.infer<typeof slotMaterial>;
+export type StudyLayer = z.infer<typeof studyLayer>;
+export type StudyBody = z.infer<typeof studyBody>;
+export type SlotChange = z.infer<typeof slotChange>;
+export type ModelChoice = z.infer<typeof modelChoice>;
+export type Quantity = z.infer<typeof quantity>;
+export type Study = z.infer<typeof study>;
+export type Side = 'left' | 'right';
+
+/** Letters by which the choices are called everywhere. */
+export const choiceLetter = (index: number): string => 'ABCDE'[index] ?? String(index + 1);
+
+/** Every place of an arrangement in the order of the drawing, left to right. */
+export function slotsOf(study: Study): string[] {
+	const layers = (side: Side) => study[side].layers.map((_, index) => `${side}${index + 1}`);
+	return ['left', ...layers('left').reverse(), 'medium', ...layers('right'), 'right'];
+}
+
+/** What the arrangement itself puts at a place; undefined where the place does not exist. */
+export function materialAt(study: Study, slot: string): SlotMaterial | undefined {
+	if (slot === 'medium') return study.medium;
+	const side: Side = slot.startsWith('left') ? 'left' : 'right';
+	const layer = Number(slot.slice(side.length));
+	return layer === 0 ? study[side].substrate : study[side].layers[layer - 1]?.of;
+}
+
+/** What a choice puts at a place: the arrangement's material with the choice's change laid over it. */
+export function materialIn(study: Study, choice: ModelChoice, slot: string): SlotMaterial | undefined {
+	const base = materialAt(study, slot);
+	const change = choice.changes[slot];
+	if (!base || !change) return base;
+	const version = change.version ?? base.version;
+	const rule = change.zeroFrequency ?? base.zeroFrequency;
+	return rule === undefined || rule === 'written' ? { version } : { version, zeroFrequency: rule };
+}
+
+/** Every version a study names, in the arrangement or in a choice, each once. */
+export function versionsOf(study: Study): string[] {
+	const named = slotsOf(study).map((slot) => materialAt(study, slot)?.version);
+	const changed = study.choices.flatMap((choice) =>
+		Object.values(choice.changes).map(({ version }) => version)
+	);
+	return [...new Set([...named, ...changed])].filter((version) => version !== undefined);
+}
