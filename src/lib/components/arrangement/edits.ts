@@ -1,0 +1,194 @@
+import type { ZeroFrequencyRule } from '../../engine/contract.ts';
+import {
+	CHOICES_MAX,
+	type ModelChoice,
+	type Side,
+	type SlotChange,
+	type SlotMaterial,
+	type Study,
+	type StudyLayer
+} from '../../schemas/study.ts';
+
+/** Edits of a study: each answers a new one and leaves the old as it was, so that undo is a list of studies. */
+
+export type Edit = (study: Study) => Study;
+
+/** Rewrites the places that the choices name; a place that maps to undefined has gone, and its change with it. */
+function renamed(choices: ModelChoice[], rename: (slot: string) => string | undefined): ModelChoice[] {
+	return choices.map((choice) => {
+		const changes: Record<string, SlotChange> = {};
+		for (const [slot, change] of Object.entries(choice.changes)) {
+			const now = rename(slot);
+			if (now !== undefined) changes[now] = change;
+		}
+		return { ...choice, changes };
+	});
+}
+
+/** Puts the layers of a side into a new order; `order` lists the old positions, -1 a layer that was not there. */
+function withLayers(study: Study, side: Side, layers: StudyLayer[], order: readonly number[]): Study {
+	const pattern = new RegExp(`^${side}(\\d+)$`);
+	const rename = (slot: string) => {
+		const position = pattern.exec(slot)?.[1];
+		if (position === undefined) return slot;
+		const now = order.indexOf(Number(position) - 1);
+		return now < 0 ? undefined : `${side}${now + 1}`;
+	};
+	return { ...study, [side]: { ...study[side], layers }, choices: renamed(study.choices, rename) };
+}
+
+const positions = (layers: readonly StudyLayer[]) => layers.map((_, index) => index);
+
+/** A layer on the surface, next to the gap. */
+export function addLayer(side: Side, layer: StudyLayer): Edit {
+	return (study) => {
+		const { layers } = study[side];
+		return withLayers(study, side, [layer, ...layers], [-1, ...positions(layers)]);
+	};
+}
+
+export function removeLayer(side: Side, index: number): Edit {
+	return (study) => {
+		const order = positions(study[side].layers).filter((position) => position !== index);
+		return withLayers(
+			study,
+			side,
+			order.map((position) => study[side].layers[position]),
+			order
+		);
+	};
+}
+
+export function moveLayer(side: Side, from: number, to: number): Edit {
+	return (study) => {
+		const { layers } = study[side];
+		if (to < 0 || to >= layers.length || from === to) return study;
+		const order = positions(layers).filter((position) => position !== from);
+		order.splice(to, 0, from);
+		return withLayers(
+			study,
+			side,
+			order.map((position) => layers[position]),
+			order
+		);
+	};
+}
+
+export function setThickness(side: Side, index: number, thicknessNm: number): Edit {
+	return (study) => {
+		const layers = study[side].layers.map((layer, at) => (at === index ? { ...layer, thicknessNm } : layer));
+		return { ...study, [side]: { ...study[side], layers } };
+	};
+}
+
+function withMaterial(study: Study, slot: string, material: SlotMaterial): Study {
+	if (slot === 'medium') return { ...study, medium: material };
+	const side: Side = slot.startsWith('left') ? 'left' : 'right';
+	const layer = Number(slot.slice(side.length));
+	if (layer === 0) return { ...study, [side]: { ...study[side], substrate: material } };
+	const layers = study[side].layers.map((old, index) =>
+		index === layer - 1 ? { ...old, of: material } : old
+	);
+	return { ...study, [side]: { ...study[side], layers } };
+}
+
+/**
+ * Another material at a place. Rule and choices that spoke of the old one go with it: a choice that kept the old
+ * substance would show no change where the reader just made one.
+ */
+export function setMaterial(slot: string, version: string): Edit {
+	return (study) => ({
+		...withMaterial(study, slot, { version }),
+		choices: renamed(study.choices, (place) => (place === slot ? undefined : place))
+	});
+}
+
+/** Another version of the same material: rule and choices stay. */
+export function setVersion(slot: string, material: SlotMaterial, version: string): Edit {
+	return (study) => withMaterial(study, slot, { ...material, version });
+}
+
+/** How the static term of a conductor is taken; undefined for the limit of its model as written. */
+export function setRule(slot: string, material: SlotMaterial, rule: ZeroFrequencyRule | undefined): Edit {
+	const { version } = material;
+	return (study) =>
+		withMaterial(study, slot, rule === undefined ? { version } : { version, zeroFrequency: rule });
+}
+
+export function swapBodies(): Edit {
+	return (study) => ({
+		...study,
+		left: study.right,
+		right: study.left,
+		choices: renamed(study.choices, (slot) =>
+			slot.replace(/^(left|right)/, (side) => (side === 'left' ? 'right' : 'left'))
+		)
+	});
+}
+
+/** Fields of the whole arrangement. A quantity that a new shape does not have falls back to pressure. */
+export function setConditions(
+	fields: Partial<
+		Pick<Study, 'shape' | 'temperatureK' | 'debyeLengthNm' | 'fromNm' | 'toNm' | 'quantity' | 'against'>
+	>
+): Edit {
+	return (study) => {
+		const next = { ...study, ...fields };
+		if (next.debyeLengthNm === undefined) delete next.debyeLengthNm;
+		if (next.shape.kind === 'plates' && next.quantity === 'force') next.quantity = 'pressure';
+		const inside = (value: number) => Math.min(next.toNm, Math.max(next.fromNm, value));
+		next.atNm = inside(next.atNm);
+		if (next.parkedNm !== undefined) next.parkedNm = inside(next.parkedNm);
+		return next;
+	};
+}
+
+/** A further choice that begins as the last one. */
+export function addChoice(): Edit {
+	return (study) => {
+		if (study.choices.length >= CHOICES_MAX) return study;
+		const last = study.choices[study.choices.length - 1];
+		return { ...study, choices: [...study.choices, { ...last, name: '' }] };
+	};
+}
+
+export function removeChoice(index: number): Edit {
+	return (study) => {
+		if (study.choices.length === 1) return study;
+		const { against } = study;
+		const shifted = typeof against === 'number' && against > index ? against - 1 : against;
+		return {
+			...study,
+			choices: study.choices.filter((_, at) => at !== index),
+			against: against === index ? 'ideal' : shifted
+		};
+	};
+}
+
+function withChoice(study: Study, index: number, change: (choice: ModelChoice) => ModelChoice): Study {
+	return { ...study, choices: study.choices.map((choice, at) => (at === index ? change(choice) : choice)) };
+}
+
+export function renameChoice(index: number, name: string): Edit {
+	return (study) => withChoice(study, index, (choice) => ({ ...choice, name }));
+}
+
+/** What a choice changes at a place; an empty change takes the place back to the arrangement's. */
+export function setChange(index: number, slot: string, change: SlotChange): Edit {
+	return (study) =>
+		withChoice(study, index, (choice) => {
+			const changes = { ...choice.changes };
+			if (change.version === undefined && change.zeroFrequency === undefined) delete changes[slot];
+			else changes[slot] = change;
+			return { ...choice, changes };
+		});
+}
+
+export function setChoiceIons(index: number, debyeLengthNm: ModelChoice['debyeLengthNm']): Edit {
+	return (study) =>
+		withChoice(study, index, ({ name, changes }) => ({
+			name,
+			changes,
+			...(debyeLengthNm === undefined ? {} : { debyeLengthNm })
+		}));
+}
