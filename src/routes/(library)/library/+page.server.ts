@@ -1,0 +1,9 @@
+import * as materials from '$lib/server/library/materials.ts';
+import { answered } from '../answered.ts';
+import { decodeView } from './library-address.ts';
+import type { PageServerLoad } from './$types';
+
+export const load: PageServerLoad = async ({ url }) => {
+	const { view, problems } = decodeView(url.searchParams);
+	return { view, problems, library: await answered(() => materials.library(view)) };
+};
