@@ -1,0 +1,211 @@
+import type { ArrangementOf, BodyOf, MaterialModel } from '$lib/engine/contract.ts';
+import {
+	electricSusceptibility,
+	imaginaryFrequency,
+	magneticSusceptibility,
+	permittivityDifference,
+	slowMaterial,
+	type SlowMaterial,
+	type TermCache
+} from './slow-lifshitz-permittivity.ts';
+
+/**
+ * Reflection by admittances (methods.md, section 3): Y = eps/kappa for TM, kappa/mu for TE, carried from the substrate
+ * to the gap as the difference W = Y - Y_gap, so that nothing is lost where body and medium are nearly alike.
+ * With W, r_TM = W/(2 Y_gap + W) and r_TE = -W/(2 Y_gap + W). Lengths are in units of 2d, wave numbers of 1/(2d).
+ */
+
+/** One layer or substrate at one frequency. */
+export interface Medium {
+	/** eps_j - eps_m; Infinity where the layer screens completely. */
+	difference: number;
+	eps: number;
+	mu: number;
+	muDifference: number;
+	/** (eps_j - eps_m) (2d xi/c)^2 in TE; at n = 0 the plasma term. */
+	teContrast: number;
+	/** kappa_j^2 - k^2 in TM and TE. */
+	tmShift: number;
+	teShift: number;
+	tmMirror: boolean;
+	teMirror: boolean;
+	/** thickness/d, so that kappa t = kappa * ratio/2; Infinity for the substrate. */
+	ratio: number;
+}
+
+/** Everything of the arrangement that the integral over u needs at one frequency. */
+export interface Setting {
+	left: Medium[];
+	right: Medium[];
+	eps: number;
+	mu: number;
+	/** 2d q at k = 0. */
+	lowest: number;
+	/** (2d xi/c)^2 */
+	phaseSquared: number;
+	/** 2d/(Debye length) at n = 0, else 0. */
+	screening: number;
+	/** Relative error of the contrasts, from tables that were subtracted in doubles. */
+	contrastError: number;
+}
+
+interface PreparedBody {
+	layers: { of: SlowMaterial; thickness: number }[];
+}
+
+export interface PreparedArrangement {
+	left: PreparedBody;
+	medium: SlowMaterial;
+	right: PreparedBody;
+	debyeLength: number | undefined;
+}
+
+function prepareBody(body: BodyOf<MaterialModel>): PreparedBody {
+	const layers = body.layers.map((layer) => ({
+		of: slowMaterial(layer.of),
+		thickness: layer.thicknessNm * 1e-9
+	}));
+	return { layers: [...layers, { of: slowMaterial(body.substrate), thickness: Infinity }] };
+}
+
+export function prepareArrangement(arrangement: ArrangementOf<MaterialModel>): PreparedArrangement {
+	return {
+		left: prepareBody(arrangement.left),
+		medium: slowMaterial(arrangement.medium),
+		right: prepareBody(arrangement.right),
+		debyeLength: arrangement.debyeLengthNm === undefined ? undefined : arrangement.debyeLengthNm * 1e-9
+	};
+}
+
+const SPEED_OF_LIGHT = 299792458;
+const EV_TO_RAD_PER_S = (1.602176634e-19 * 2 * Math.PI) / 6.62607015e-34;
+
+/** The setting at imaginary frequency xi; xi = 0 takes the zero-frequency rules. */
+export function settingAt(prepared: PreparedArrangement, xi: number, distance: number): Setting {
+	const frequency = imaginaryFrequency(xi);
+	const cache: TermCache = new Map();
+	const { medium } = prepared;
+	const eps = 1 + electricSusceptibility(medium, frequency, cache);
+	const muChi = magneticSusceptibility(medium.permeability, xi);
+	const mu = 1 + muChi;
+	const phaseSquared = ((2 * distance * xi) / SPEED_OF_LIGHT) ** 2;
+	let contrastError = 0;
+	const place = ({ of, thickness }: { of: SlowMaterial; thickness: number }): Medium => {
+		const layerMuChi = magneticSusceptibility(of.permeability, xi);
+		const layerMu = 1 + layerMuChi;
+		const muDifference = layerMuChi - muChi;
+		const ratio = thickness / distance;
+		const shared = { mu: layerMu, muDifference, ratio };
+		if (of.ideal || (xi === 0 && of.zero.conducts)) {
+			const plasma =
+				xi === 0 ? of.zero.plasmaEnergySquared * ((EV_TO_RAD_PER_S * 2 * distance) / SPEED_OF_LIGHT) ** 2 : 0;
+			const mirror = of.ideal || of.zero.mirror;
+			return {
+				...shared,
+				difference: Infinity,
+				eps: Infinity,
+				teContrast: plasma,
+				tmShift: 0,
+				teShift: layerMu * plasma,
+				tmMirror: true,
+				teMirror: mirror
+			};
+		}
+		const difference = permittivityDifference(of, medium, frequency, cache);
+		if (difference.value !== 0)
+			contrastError = Math.max(contrastError, difference.error / Math.abs(difference.value));
+		const layerEps = 1 + electricSusceptibility(of, frequency, cache);
+		const shift = layerEps * layerMu * phaseSquared;
+		return {
+			...shared,
+			difference: difference.value,
+			eps: layerEps,
+			teContrast: difference.value * phaseSquared,
+			tmShift: shift,
+			teShift: shift,
+			tmMirror: false,
+			teMirror: false
+		};
+	};
+	const left = prepared.left.layers.map(place);
+	const right = prepared.right.layers.map(place);
+	return {
+		left,
+		right,
+		eps,
+		mu,
+		lowest: Math.sqrt(eps * mu * phaseSquared),
+		phaseSquared,
+		screening: xi === 0 && prepared.debyeLength !== undefined ? (2 * distance) / prepared.debyeLength : 0,
+		contrastError
+	};
+}
+
+/**
+ * W of a stack from the W of what lies behind a layer: with Y_1 = Y_0 + a, Y_2 = Y_0 + b and t = tanh(kappa thickness),
+ * Y_1 (Y_2 + Y_1 t)/(Y_1 + Y_2 t) - Y_0 = [b (Y_0 (1 - t) + a) + a t (2 Y_0 + a)]/(Y_1 + Y_2 t).
+ */
+function throughLayer(gap: number, a: number, b: number, phase: number): number {
+	const t = Math.tanh(phase);
+	const fall = Math.exp(-2 * phase);
+	const oneLessT = (2 * fall) / (1 + fall);
+	if (b === Infinity) return (gap * oneLessT + a) / t;
+	return (b * (gap * oneLessT + a) + a * t * (2 * gap + a)) / (gap + a + (gap + b) * t);
+}
+
+/** W in TM at wave number k, q = sqrt(k^2 + lowest^2) in the gap. */
+export function tmExcess(stack: readonly Medium[], setting: Setting, q: number, kSquared: number): number {
+	const gap = setting.eps / q;
+	let excess = 0;
+	for (let j = stack.length - 1; j >= 0; j--) {
+		const layer = stack[j];
+		if (layer.tmMirror) {
+			excess = Infinity;
+			continue;
+		}
+		const kappa = Math.sqrt(kSquared + layer.tmShift);
+		const a =
+			(layer.difference * (q * kappa + kSquared) -
+				setting.eps * layer.eps * layer.muDifference * setting.phaseSquared) /
+			((kappa + q) * kappa * q);
+		excess = layer.ratio === Infinity ? a : throughLayer(gap, a, excess, (kappa * layer.ratio) / 2);
+	}
+	return excess;
+}
+
+export function teExcess(stack: readonly Medium[], setting: Setting, q: number, kSquared: number): number {
+	const gap = q / setting.mu;
+	let excess = 0;
+	for (let j = stack.length - 1; j >= 0; j--) {
+		const layer = stack[j];
+		if (layer.teMirror) {
+			excess = Infinity;
+			continue;
+		}
+		const kappa = Math.sqrt(kSquared + layer.teShift);
+		const product = layer.mu * setting.mu;
+		const a =
+			(product * layer.teContrast - layer.muDifference * (q * kappa + kSquared)) / ((kappa + q) * product);
+		excess = layer.ratio === Infinity ? a : throughLayer(gap, a, excess, (kappa * layer.ratio) / 2);
+	}
+	return excess;
+}
+
+/**
+ * W of the screened static TM term (methods.md, section 2): the potential falls like s = sqrt(k^2 + screening^2) in the
+ * gap and like k in the bodies, and the admittance is eps times that.
+ */
+export function screenedExcess(stack: readonly Medium[], setting: Setting, s: number, k: number): number {
+	const gap = setting.eps * s;
+	let excess = 0;
+	for (let j = stack.length - 1; j >= 0; j--) {
+		const layer = stack[j];
+		if (layer.tmMirror) {
+			excess = Infinity;
+			continue;
+		}
+		const a = layer.difference * k - (setting.eps * setting.screening ** 2) / (s + k);
+		excess = layer.ratio === Infinity ? a : throughLayer(gap, a, excess, (k * layer.ratio) / 2);
+	}
+	return excess;
+}
