@@ -8,7 +8,7 @@ import {
 	TooManyRequests,
 	type Issue
 } from '../errors.ts';
-import { BadRequest, Unavailable } from '../limits/refusals.ts';
+import { BadRequest, Cancelled, Unavailable } from '../limits/refusals.ts';
 import { log } from '../log.ts';
 
 /** The one place where an error becomes an answer of the API. */
@@ -37,6 +37,8 @@ export function knownProblem(error: unknown): Problem | undefined {
 	if (error instanceof Unavailable) {
 		return { ...plain(503, error.code, error), headers: retryAfter(error.retryAfterSeconds) };
 	}
+	// Nobody reads this answer; the number is what the request log shows.
+	if (error instanceof Cancelled) return plain(499, 'cancelled', error);
 	return undefined;
 }
 

@@ -24,3 +24,12 @@ export class Unavailable extends Error {
 		super(message);
 	}
 }
+
+/** Whoever asked has gone away; nobody reads the answer. */
+export class Cancelled extends Error {
+	override readonly name = 'Cancelled';
+
+	constructor() {
+		super('The caller has gone away.');
+	}
+}

@@ -1,0 +1,79 @@
+import type {
+	ArrangementOf,
+	BodyOf,
+	ForceRequest,
+	MaterialModel,
+	PermittivityModel
+} from '../../engine/contract.ts';
+import type { ForceRequestComplete, MaterialChoice } from '../../schemas/force.ts';
+import { InvalidInput, type Issue } from '../errors.ts';
+import { canonicalJson, sha256 } from '../library/canonical.ts';
+
+/** From what a caller asks to what the engine computes: pinned versions replaced by their models. */
+
+/** A material of a request with its place, as `arrangement.left.layers[0].of`. */
+interface Slot {
+	path: string;
+	choice: MaterialChoice;
+}
+
+export function slotsOf({ left, medium, right }: ArrangementOf<MaterialChoice>): Slot[] {
+	const body = (side: 'left' | 'right', { layers, substrate }: BodyOf<MaterialChoice>): Slot[] => [
+		...layers.map(({ of }, index) => ({ path: `arrangement.${side}.layers[${index}].of`, choice: of })),
+		{ path: `arrangement.${side}.substrate`, choice: substrate }
+	];
+	return [...body('left', left), { path: 'arrangement.medium', choice: medium }, ...body('right', right)];
+}
+
+/** The versions that a request names, each once, in the order of their first appearance. */
+export function pinnedVersions(request: ForceRequestComplete): string[] {
+	return [
+		...new Set(
+			slotsOf(request.arrangement).flatMap(({ choice }) => ('version' in choice ? [choice.version] : []))
+		)
+	];
+}
+
+/**
+ * @param modelOf the model of a pinned version; undefined where there is none
+ * @throws InvalidInput naming every slot whose version does not exist
+ */
+export function resolveRequest(
+	request: ForceRequestComplete,
+	modelOf: (version: string) => PermittivityModel | undefined
+): ForceRequest {
+	const missing: Issue[] = slotsOf(request.arrangement).flatMap(({ path, choice }) =>
+		'version' in choice && !modelOf(choice.version)
+			? [{ path: `${path}.version`, message: `there is no published version ${choice.version}` }]
+			: []
+	);
+	if (missing.length > 0) {
+		throw new InvalidInput(
+			'The request names a version that the library does not have.',
+			missing,
+			'unknown-version'
+		);
+	}
+	const material = (choice: MaterialChoice): MaterialModel => {
+		if (!('version' in choice)) return choice;
+		const permittivity = modelOf(choice.version) as PermittivityModel;
+		return choice.zeroFrequency ? { permittivity, zeroFrequency: choice.zeroFrequency } : { permittivity };
+	};
+	const body = ({ layers, substrate }: BodyOf<MaterialChoice>): BodyOf<MaterialModel> => ({
+		layers: layers.map(({ of, thicknessNm }) => ({ of: material(of), thicknessNm })),
+		substrate: material(substrate)
+	});
+	const { left, medium, right, ...rest } = request.arrangement;
+	return {
+		...request,
+		arrangement: { ...rest, left: body(left), medium: material(medium), right: body(right) }
+	};
+}
+
+/**
+ * Names a computation by everything that its numbers follow from, so that equal questions are recognised however they
+ * were written: field order, spelled-out defaults, a pinned version or its model in place make no difference.
+ */
+export function inputChecksum(request: ForceRequest): string {
+	return sha256(canonicalJson(request));
+}
