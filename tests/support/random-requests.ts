@@ -241,6 +241,40 @@ function nearMatched(dice: Dice): Pick<ArrangementOf<MaterialModel>, 'left' | 'm
 	};
 }
 
+/** Three insulators in ascending order at most frequencies: repulsion, or a change of sign where the order turns. */
+function ordered(dice: Dice): Pick<ArrangementOf<MaterialModel>, 'left' | 'medium' | 'right'> {
+	const frequency = dice.logBetween(8e15, 2e16);
+	const step = (infrared: number, ultraviolet: number): MaterialModel => ({
+		permittivity: {
+			kind: 'ninhamParsegian',
+			terms: [
+				{ strength: infrared, frequencyRadPerS: dice.logBetween(1e14, 5e14) },
+				{ strength: ultraviolet, frequencyRadPerS: frequency * dice.between(0.7, 1.3) }
+			]
+		}
+	});
+	return {
+		left: { layers: [], substrate: step(dice.between(0.1, 1), dice.between(0.8, 1.1)) },
+		medium: step(dice.between(0.1, 4), dice.between(1.1, 1.5)),
+		right: {
+			layers: [],
+			substrate: dice.chance(0.5) ? metal(dice) : step(dice.between(1, 6), dice.between(1.5, 3))
+		}
+	};
+}
+
+/** Two bodies, sometimes alike, sometimes with a layer of the medium's or the substrate's own material. */
+function pair(
+	dice: Dice,
+	medium: MaterialModel
+): Pick<ArrangementOf<MaterialModel>, 'left' | 'medium' | 'right'> {
+	const count = () => dice.pick([0, 0, 0, 1, 1, 2, 3]);
+	const left = body(dice, count());
+	if (dice.chance(0.05)) left.layers.push({ of: left.substrate, thicknessNm: dice.logBetween(1, 100) });
+	if (dice.chance(0.05)) left.layers.unshift({ of: medium, thicknessNm: dice.logBetween(1, 100) });
+	return { left, medium, right: dice.chance(0.2) ? structuredClone(left) : body(dice, count()) };
+}
+
 function temperature(dice: Dice): number {
 	const roll = dice.between(0, 1);
 	if (roll < 0.15) return 0;
@@ -256,12 +290,8 @@ export function randomRequest(seed: number): ForceRequest {
 	const across: MaterialModel = {
 		permittivity: dice.chance(0.5) ? { kind: 'vacuum' } : liquid(dice)
 	};
-	const count = () => dice.pick([0, 0, 0, 1, 1, 2, 3]);
 	const roll = dice.between(0, 1);
-	const chosen =
-		roll < 0.12
-			? nearMatched(dice)
-			: { left: body(dice, count()), medium: across, right: body(dice, count()) };
+	const chosen = roll < 0.12 ? nearMatched(dice) : roll < 0.22 ? ordered(dice) : pair(dice, across);
 	const ionic = temperatureK > 0 && chosen.medium.permittivity.kind !== 'vacuum' && dice.chance(0.25);
 	return {
 		arrangement: {

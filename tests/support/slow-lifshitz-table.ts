@@ -20,9 +20,14 @@ function exponentialMoment(rate: number, length: number): number {
 	return rate === 0 ? length : Math.expm1(rate * length) / rate;
 }
 
+/** ln(to/from), exact to the last digit also where the two are close. */
+function logRatio(from: number, to: number): number {
+	return Math.log1p((to - from) / from);
+}
+
 /** int_from^to omega (value (omega/from)^power)/(omega^2 + xi^2) d omega on a segment on one side of xi or around it. */
 function powerPiece(value: number, power: number, from: number, to: number, xi: number): number {
-	const length = Math.log(to / from);
+	const length = logRatio(from, to);
 	if (to <= SERIES_RATIO * xi) {
 		let sum = 0;
 		const ratio = (from / xi) ** 2;
@@ -150,7 +155,7 @@ export function tableSusceptibility(
 		const [a, b] = [energies[i], energies[i + 1]];
 		const [start, end] = [epsilon2[i], epsilon2[i + 1]];
 		if (start > 0 && end > 0) {
-			const power = Math.log(end / start) / Math.log(b / a);
+			const power = (end > start ? logRatio(start, end) : -logRatio(end, start)) / logRatio(a, b);
 			sum += powerSegment(start, power, a, b, xi);
 		} else if (start > 0 || end > 0) sum += linearSegment(start, end, a, b, xi);
 	}
