@@ -1,5 +1,20 @@
 import { spawn } from 'node:child_process';
 
+/** @type {Set<import('node:child_process').ChildProcess>} */
+const running = new Set();
+let interrupted = false;
+
+/** Ends the commands that run and starts no more: somebody wants to stop. */
+export function interruptCommands() {
+	interrupted = true;
+	for (const child of running) child.kill('SIGTERM');
+}
+
+/** Stopping in good order needs commands of its own. */
+export function allowCommands() {
+	interrupted = false;
+}
+
 /**
  * @typedef {object} Finished
  * @property {number} code exit code; 127 when the command does not exist
@@ -17,7 +32,9 @@ import { spawn } from 'node:child_process';
  */
 export function run(command, args, { cwd, env = process.env, input, show = false } = {}) {
 	return new Promise((resolve) => {
+		if (interrupted) return resolve({ code: 130, output: 'interrupted', stdout: '' });
 		const child = spawn(command, args, { cwd, env, stdio: ['pipe', 'pipe', 'pipe'] });
+		running.add(child);
 		let output = '';
 		let stdout = '';
 		child.stdout.setEncoding('utf8').on('data', (text) => {
@@ -32,8 +49,12 @@ export function run(command, args, { cwd, env = process.env, input, show = false
 		// A command that ends before it has read its input must not take this process along.
 		child.stdin.on('error', () => {});
 		child.stdin.end(input ?? '');
-		child.on('error', (error) => resolve({ code: 127, output: String(error), stdout: '' }));
-		child.on('close', (code, signal) => resolve({ code: code ?? (signal ? 1 : 0), output, stdout }));
+		const finish = (/** @type {Finished} */ result) => {
+			running.delete(child);
+			resolve(result);
+		};
+		child.on('error', (error) => finish({ code: 127, output: String(error), stdout: '' }));
+		child.on('close', (code, signal) => finish({ code: code ?? (signal ? 1 : 0), output, stdout }));
 	});
 }
 

@@ -44,6 +44,7 @@ function holderLives(name) {
  */
 export function leases(directory) {
 	const names = () => (existsSync(directory) ? readdirSync(directory) : []);
+	const othersLive = () => names().some((name) => name !== ownName && holderLives(name));
 	return {
 		/** Adds this process and says whether dead ones had left their mark. */
 		take() {
@@ -56,8 +57,9 @@ export function leases(directory) {
 		/** Takes this process away and says whether any other is left. */
 		release() {
 			rmSync(join(directory, ownName), { force: true });
-			return { othersLeft: names().some(holderLives) };
-		}
+			return { othersLeft: othersLive() };
+		},
+		othersLive
 	};
 }
 

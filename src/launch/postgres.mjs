@@ -89,7 +89,12 @@ async function open(site) {
 		const portFile = join(site.place, 'cluster-port');
 		port = await freePort(existsSync(portFile) ? Number(readFileSync(portFile, 'utf8')) : 0);
 		writeFileSync(portFile, `${port}\n`);
-		await launch(site, port);
+		await launch(site, port).catch(async (error) => {
+			users.release();
+			// It may be half up when the wait for it was interrupted.
+			await runAsServer(join(site.bin, 'pg_ctl'), stopFlags(site));
+			throw error;
+		});
 	}
 	// A server that was up before, without a trace of a start from here, is somebody's own doing and stays up.
 	const ours = !running || leftBehind || existsSync(join(site.place, 'cluster-ours'));

@@ -1,5 +1,5 @@
 import { checkServing, config } from '../config.ts';
-import { checkDatabase } from '../limits/durability.ts';
+import { checkDatabase } from '../limits/database.ts';
 import { log } from '../log.ts';
 
 /**

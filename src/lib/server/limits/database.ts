@@ -20,3 +20,13 @@ export async function checkDatabase(durability: 'full' | 'throwaway'): Promise<v
 		);
 	}
 }
+
+/** Whether a question gets an answer; the reason is in the database's own log. */
+export async function databaseAnswers(): Promise<boolean> {
+	try {
+		await database().execute(sql`select 1`);
+		return true;
+	} catch {
+		return false;
+	}
+}

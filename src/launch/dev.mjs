@@ -1,0 +1,24 @@
+/** `npm run dev`: the same database, the sources served as they are edited. */
+import { chooseAddress } from './address.mjs';
+import { openDatabase } from './database.mjs';
+import { ensurePackages } from './packages.mjs';
+import { startServer, unexpected } from './server.mjs';
+import { runStack } from './stack.mjs';
+
+await runStack(async ({ onStop, asked }) => {
+	const { host, port, origin } = await chooseAddress();
+	await ensurePackages();
+	console.log('Starting the database ...');
+	const database = await openDatabase();
+	onStop(database.stop);
+
+	const server = await startServer({
+		args: ['node_modules/vite/bin/vite.js', 'dev', '--host', host, '--port', String(port), '--strictPort'],
+		env: { ...process.env, HAIRSBREADTH_DATABASE_URL: database.url },
+		healthUrl: `http://${host}:${port}/api/v1/health`,
+		show: true
+	});
+	onStop(server.stop);
+	console.log(`\nHairsbreadth (development) is at ${origin}\n`);
+	await Promise.race([asked, server.ended.then(unexpected)]);
+});

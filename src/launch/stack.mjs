@@ -1,0 +1,49 @@
+import { LaunchError, allowCommands, interruptCommands } from './command.mjs';
+
+const SIGNALS = /** @type {const} */ (['SIGINT', 'SIGTERM', 'SIGHUP']);
+
+/**
+ * @typedef {object} Stack
+ * @property {(stop: () => unknown) => void} onStop adds what must be stopped; the last added is stopped first
+ * @property {Promise<void>} asked fulfilled by Ctrl-C or a signal
+ */
+
+/**
+ * Runs `work`, and afterwards stops everything it started, in the reverse order: at its end, on an error, on Ctrl-C.
+ *
+ * @param {(stack: Stack) => Promise<void>} work
+ */
+export async function runStack(work) {
+	/** @type {(() => unknown)[]} */
+	const stops = [];
+	let wanted = false;
+	let ask = () => {};
+	/** @type {Promise<void>} */
+	const asked = new Promise((resolve) => (ask = resolve));
+	const onSignal = () => {
+		wanted = true;
+		interruptCommands();
+		ask();
+	};
+	// Kept until the end: a second Ctrl-C must not interrupt the orderly stop.
+	for (const signal of SIGNALS) process.on(signal, onSignal);
+	try {
+		await work({ onStop: (stop) => stops.push(stop), asked });
+	} catch (error) {
+		// What fails because it was interrupted is no news.
+		if (!wanted) {
+			console.error(error instanceof LaunchError ? `\n${error.message}\n` : error);
+			process.exitCode = 1;
+		}
+	}
+	allowCommands();
+	for (const stop of stops.reverse()) {
+		try {
+			await stop();
+		} catch (error) {
+			console.error(error);
+			process.exitCode = 1;
+		}
+	}
+	process.exit();
+}
