@@ -37,13 +37,13 @@ export class Curve {
 	#pause: ReturnType<typeof setTimeout> | undefined;
 
 	/** Asks unless this very question is already running or answered. */
-	ask(request: ForceRequestInput, { pauseMs = PAUSE_MS } = {}): void {
+	ask(request: ForceRequestInput, { keepPrevious = true } = {}): void {
 		const question = JSON.stringify(request);
 		if (question === this.#question) return;
 		this.#question = question;
-		if (this.state === 'complete') this.previous = this.points;
+		if (this.state === 'complete' && keepPrevious) this.previous = this.points;
 		this.cancel('computing');
-		this.#pause = setTimeout(() => void this.#run(request), this.points.length === 0 ? 0 : pauseMs);
+		this.#pause = setTimeout(() => void this.#run(request), this.points.length === 0 ? 0 : PAUSE_MS);
 	}
 
 	/** Asks once more, whatever is known. */
@@ -51,6 +51,16 @@ export class Curve {
 		const request = JSON.parse(this.#question) as ForceRequestInput;
 		this.cancel('computing');
 		await this.#run(request);
+	}
+
+	/** Forgets question and answer. */
+	clear(): void {
+		if (this.#question === '') return;
+		this.cancel();
+		this.#question = '';
+		this.points = [];
+		this.previous = [];
+		this.problem = undefined;
 	}
 
 	cancel(state: CurveState = 'waiting'): void {

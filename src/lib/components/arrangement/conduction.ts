@@ -1,0 +1,50 @@
+import type { PermittivityModel, ZeroFrequencyRule } from '../../engine/contract.ts';
+
+/** What the static term of a material is where the arrangement says nothing: the limit of its model as written. */
+export type StaticLimit = ZeroFrequencyRule | 'finite';
+
+const RANK: readonly StaticLimit[] = ['finite', 'plasma', 'drude', 'ideal'];
+
+/** Any part that conducts with losses makes the sum conduct with losses; without losses it is a plasma. */
+const strongest = (limits: StaticLimit[]): StaticLimit =>
+	limits.reduce((one, other) => (RANK.indexOf(other) > RANK.indexOf(one) ? other : one), 'finite');
+
+export function staticLimit(model: PermittivityModel): StaticLimit {
+	switch (model.kind) {
+		case 'idealConductor':
+			return 'ideal';
+		case 'plasma':
+			return 'plasma';
+		case 'drude':
+			return model.dampingEv === 0 ? 'plasma' : 'drude';
+		case 'dcConductivity':
+			return model.siemensPerM === 0 ? 'finite' : 'drude';
+		case 'lorentz':
+			return strongest(
+				model.terms.map(({ energyEv, dampingEv, strengthEv2 }) => {
+					if (energyEv > 0 || strengthEv2 === 0) return 'finite';
+					return dampingEv === 0 ? 'plasma' : 'drude';
+				})
+			);
+		case 'table':
+			return model.lowEnd.kind === 'drude' || model.lowEnd.kind === 'plasma' ? model.lowEnd.kind : 'finite';
+		case 'sum':
+			return strongest(model.of.map(staticLimit));
+		default:
+			return 'finite';
+	}
+}
+
+/** The rule in words; "as written" is never left unsaid. */
+export function ruleWords(limit: StaticLimit): string {
+	switch (limit) {
+		case 'drude':
+			return 'Drude';
+		case 'plasma':
+			return 'plasma';
+		case 'ideal':
+			return 'ideal conductor';
+		case 'finite':
+			return 'finite';
+	}
+}
