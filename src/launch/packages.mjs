@@ -1,5 +1,5 @@
 import { createHash } from 'node:crypto';
-import { existsSync, readFileSync, statSync, writeFileSync } from 'node:fs';
+import { existsSync, lstatSync, readFileSync, realpathSync, statSync, writeFileSync } from 'node:fs';
 import { join } from 'node:path';
 import { LaunchError, run } from './command.mjs';
 import { root, stateFile } from './place.mjs';
@@ -20,12 +20,26 @@ export async function ensurePackages() {
 			return;
 		}
 	}
+	refuseLink(join(root, 'node_modules'));
 	console.log('Installing packages from the lock file ...');
 	const { code, output } = await run(...npm(['ci', '--include=dev', '--no-audit', '--no-fund']), {
 		cwd: root
 	});
 	if (code !== 0) throw new LaunchError(`npm ci failed:\n${output.trim()}`);
 	writeFileSync(stamp, wanted);
+}
+
+/**
+ * npm empties the folder before it installs, and through a link that is somebody else's folder.
+ *
+ * @param {string} folder
+ */
+function refuseLink(folder) {
+	if (!lstatSync(folder, { throwIfNoEntry: false })?.isSymbolicLink()) return;
+	throw new LaunchError(
+		`${folder} is a link to ${realpathSync(folder)}, which an install would empty. ` +
+			'Remove the link, or install the packages there yourself.'
+	);
 }
 
 /**
