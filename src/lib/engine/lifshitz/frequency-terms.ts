@@ -1,0 +1,173 @@
+import { logLattice, type LogLattice } from '../numerics/log-lattice.ts';
+import { halfSpaceReflection, idealReflection } from '../reflection/half-space.ts';
+import { stackAtFrequency, stackReflection, OPAQUE, type StackAtFrequency } from '../reflection/stack.ts';
+import type { Body, System } from '../system.ts';
+import type { FrequencyBlock } from './frequency-blocks.ts';
+import type { Level } from './level.ts';
+import { addPolarizationNoise, polarizationSum } from './polarization-sum.ts';
+import { UNIT_ROUNDOFF } from './tally.ts';
+
+/** Integrals of one frequency: TE and TM of F, P, G, what the lattice leaves open and what rounding may do. */
+export interface FrequencyTerms {
+	te: Float64Array;
+	tm: Float64Array;
+	lattice: Float64Array;
+	rounding: Float64Array;
+	evaluations: number;
+}
+
+/** Share of the nearest singularity that the doubly exponential foot of the lattice may fill. */
+const FOOT = 0.5;
+const SMALLEST_SCALE = 60;
+
+/** Roundoff of one frequency term beside that of permittivities: sums, roots, exponentials of y. */
+const ROUNDING = 16;
+
+interface BodyNoise {
+	/** Relative error of the coefficient of a half-space. */
+	relative: number;
+	/** Absolute error of the coefficient of a stack. */
+	absolute: number;
+}
+
+/**
+ * Evaluator of frequency terms for one system and level: `at(block, i, time)` computes node i of a block at
+ * separation c time/2 and leaves the result in `terms`.
+ */
+export function frequencyTerms(
+	system: System,
+	level: Level
+): { terms: FrequencyTerms; at(block: FrequencyBlock, i: number, separation: number, time: number): void } {
+	const { substances, left, right, twins } = system;
+	const lattices: LogLattice[] = [];
+	const latticeOf = (index: number, odd: number): LogLattice =>
+		(lattices[2 * index + odd] ??= logLattice(level.step, 2 ** -index, level.cut, level.cut, odd / 2));
+	const size = latticeOf(SMALLEST_SCALE, 0).count + 4;
+	const [tm1, te1, tm2, te2] = [0, 1, 2, 3].map(() => new Float64Array(size));
+	const stacks = [left, right].map(({ thickness }) => stackAtFrequency(thickness.length));
+	const sums = new Float64Array(6);
+	const noise: BodyNoise = { relative: 0, absolute: 0 };
+	const noise2: BodyNoise = { relative: 0, absolute: 0 };
+	const terms: FrequencyTerms = {
+		te: new Float64Array(3),
+		tm: new Float64Array(3),
+		lattice: new Float64Array(3),
+		rounding: new Float64Array(3),
+		evaluations: 0
+	};
+	const { te, tm, lattice: open, rounding } = terms;
+	const mediumUlps = substances[0].chi?.ulps ?? 0;
+
+	/** Permittivities of a block, computed when first asked for. */
+	const fill = (block: FrequencyBlock): void => {
+		for (const { chi, mu } of substances) {
+			block.chi.push(chi === null ? new Float64Array(block.xi.length) : block.xi.map((xi) => chi.atXi(xi)));
+			block.mu.push(mu.one ? new Float64Array(block.xi.length).fill(1) : block.xi.map((xi) => mu.atXi(xi)));
+		}
+	};
+
+	/** Radius of the disc around s = 0 in which nothing singular lies (log-lattice.ts). */
+	const analyticRadius = (
+		block: FrequencyBlock,
+		i: number,
+		separation: number,
+		X: number,
+		y0: number
+	): number => {
+		let lowest = Infinity;
+		for (let j = 0; j < substances.length; j++) {
+			if (substances[j].chi !== null) lowest = Math.min(lowest, (1 + block.chi[j][i]) * block.mu[j][i]);
+		}
+		let radius = Math.min(1, y0, (lowest * X) / (2 * y0));
+		for (const { thickness, places } of [left, right]) {
+			for (let j = 0; j < thickness.length; j++) {
+				const index = Math.sqrt((1 + block.chi[places[j]][i]) * block.mu[places[j]][i] * X);
+				const ratio = separation / thickness[j];
+				if (index < OPAQUE * ratio) radius = Math.min(radius, (ratio * index) / y0, ratio);
+			}
+		}
+		return radius;
+	};
+
+	const reflect = (
+		body: Body,
+		stack: StackAtFrequency,
+		block: FrequencyBlock,
+		i: number,
+		separation: number,
+		lattice: LogLattice,
+		y0: number,
+		X: number,
+		rTM: Float64Array,
+		rTE: Float64Array,
+		left: BodyNoise
+	): void => {
+		const chiM = block.chi[0][i];
+		left.relative = 0;
+		left.absolute = 0;
+		if (body.places.length === 1) {
+			if (body.ideal) return idealReflection(lattice.count, rTM, rTE);
+			const place = body.places[0];
+			const chi = block.chi[place][i];
+			const mu = block.mu[place][i];
+			halfSpaceReflection(lattice, y0, X, chiM, chi, block.mu[0][i], mu, rTM, rTE);
+			const ulps = substances[place].chi?.ulps ?? 0;
+			if (chi !== chiM) left.relative = (ulps * chi + mediumUlps * chiM) / Math.abs(chi - chiM);
+			return;
+		}
+		stack.ideal = body.ideal;
+		stack.chi[0] = chiM;
+		stack.mu[0] = block.mu[0][i];
+		let interfaces = 0;
+		for (let j = 0; j < body.places.length; j++) {
+			const place = body.places[j];
+			stack.chi[j + 1] = block.chi[place][i];
+			stack.mu[j + 1] = block.mu[place][i];
+			if (j < body.thickness.length) stack.thickness[j + 1] = body.thickness[j] / separation;
+			const a = stack.chi[j];
+			const b = stack.chi[j + 1];
+			interfaces += 4 + (((substances[place].chi?.ulps ?? 0) + mediumUlps) * (a + b)) / (2 + a + b);
+		}
+		left.absolute = UNIT_ROUNDOFF * interfaces;
+		stackReflection(lattice, y0, X, stack, rTM, rTE);
+	};
+
+	const at = (block: FrequencyBlock, i: number, separation: number, time: number): void => {
+		if (block.chi.length === 0) fill(block);
+		const phase = block.xi[i] * time;
+		const X = phase * phase;
+		const y0 = phase * Math.sqrt((1 + block.chi[0][i]) * block.mu[0][i]);
+		const radius = FOOT * analyticRadius(block, i, separation, X, y0);
+		const scale = Math.min(SMALLEST_SCALE, Math.max(0, Math.ceil(-Math.log2(radius))));
+		const lattice = latticeOf(scale, (block.parity + i) & 1);
+		reflect(left, stacks[0], block, i, separation, lattice, y0, X, tm1, te1, noise);
+		let tmRight = tm1;
+		let teRight = te1;
+		let noiseRight = noise;
+		if (!twins) {
+			reflect(right, stacks[1], block, i, separation, lattice, y0, X, tm2, te2, noise2);
+			tmRight = tm2;
+			teRight = te2;
+			noiseRight = noise2;
+		}
+		terms.evaluations += 2 * lattice.count;
+		polarizationSum(lattice, y0, te1, teRight, sums);
+		for (let q = 0; q < 3; q++) {
+			te[q] = sums[2 * q] + sums[2 * q + 1];
+			open[q] = Math.abs(sums[2 * q] - sums[2 * q + 1]);
+		}
+		polarizationSum(lattice, y0, tm1, tmRight, sums);
+		const relative = UNIT_ROUNDOFF * (ROUNDING + 2 * y0 + 2 * (noise.relative + noiseRight.relative));
+		rounding.fill(0);
+		if (noise.absolute > 0 || noiseRight.absolute > 0) {
+			addPolarizationNoise(lattice, y0, te1, teRight, noise.absolute, noiseRight.absolute, rounding);
+			addPolarizationNoise(lattice, y0, tm1, tmRight, noise.absolute, noiseRight.absolute, rounding);
+		}
+		for (let q = 0; q < 3; q++) {
+			tm[q] = sums[2 * q] + sums[2 * q + 1];
+			open[q] += Math.abs(sums[2 * q] - sums[2 * q + 1]);
+			rounding[q] += relative * (Math.abs(te[q]) + Math.abs(tm[q]));
+		}
+	};
+	return { terms, at };
+}

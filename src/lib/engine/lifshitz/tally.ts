@@ -1,0 +1,39 @@
+/** Free energy, pressure and gradient, in this order, wherever three numbers stand together. */
+export const QUANTITIES = [0, 1, 2] as const;
+
+/** Half a unit in the last place of one. */
+export const UNIT_ROUNDOFF = 2 ** -53;
+
+/** Sums of one separation in the reduced units of methods.md section 1, and what may be wrong with them. */
+export interface Tally {
+	/** For each quantity: zero TE, zero TM, TE, TM. */
+	parts: Float64Array;
+	/** Sum of magnitudes: what cancellation is measured against. */
+	magnitude: Float64Array;
+	/** Error of the integrals over y: half differences of the even and odd lattice. */
+	lattice: Float64Array;
+	/** Error of the Gauss rules over blocks of frequencies. */
+	blocks: Float64Array;
+	/** Terms left out. */
+	tail: Float64Array;
+	/** Rounding, of the sums and of the permittivities. */
+	rounding: Float64Array;
+	/** Integrands evaluated. */
+	evaluations: number;
+}
+
+export const newTally = (): Tally => ({
+	parts: new Float64Array(12),
+	magnitude: new Float64Array(3),
+	lattice: new Float64Array(3),
+	blocks: new Float64Array(3),
+	tail: new Float64Array(3),
+	rounding: new Float64Array(3),
+	evaluations: 0
+});
+
+export function valueOf(tally: Tally, quantity: number): number {
+	const { parts } = tally;
+	const at = 4 * quantity;
+	return parts[at] + parts[at + 1] + (parts[at + 2] + parts[at + 3]);
+}

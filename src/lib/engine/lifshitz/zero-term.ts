@@ -1,0 +1,133 @@
+import { SPEED_OF_LIGHT } from '../constants.ts';
+import { logLattice, type LogLattice } from '../numerics/log-lattice.ts';
+import { trilogarithm } from '../numerics/trilogarithm.ts';
+import {
+	staticTe,
+	staticTm,
+	zeroFrequencyReflection,
+	type ZeroFrequencyMaterial
+} from '../reflection/zero-frequency.ts';
+import type { Body, System } from '../system.ts';
+import type { Level } from './level.ts';
+import { polarizationSum } from './polarization-sum.ts';
+import { UNIT_ROUNDOFF, type Tally } from './tally.ts';
+
+/** Reflection that does not depend on the wave number has a closed form: F -Li_3, P 2 Li_3, G 6 Li_3 of R. */
+const CLOSED = [-1, 2, 6];
+
+/** Below the disc of analyticity nothing is known when n = 0: the lattice runs down in ln s to where it may be cut. */
+const NO_DISC = 1e-30;
+
+/** Rounding of the closed and of the numerical n = 0 term, in units of roundoff. */
+const ROUNDING = 24;
+
+/** The n = 0 term of a system (methods.md section 2), with the half weight of the primed sum. */
+export function zeroTerm(system: System, level: Level): (separation: number, tally: Tally) => void {
+	const { left, right, screening } = system;
+	const medium = left.zero[0];
+	const foot = screening === null && medium.square === 0 ? Math.sqrt(level.cut) / 4 : level.cut;
+	const lattice = logLattice(level.step, NO_DISC, level.cut, foot);
+	const rLeft = new Float64Array(lattice.count);
+	const rRight = new Float64Array(lattice.count);
+	const sums = new Float64Array(6);
+	const bare = left.zero.length === 2 && right.zero.length === 2;
+	const carriers = [left, right].some(({ zero }) => zero.some(({ square }) => square > 0));
+	const silent =
+		!carriers && [...left.zero, ...right.zero].every(({ mu, ideal }) => mu === medium.mu && !ideal);
+
+	const numeric = (polarisation: 'te' | 'tm', separation: number, tally: Tally): void => {
+		const X = (2 * separation) / SPEED_OF_LIGHT;
+		const screened = polarisation === 'tm' && screening !== null;
+		const y0 = screened ? 2 * separation * screening : X * Math.sqrt(medium.square * medium.mu);
+		const reflect = (body: Body, r: Float64Array): void =>
+			zeroFrequencyReflection(
+				polarisation,
+				lattice,
+				y0,
+				X * X,
+				body.zero,
+				reduced(body, separation),
+				screened,
+				r
+			);
+		reflect(left, rLeft);
+		reflect(right, rRight);
+		polarizationSum(lattice, y0, rLeft, rRight, sums);
+		tally.evaluations += lattice.count;
+		// Plain roundoff of the coefficients, absolute where they are small differences.
+		for (let q = 0; q < 3; q++) {
+			const even = sums[2 * q];
+			const odd = sums[2 * q + 1];
+			add(tally, polarisation, q, (even + odd) / 2, UNIT_ROUNDOFF * (ROUNDING + 2 * y0));
+			tally.lattice[q] += Math.abs(even - odd) / 2;
+			tally.rounding[q] += smallness(lattice, y0, q, rLeft, rRight);
+		}
+	};
+
+	const closed = (polarisation: 'te' | 'tm', tally: Tally): void => {
+		const single = polarisation === 'te' ? staticTe : staticTm;
+		const R = single(medium, left.zero[1]) * single(medium, right.zero[1]);
+		const amplified = closedRounding(medium, left.zero[1], right.zero[1], polarisation);
+		for (let q = 0; q < 3; q++)
+			add(tally, polarisation, q, (CLOSED[q] * trilogarithm(R)) / 2, UNIT_ROUNDOFF * (ROUNDING + amplified));
+	};
+
+	return (separation, tally) => {
+		if (bare && !carriers && screening === null) closed('tm', tally);
+		else numeric('tm', separation, tally);
+		if (silent) return;
+		if (bare && !carriers) closed('te', tally);
+		else numeric('te', separation, tally);
+	};
+}
+
+/** t/d, index 1..layers. */
+const reduced = ({ thickness }: Body, separation: number): Float64Array =>
+	Float64Array.from([0, ...thickness.map((t) => t / separation)]);
+
+function add(
+	tally: Tally,
+	polarisation: 'te' | 'tm',
+	q: number,
+	value: number,
+	relativeRounding: number
+): void {
+	tally.parts[4 * q + (polarisation === 'te' ? 0 : 1)] += value;
+	tally.magnitude[q] += Math.abs(value);
+	tally.rounding[q] += Math.abs(value) * relativeRounding;
+}
+
+/** Relative error of R from rounding of the static values, in units of roundoff. */
+function closedRounding(
+	medium: ZeroFrequencyMaterial,
+	left: ZeroFrequencyMaterial,
+	right: ZeroFrequencyMaterial,
+	polarisation: 'te' | 'tm'
+): number {
+	const of = (body: ZeroFrequencyMaterial): number => {
+		const [a, b] = polarisation === 'te' ? [medium.mu, body.mu] : [medium.amplitude, body.amplitude];
+		const same = polarisation === 'te' || (body.order === medium.order && !body.ideal);
+		return same && a !== b ? (8 * (Math.abs(a) + Math.abs(b))) / Math.abs(b - a) : 0;
+	};
+	return of(left) + of(right);
+}
+
+/** Absolute roundoff of both coefficients carried into the integral over y. */
+function smallness(
+	lattice: LogLattice,
+	y0: number,
+	quantity: number,
+	r1: Float64Array,
+	r2: Float64Array
+): number {
+	const decay0 = Math.exp(-y0);
+	let sum = 0;
+	for (let i = 0; i < lattice.count; i++) {
+		const y = y0 + lattice.s[i];
+		const e = decay0 * lattice.decay[i];
+		const d = 1 / (1 - r1[i] * r2[i] * e);
+		const weight = lattice.weight[i] * e * d * y * (quantity > 0 ? y : 1) * (quantity > 1 ? y * d : 1);
+		sum += weight * (Math.abs(r1[i]) + Math.abs(r2[i]));
+	}
+	return 4 * UNIT_ROUNDOFF * sum;
+}

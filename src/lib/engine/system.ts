@@ -1,0 +1,100 @@
+import { SPEED_OF_LIGHT } from './constants.ts';
+import type { ForceRequest, MaterialModel } from './contract.ts';
+import { susceptibility } from './permittivity/evaluator.ts';
+import { NO_STATIC_LIMIT, type Susceptibility } from './permittivity/susceptibility.ts';
+import { permeability, type Permeability } from './permeability.ts';
+import { zeroFrequencyMaterial, type ZeroFrequencyMaterial } from './reflection/zero-frequency.ts';
+import { metresFromNm } from './units.ts';
+
+/** A substance at n >= 1: what is shared by all places where it occurs. */
+export interface Substance {
+	/** Null for an ideal conductor. */
+	chi: Susceptibility | null;
+	mu: Permeability;
+}
+
+/** One body from the gap outwards, nothing behind an ideal conductor. */
+export interface Body {
+	/** Indices into `substances`: layers, then the substrate. */
+	places: number[];
+	/** m, one a layer. */
+	thickness: number[];
+	/** The last place is an ideal conductor. */
+	ideal: boolean;
+	/** Medium, layers, substrate at n = 0. */
+	zero: ZeroFrequencyMaterial[];
+}
+
+/** The arrangement in SI units, every substance once. Substance 0 is the medium. */
+export interface System {
+	substances: Substance[];
+	left: Body;
+	right: Body;
+	/** Both bodies reflect alike at n >= 1. */
+	twins: boolean;
+	magnetic: boolean;
+	/** K. */
+	temperature: number;
+	/** 1/m; null without mobile ions. */
+	screening: number | null;
+	/** rad/s, where some permittivity is not analytic. */
+	knots: number[];
+}
+
+/** `system` of a checked request: conversion of the contract to SI happens here and nowhere else. */
+export function systemOf(request: ForceRequest): System {
+	const { arrangement } = request;
+	const { medium, temperatureK, debyeLengthNm } = arrangement;
+	const substances: Substance[] = [];
+	const known = new Map<string, number>();
+	const indexOf = ({ permittivity, permeability: magnetic }: MaterialModel): number => {
+		const key = JSON.stringify([permittivity, magnetic ?? null]);
+		const found = known.get(key);
+		if (found !== undefined) return found;
+		const chi = permittivity.kind === 'idealConductor' ? null : susceptibility(permittivity);
+		known.set(key, substances.push({ chi, mu: permeability(magnetic) }) - 1);
+		return substances.length - 1;
+	};
+	const atZero = (material: MaterialModel): ZeroFrequencyMaterial => {
+		const { chi, mu } = substances[indexOf(material)];
+		return zeroFrequencyMaterial(
+			chi?.atZero ?? NO_STATIC_LIMIT,
+			mu.atZero,
+			chi === null ? 'ideal' : material.zeroFrequency
+		);
+	};
+	indexOf(medium);
+	const screening = debyeLengthNm === undefined ? null : 1 / metresFromNm(debyeLengthNm);
+	const mediumAtZero = screening === null ? atZero(medium) : withoutCarriers(substances[0]);
+	const bodyOf = ({ layers, substrate }: ForceRequest['arrangement']['left']): Body => {
+		const materials = [...layers.map((layer) => layer.of), substrate];
+		const end = materials.findIndex(({ permittivity }) => permittivity.kind === 'idealConductor');
+		const seen = end < 0 ? materials : materials.slice(0, end + 1);
+		return {
+			places: seen.map(indexOf),
+			thickness: layers.slice(0, seen.length - 1).map((layer) => metresFromNm(layer.thicknessNm)),
+			ideal: end >= 0,
+			zero: [mediumAtZero, ...seen.map(atZero)]
+		};
+	};
+	const left = bodyOf(arrangement.left);
+	const right = bodyOf(arrangement.right);
+	return {
+		substances,
+		left,
+		right,
+		twins: JSON.stringify([left.places, left.thickness]) === JSON.stringify([right.places, right.thickness]),
+		magnetic: substances.some(({ mu }) => !mu.one),
+		temperature: temperatureK,
+		screening,
+		knots: [...new Set(substances.flatMap(({ chi }) => chi?.knots ?? []))].sort((a, b) => a - b)
+	};
+}
+
+/** Ions are stated by their Debye length: what conducts in the model of the medium is those same ions. */
+function withoutCarriers({ chi, mu }: Substance): ZeroFrequencyMaterial {
+	return { order: 0, amplitude: chi?.atZero.finite ?? 0, square: 0, mu: mu.atZero, ideal: false };
+}
+
+/** 2 d/c in s: turns a frequency into the phase that decides whether retardation matters. */
+export const roundTripTime = (separation: number): number => (2 * separation) / SPEED_OF_LIGHT;

@@ -1,0 +1,200 @@
+import type {
+	BodyOf,
+	ForcePoint,
+	ForceRequest,
+	MaterialModel,
+	PermittivityModel,
+	Warning
+} from './contract.ts';
+import { matsubaraFrequency } from './lifshitz/matsubara.ts';
+import { ENGINE_LIMITS } from './limits.ts';
+import { susceptibility } from './permittivity/evaluator.ts';
+import { conducts } from './permittivity/susceptibility.ts';
+import { epsilonShares, type TableModel } from './permittivity/table.ts';
+
+/** d/R above which the proximity approximation is worse than the percent level, and where it stops being one. */
+const CURVED = 0.01;
+const TOO_CURVED = 0.1;
+/** Relative estimate per d/R is of order one: the flags look at the estimate of the contract. */
+const FILM_NM = 50;
+/** Share of eps(i xi) - 1 outside a table that is worth a word. */
+const RELIANCE = 0.1;
+
+interface Place {
+	name: string;
+	material: MaterialModel;
+	thicknessNm?: number;
+}
+
+/** What a reader of the answer ought to know; one warning a subject. */
+export function warningsFor(request: ForceRequest, points: readonly ForcePoint[]): Warning[] {
+	const { arrangement } = request;
+	const places: Place[] = [
+		...placesOf('left', arrangement.left),
+		{ name: 'medium', material: arrangement.medium },
+		...placesOf('right', arrangement.right)
+	];
+	return [
+		...belowContinuum(points),
+		...curvature(request, points),
+		...notMet(points),
+		...reliance(places, arrangement.temperatureK),
+		...imaginaryReach(places, arrangement.temperatureK),
+		...neverFalling(places),
+		...(arrangement.temperatureK > 0 ? zeroFrequency(request, places) : [])
+	];
+}
+
+function placesOf(side: string, body: BodyOf<MaterialModel>): Place[] {
+	const layers = body.layers.map(({ of, thicknessNm }, i) => ({
+		name: `layer ${i + 1} of the ${side} body`,
+		material: of,
+		thicknessNm
+	}));
+	return [...layers, { name: `substrate of the ${side} body`, material: body.substrate }];
+}
+
+function belowContinuum(points: readonly ForcePoint[]): Warning[] {
+	const close = points.filter(({ separationNm }) => separationNm < ENGINE_LIMITS.continuumNm);
+	if (close.length === 0) return [];
+	return [
+		{
+			code: 'below-continuum',
+			text: `Below ${ENGINE_LIMITS.continuumNm} nm atoms count: a permittivity of the bulk and a sharp face are no longer meaningful (${close.length} of ${points.length} points).`
+		}
+	];
+}
+
+function curvature({ arrangement: { shape } }: ForceRequest, points: readonly ForcePoint[]): Warning[] {
+	const radii = Object.entries(shape).flatMap(([name, value]) =>
+		name === 'kind' ? [] : [Number(value) * 1e3]
+	);
+	if (radii.length === 0 || points.length === 0) return [];
+	const largest = Math.max(...points.map(({ separationNm }) => separationNm)) / Math.min(...radii);
+	if (largest <= CURVED) return [];
+	const text =
+		largest > TOO_CURVED
+			? `d/R reaches ${largest.toPrecision(2)}: beyond ${TOO_CURVED} the proximity approximation is no prediction.`
+			: `d/R reaches ${largest.toPrecision(2)}: the proximity approximation is off by more than a percent there.`;
+	return [{ code: 'curvature', text }];
+}
+
+function notMet(points: readonly ForcePoint[]): Warning[] {
+	const missed = points.filter(({ met }) => !met).length;
+	if (missed === 0) return [];
+	return [
+		{
+			code: 'accuracy',
+			text: `The accuracy asked for was not reached at ${missed} of ${points.length} points; each says why.`
+		}
+	];
+}
+
+function kindsIn(model: PermittivityModel): PermittivityModel[] {
+	return model.kind === 'sum' ? model.of.flatMap(kindsIn) : [model];
+}
+
+/** The first Matsubara frequency is where the low end of a table is felt most; at T = 0 that of room temperature stands in. */
+const lowestXi = (temperatureK: number): number =>
+	matsubaraFrequency(1, temperatureK > 0 ? temperatureK : 300);
+
+function reliance(places: Place[], temperatureK: number): Warning[] {
+	const xi = lowestXi(temperatureK);
+	const told = new Set<string>();
+	for (const { name, material } of places) {
+		for (const model of kindsIn(material.permittivity)) {
+			if (model.kind !== 'table') continue;
+			const { below, above } = epsilonShares(model as TableModel, xi);
+			if (below > RELIANCE)
+				told.add(`${Math.round(100 * below)} % of eps - 1 of the ${name} comes from below its table`);
+			if (above > RELIANCE)
+				told.add(`${Math.round(100 * above)} % of eps - 1 of the ${name} comes from above its table`);
+		}
+	}
+	if (told.size === 0) return [];
+	return [{ code: 'reliance', text: `At the lowest frequency that counts, ${[...told].join('; ')}.` }];
+}
+
+function imaginaryReach(places: Place[], temperatureK: number): Warning[] {
+	const xi = lowestXi(temperatureK);
+	const short = places.filter(({ material }) =>
+		kindsIn(material.permittivity).some(
+			(model) => model.kind === 'imaginaryTable' && model.frequenciesRadPerS[0] > xi * (1 + 1e-9)
+		)
+	);
+	if (short.length === 0) return [];
+	const names = short.map(({ name }) => name).join(', ');
+	return [
+		{
+			code: 'table-reach',
+			text: `The table of eps(i xi) of ${names} starts above the first frequency needed; its first value is used below.`
+		}
+	];
+}
+
+function neverFalling(places: Place[]): Warning[] {
+	const flat = places.filter(({ material }) =>
+		kindsIn(material.permittivity).some((model) => model.kind === 'constant' && model.value > 1)
+	);
+	if (flat.length === 0) return [];
+	const names = flat.map(({ name }) => name).join(', ');
+	return [
+		{
+			code: 'constant-permittivity',
+			text: `The permittivity of ${names} never falls to one: forces at short distances are overstated.`
+		}
+	];
+}
+
+function zeroFrequency({ arrangement }: ForceRequest, places: Place[]): Warning[] {
+	const warnings: Warning[] = [];
+	const conducting = places.filter(({ material: { permittivity } }) =>
+		permittivity.kind === 'idealConductor' ? false : conducts(susceptibility(permittivity).atZero)
+	);
+	const bodies = conducting.filter(({ name }) => name !== 'medium');
+	const unstated = bodies.filter(({ material }) => material.zeroFrequency === undefined);
+	if (unstated.length > 0) {
+		const names = unstated.map(({ name }) => name).join(', ');
+		warnings.push({
+			code: 'zero-frequency-default',
+			text: `The n = 0 term of ${names} follows the model as written; measurements disagree on the Drude and the plasma rule, so compare both.`
+		});
+	}
+	const films = bodies.filter(
+		({ material, thicknessNm }) =>
+			thicknessNm !== undefined &&
+			thicknessNm < FILM_NM &&
+			susceptibilityOf(material).square === 0 &&
+			material.zeroFrequency !== 'plasma'
+	);
+	if (films.length > 0) {
+		const names = films.map(({ name }) => name).join(', ');
+		warnings.push({
+			code: 'thin-conductor',
+			text: `At n = 0 the Drude rule makes ${names} reflect like bulk metal whatever its thickness: an artefact of a local response.`
+		});
+	}
+	const dc = bodies.filter(({ material }) => susceptibilityOf(material).plasmaSquared === 0);
+	if (dc.length > 0) {
+		const names = dc.map(({ name }) => name).join(', ');
+		warnings.push({
+			code: 'dc-conductivity',
+			text: `The dc conductivity of ${names} makes its n = 0 reflection that of a metal; whether to include it is a physical decision.`
+		});
+	}
+	if (arrangement.debyeLengthNm !== undefined) {
+		warnings.push({
+			code: 'ionic-screening',
+			text: 'Ions screen the n = 0 TM term in a local description; a non-local one predicts an additional part that is not screened.'
+		});
+	} else if (conducting.some(({ name }) => name === 'medium')) {
+		warnings.push({
+			code: 'conducting-medium',
+			text: 'The medium conducts: its n = 0 term follows the stated rule without screening by ions.'
+		});
+	}
+	return warnings;
+}
+
+const susceptibilityOf = ({ permittivity }: MaterialModel): { square: number; plasmaSquared: number } =>
+	susceptibility(permittivity).atZero;
