@@ -2,7 +2,7 @@ import type { Handle, HandleServerError, ServerInit } from '@sveltejs/kit';
 import { sequence } from '@sveltejs/kit/hooks';
 import { building } from '$app/environment';
 import { logUnforeseen, problemResponse } from '$lib/server/api/problem.ts';
-import { closeEnginePool } from '$lib/server/compute/pool.ts';
+import { closeEnginePool, enginePool } from '$lib/server/compute/pool.ts';
 import { closeDatabase } from '$lib/server/db/client.ts';
 import { logRequest } from '$lib/server/hooks/request-log.ts';
 import { isForeign } from '$lib/server/hooks/same-origin.ts';
@@ -15,8 +15,13 @@ export const init: ServerInit = async () => {
 	await checkStart(process.env);
 	// Open connections and threads would keep the process alive after the last answer.
 	process.once('sveltekit:shutdown', () => Promise.all([closeEnginePool(), closeDatabase()]));
-	// Whoever started this process and holds a channel to it is gone: nobody would ever stop it.
-	if (process.connected) process.once('disconnect', () => process.kill(process.pid, 'SIGTERM'));
+	if (process.connected) {
+		// Whoever started this process and holds a channel to it is gone: nobody would ever stop it.
+		process.once('disconnect', () => process.kill(process.pid, 'SIGTERM'));
+		process.channel?.unref();
+	}
+	// Threads take a moment to load the engine; the first person should not wait for that.
+	enginePool();
 };
 
 const logged: Handle = async ({ event, resolve }) => {

@@ -42,13 +42,14 @@ export async function streamLines(head: Head, run: Run, gone: AbortSignal): Prom
 	const tell = (line: object) => {
 		if (!signal.aborted) write(line);
 	};
+	const { engine, runtime, inputChecksum, versions } = head;
 	let result = Promise.resolve() as Promise<unknown>;
 	await new Promise<void>((accepted, refused) => {
 		let started = false;
 		result = run(
 			{
 				onStart: ({ separationsNm }) => {
-					tell({ type: 'start', ...head, separationsNm });
+					tell({ type: 'start', engine, runtime, inputChecksum, versions, separationsNm });
 					started = true;
 					accepted();
 				},
