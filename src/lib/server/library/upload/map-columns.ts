@@ -1,0 +1,192 @@
+import type { PermittivityModel } from '../../../engine/contract.ts';
+import type { Quantity, TableReading } from '../../../schemas/upload.ts';
+import { InvalidInput } from '../../errors.ts';
+import { readNumber } from './number.ts';
+import type { Sheet } from './parse.ts';
+import { PHOTON_ENERGY_EV, angularFrequency } from './photon-energy.ts';
+import { RefusedFile, type FileIssue } from './refused-file.ts';
+
+/** A sheet with its columns understood: the numbers as given, and the model that the engine computes with. */
+export interface MappedTable {
+	model: PermittivityModel;
+	/** In the order of the file. */
+	given: { abscissaUnit: string; quantities: Quantity[]; abscissa: number[]; ordinates: number[][] };
+	/** Over ascending photon energies; eps' only where the table has it. */
+	rows: { energiesEv: number[]; epsilon1: number[] | null; epsilon2: number[] } | null;
+	measuredRangeEv: { low: number; high: number };
+}
+
+interface Row {
+	line: number;
+	abscissa: number;
+	ordinates: number[];
+}
+
+type MapReading = Pick<TableReading, 'abscissa' | 'ordinates' | 'duplicates' | 'lowEnd' | 'highEnd'>;
+
+export function mapColumns(sheet: Sheet, reading: MapReading): MappedTable {
+	const quantities = reading.ordinates.map(({ quantity }) => quantity);
+	checkQuantities(quantities);
+	const rows = checkOrder(readRows(sheet, reading), reading.duplicates);
+	const { unit } = reading.abscissa;
+	const energyOf = PHOTON_ENERGY_EV[unit];
+	const ascending =
+		energyOf(rows[0].abscissa) < energyOf(rows[rows.length - 1].abscissa) ? rows : [...rows].reverse();
+	const energiesEv = ascending.map((row) => energyOf(row.abscissa));
+	const given = {
+		abscissaUnit: unit,
+		quantities,
+		abscissa: rows.map((row) => row.abscissa),
+		ordinates: quantities.map((_, index) => rows.map((row) => row.ordinates[index]))
+	};
+	const measuredRangeEv = { low: energiesEv[0], high: energiesEv[energiesEv.length - 1] };
+
+	if (quantities[0] === 'epsilonImaginary') {
+		const frequenciesRadPerS = ascending.map((row) => angularFrequency(row.abscissa, unit));
+		const epsilon = ascending.map((row) => row.ordinates[0]);
+		return {
+			model: { kind: 'imaginaryTable', frequenciesRadPerS, epsilon },
+			given,
+			rows: null,
+			measuredRangeEv
+		};
+	}
+	const column = (name: Quantity) => {
+		const index = quantities.indexOf(name);
+		return index < 0 ? undefined : ascending.map((row) => row.ordinates[index]);
+	};
+	const { epsilon1, epsilon2 } = permittivity(column);
+	const { lowEnd, highEnd } = reading;
+	return {
+		model: { kind: 'table', energiesEv, epsilon2, lowEnd, highEnd },
+		given,
+		rows: { energiesEv, epsilon1, epsilon2 },
+		measuredRangeEv
+	};
+}
+
+/** eps = (n + i k)^2, or as given. */
+function permittivity(column: (name: Quantity) => number[] | undefined) {
+	const [n, k] = [column('n'), column('k')];
+	if (n && k) {
+		// The product form of n^2 - k^2 keeps its digits where n and k are close.
+		return {
+			epsilon1: n.map((value, i) => (value - k[i]) * (value + k[i])),
+			epsilon2: n.map((value, i) => 2 * value * k[i])
+		};
+	}
+	return { epsilon1: column('epsilon1') ?? null, epsilon2: column('epsilon2') ?? [] };
+}
+
+const COMBINATIONS = ['n,k', 'epsilon1,epsilon2', 'epsilon2', 'epsilonImaginary'];
+
+function checkQuantities(quantities: Quantity[]): void {
+	const sorted = [...quantities].sort((a, b) => (a < b ? 1 : -1)).join(',');
+	const known = COMBINATIONS.some(
+		(combination) =>
+			combination
+				.split(',')
+				.sort((a, b) => (a < b ? 1 : -1))
+				.join(',') === sorted
+	);
+	if (known) return;
+	throw new InvalidInput('The columns do not determine a permittivity.', [
+		{
+			path: 'description.ordinates',
+			message: 'give n and k, or epsilon1 and epsilon2, or epsilon2 alone, or epsilonImaginary alone'
+		}
+	]);
+}
+
+function readRows(sheet: Sheet, reading: MapReading): Row[] {
+	const columns = [reading.abscissa.column, ...reading.ordinates.map(({ column }) => column)];
+	if (new Set(columns).size < columns.length) {
+		throw new InvalidInput('One column was given two meanings.', [
+			{ path: 'description.ordinates', message: 'each column of the file may be used once' }
+		]);
+	}
+	const issues: FileIssue[] = [];
+	const rows = sheet.rows.map(({ line, cells }) => {
+		const numbers = columns.map((column, index) => {
+			const text = cells[column - 1];
+			const report = (rule: string, message: string) => {
+				issues.push({ line, column, rule, message, text: text ?? '' });
+				return Number.NaN;
+			};
+			if (text === undefined) return report('width', `the line has no column ${column}`);
+			const read = readNumber(text, sheet.decimal);
+			if (!('value' in read)) return report(read.rule, read.message);
+			const fault =
+				index === 0
+					? abscissaFault(read.value)
+					: ordinateFault(reading.ordinates[index - 1].quantity, read.value);
+			return fault ? report(...fault) : read.value;
+		});
+		return { line, abscissa: numbers[0], ordinates: numbers.slice(1) };
+	});
+	if (issues.length > 0) throw new RefusedFile(issues);
+	if (rows.length < 2) {
+		const message = 'a table needs at least two rows';
+		throw new RefusedFile([{ line: rows[0].line, column: null, rule: 'rows', message, text: '' }]);
+	}
+	return rows;
+}
+
+const abscissaFault = (value: number): [string, string] | undefined =>
+	value > 0 ? undefined : ['abscissa', 'the abscissa must be above zero'];
+
+function ordinateFault(quantity: Quantity, value: number): [string, string] | undefined {
+	switch (quantity) {
+		case 'n':
+			return value >= 0
+				? undefined
+				: ['passivity', 'n is negative; a passive medium has n and k of one sign'];
+		case 'k':
+			return value >= 0
+				? undefined
+				: [
+						'passivity',
+						'k is negative, which means gain; files of the other sign convention need their sign turned'
+					];
+		case 'epsilon2':
+			return value >= 0
+				? undefined
+				: [
+						'passivity',
+						"eps'' is negative, which means gain; files of the other sign convention need their sign turned"
+					];
+		case 'epsilonImaginary':
+			return value >= 1 ? undefined : ['passivity', 'eps(i xi) is below 1; no passive medium has that'];
+		case 'epsilon1':
+			return undefined;
+	}
+}
+
+/** Strictly one way along the file: a table that turns around is two tables, and which one is meant is not ours to guess. */
+function checkOrder(rows: Row[], duplicates: TableReading['duplicates']): Row[] {
+	const kept: Row[] = [rows[0]];
+	const issues: FileIssue[] = [];
+	const sign = Math.sign(rows[rows.length - 1].abscissa - rows[0].abscissa) || 1;
+	for (const row of rows.slice(1)) {
+		const last = kept[kept.length - 1];
+		const step = (row.abscissa - last.abscissa) * sign;
+		if (step > 0) {
+			kept.push(row);
+			continue;
+		}
+		const equal = step === 0 && row.ordinates.every((value, index) => value === last.ordinates[index]);
+		if (equal && duplicates === 'merge-equal') continue;
+		issues.push({
+			line: row.line,
+			column: null,
+			rule: step === 0 ? 'duplicate' : 'order',
+			message:
+				step === 0
+					? `the abscissa ${row.abscissa} stands in line ${last.line} already`
+					: `the abscissa ${row.abscissa} turns back behind that of line ${last.line}, ${last.abscissa}`,
+			text: String(row.abscissa)
+		});
+	}
+	if (issues.length > 0) throw new RefusedFile(issues);
+	return kept;
+}

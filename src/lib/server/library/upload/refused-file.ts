@@ -1,0 +1,37 @@
+/** One thing wrong with an uploaded file: where it is, which rule it breaks, and what would be right. */
+export interface FileIssue {
+	line: number;
+	/** Counted from 1; null where the whole line is meant. */
+	column: number | null;
+	rule: string;
+	message: string;
+	/** The text itself, cut short; shown escaped. */
+	text: string;
+}
+
+const ISSUES_MAX = 100;
+const TEXT_MAX = 60;
+
+/** A file that was not taken. Nothing of it is stored. */
+export class RefusedFile extends Error {
+	override readonly name = 'RefusedFile';
+	readonly issues: FileIssue[];
+
+	constructor(
+		issues: FileIssue[],
+		readonly code: 'invalid' | 'ambiguous' = 'invalid'
+	) {
+		super(
+			issues.length === 1
+				? `The file was not taken: ${issues[0].message}`
+				: `The file was not taken: ${issues.length} problems, the first in line ${issues[0].line}.`
+		);
+		this.issues = issues
+			.slice(0, ISSUES_MAX)
+			.map((issue) => ({ ...issue, text: issue.text.slice(0, TEXT_MAX) }));
+	}
+}
+
+export const refuse = (rule: string, message: string, line = 1, text = ''): never => {
+	throw new RefusedFile([{ line, column: null, rule, message, text }]);
+};
