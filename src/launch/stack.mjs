@@ -27,6 +27,7 @@ export async function runStack(work) {
 	};
 	// Kept until the end: a second Ctrl-C must not interrupt the orderly stop.
 	for (const signal of SIGNALS) process.on(signal, onSignal);
+	watchParent(onSignal);
 	try {
 		await work({ onStop: (stop) => stops.push(stop), asked });
 	} catch (error) {
@@ -46,4 +47,20 @@ export async function runStack(work) {
 		}
 	}
 	process.exit();
+}
+
+/**
+ * A signal sent to npm ends npm and the shell below it, and does not reach this process: it only sees its parent change.
+ *
+ * @param {() => void} onGone
+ */
+function watchParent(onGone) {
+	if (!process.env.npm_lifecycle_event) return;
+	const parent = process.ppid;
+	const watch = setInterval(() => {
+		if (process.ppid === parent) return;
+		clearInterval(watch);
+		onGone();
+	}, 500);
+	watch.unref();
 }

@@ -1,5 +1,6 @@
 import { ENGINE_VERSION, Refusal, estimateCost } from '../../engine/index.ts';
 import type { ForceAnswer, ForceRequest } from '../../engine/contract.ts';
+import { checkRequest } from '../../engine/validate.ts';
 import type { ForceRequestComplete } from '../../schemas/force.ts';
 import type { ResolvedVersion } from '../../schemas/version.ts';
 import { InvalidInput } from '../errors.ts';
@@ -41,7 +42,7 @@ export interface ForceResult extends ForceAnswer {
 	separationsNm: number[];
 }
 
-/** @throws InvalidInput for a version that does not exist and for work above the cap */
+/** @throws InvalidInput for a version that does not exist, for what the engine refuses and for work above the cap */
 export async function planForces(complete: ForceRequestComplete): Promise<ForcePlan> {
 	const refs = pinnedVersions(complete);
 	const resolved = refs.length > 0 ? await versions.resolve(refs) : new Map<string, ResolvedVersion>();
@@ -64,7 +65,9 @@ function describeUse(version: ResolvedVersion | undefined): UsedVersion[] {
 }
 
 function price(request: ForceRequest): number {
-	const { seconds } = refusing(() => estimateCost(request));
+	// Refused here and not in a thread: an absurd request must not wait behind reasonable ones to be told so.
+	refusing(() => checkRequest(request));
+	const { seconds } = estimateCost(request);
 	if (seconds <= COST_CAP_SECONDS) return seconds;
 	const about = seconds < 1000 ? seconds.toFixed(0) : seconds.toExponential(0);
 	throw new InvalidInput(

@@ -5,7 +5,7 @@ import { inputChecksum, pinnedVersions, resolveRequest } from './plan.ts';
 
 const gold: PermittivityModel = { kind: 'drude', plasmaEnergyEv: 9, dampingEv: 0.035 };
 const silica: PermittivityModel = { kind: 'constant', value: 2.1 };
-const library = new Map([
+const library = new Map<string, PermittivityModel>([
 	['gold-drude@1.0', gold],
 	['silica-constant@1.0', silica]
 ]);

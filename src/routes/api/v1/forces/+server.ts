@@ -18,7 +18,7 @@ export const POST: RequestHandler = ({ request, getClientAddress, platform }) =>
 		const plan = await planForces(parseInput(forceRequest, await readJson(request, BODY_MAX)));
 		await chargeComputing(getClientAddress(), plan.costSeconds);
 
-		const { gone, forget } = callerGone(request, platform?.req);
+		const { gone, forget } = callerGone(request, platform);
 		if (wantsLines(request)) {
 			return streamLines(plan, (progress, signal) => runForces(plan, progress, signal).finally(forget), gone);
 		}
