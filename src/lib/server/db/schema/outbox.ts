@@ -5,6 +5,9 @@ import { instant, isOneOf } from './columns.ts';
 export const OUTBOX_STATES = ['waiting', 'sent', 'failed', 'void'] as const;
 export type OutboxState = (typeof OUTBOX_STATES)[number];
 
+/** Stands where the address of a deleted account stood. */
+export const FORGOTTEN = 'deleted account';
+
 /** Mail that a transaction decided to send: written with it, sent afterwards. */
 export const outbox = pgTable(
 	'outbox',

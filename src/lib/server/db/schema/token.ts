@@ -15,7 +15,7 @@ export const apiToken = pgTable(
 			.references(() => person.id, { onDelete: 'restrict' }),
 		name: text().notNull(),
 		beginning: text().notNull(),
-		scopes: text().$type<Scope>().array().notNull(),
+		scopes: text().array().$type<Scope[]>().notNull(),
 		createdAt: instant().notNull(),
 		expiresAt: instant().notNull(),
 		lastUsedAt: instant(),
