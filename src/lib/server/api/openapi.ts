@@ -1,0 +1,52 @@
+import { createDocument, type CreateDocumentOptions, type ZodOpenApiPathsObject } from 'zod-openapi';
+import { ENGINE_VERSION } from '../../engine/version.ts';
+import { materialChoiceDescribed } from '../../schemas/force.ts';
+import { forcePaths } from './openapi-forces.ts';
+import { libraryPaths } from './openapi-library.ts';
+
+/** The description of the API, made from the schemas that check what comes in and out. */
+
+export const API_BASE = '/api/v1';
+
+const paths: ZodOpenApiPathsObject = { ...forcePaths, ...libraryPaths };
+
+const [pinned, inPlace] = materialChoiceDescribed.options;
+
+const override: CreateDocumentOptions['override'] = ({ jsonSchema, zodSchema }) => {
+	// While parsing, a material is told apart by its field `version`; drawn, it is one of two objects.
+	if (zodSchema.meta()?.id === 'Material' && zodSchema._zod.def.type === 'pipe') {
+		jsonSchema.anyOf = [reference('PinnedMaterial'), reference('InPlaceMaterial')];
+	}
+	// Sums hold models; the depth to which they may nest is checked, not drawn.
+	const kind = jsonSchema.properties?.kind;
+	if (typeof kind === 'object' && kind.const === 'sum' && jsonSchema.properties) {
+		jsonSchema.properties.of = { type: 'array', minItems: 1, items: reference('PermittivityModel') };
+	}
+};
+
+function reference(id: string): { $ref: string } {
+	return { $ref: `#/components/schemas/${id}` };
+}
+
+let document: ReturnType<typeof createDocument> | undefined;
+
+export function openApiDocument(): ReturnType<typeof createDocument> {
+	document ??= createDocument(
+		{
+			openapi: '3.1.0',
+			info: {
+				title: 'Hairsbreadth',
+				version: ENGINE_VERSION,
+				description:
+					'Permittivity data with their origin, and the Lifshitz forces that follow from them. Field names carry their ' +
+					'unit; negative energy, pressure and force attract; every number of a curve carries a bound on its error.',
+				license: { name: 'Apache-2.0', identifier: 'Apache-2.0' }
+			},
+			servers: [{ url: API_BASE }],
+			paths,
+			components: { schemas: { PinnedMaterial: pinned, InPlaceMaterial: inPlace } }
+		},
+		{ override }
+	);
+	return document;
+}
