@@ -8,7 +8,9 @@ import { logRequest } from '$lib/server/hooks/request-log.ts';
 import { isForeign } from '$lib/server/hooks/same-origin.ts';
 import { withSecurityHeaders } from '$lib/server/hooks/security-headers.ts';
 import { checkStart } from '$lib/server/hooks/start.ts';
+import { NotFound } from '$lib/server/errors.ts';
 import { BadRequest } from '$lib/server/limits/refusals.ts';
+import { whoMay } from '$lib/server/policy.ts';
 
 export const init: ServerInit = async () => {
 	if (building) return;
@@ -39,7 +41,22 @@ const sameOrigin: Handle = ({ event, resolve }) => {
 	return problemResponse(new BadRequest(403, 'foreign-origin', 'This request was caused by another site.'));
 };
 
-export const handle = sequence(logged, secured, sameOrigin);
+/** Only what the policy table names is answered; under /api every answer is JSON. */
+const permitted: Handle = ({ event, resolve }) => {
+	const { id } = event.route;
+	if (id === null) {
+		if (!event.url.pathname.startsWith('/api/')) return resolve(event);
+		return problemResponse(
+			new NotFound(`There is nothing at ${event.url.pathname}; see /api/v1/openapi.json.`)
+		);
+	}
+	if (whoMay(id, event.request.method)) return resolve(event);
+	return problemResponse(
+		new BadRequest(405, 'method', `${event.request.method} is not answered here; see /api/v1/openapi.json.`)
+	);
+};
+
+export const handle = sequence(logged, secured, sameOrigin, permitted);
 
 export const handleError: HandleServerError = ({ error, event, status, message }) => {
 	if (status < 500) return { message };

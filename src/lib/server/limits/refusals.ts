@@ -4,7 +4,7 @@ export class BadRequest extends Error {
 	override readonly name = 'BadRequest';
 
 	constructor(
-		readonly status: 400 | 403 | 413 | 415,
+		readonly status: 400 | 403 | 405 | 413 | 415,
 		readonly code: string,
 		message: string
 	) {
