@@ -80,6 +80,18 @@ export const libraryQuery = z.object({
 	limit: z.coerce.number().int().min(1).max(200).default(100)
 });
 
+/** Query of GET /api/v1/materials. */
+export const materialQuery = libraryQuery.pick({
+	search: true,
+	class: true,
+	quality: true,
+	coversEv: true,
+	cursor: true,
+	limit: true
+});
+
+export const materialPage = z.object({ materials: z.array(materialSummary), next: z.string().nullable() });
+
 /** One line of the library's table: a dataset with its newest published version, or a material without any. */
 export const libraryRow = z.object({
 	material: z.object({
@@ -124,6 +136,7 @@ export type Hazards = z.infer<typeof hazards>;
 export type MaterialFields = z.infer<typeof materialFields>;
 export type MaterialSummary = z.infer<typeof materialSummary>;
 export type LibraryQuery = z.infer<typeof libraryQuery>;
+export type MaterialQuery = z.infer<typeof materialQuery>;
 export type LibrarySort = z.infer<typeof librarySort>;
 export type LibraryRow = z.infer<typeof libraryRow>;
 export type LibraryPage = z.infer<typeof libraryPage>;

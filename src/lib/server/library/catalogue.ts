@@ -8,14 +8,12 @@ import { dataset } from '../db/schema/dataset.ts';
 import { material } from '../db/schema/material.ts';
 import { source } from '../db/schema/source.ts';
 import { Conflict, NotFound } from '../errors.ts';
+import { folded } from './search-text.ts';
 
 /** Writing what surrounds the versions: materials, sources, datasets. Each writes its audit row beside it. */
 
 const searchable = (...words: (string | null)[]): string =>
-	words
-		.filter((word) => word !== null)
-		.join(' ')
-		.toLowerCase();
+	folded(words.filter((word) => word !== null).join(' '));
 
 const materialRow = (fields: MaterialFields) => ({
 	...fields,

@@ -14,6 +14,7 @@ import { database, type Executor } from '../db/client.ts';
 import { shortCitation } from './citation.ts';
 import { extrapolatedRange } from './extrapolated-range.ts';
 import { rangeOf } from './read-versions.ts';
+import { containing, folded, searchWords } from './search-text.ts';
 
 /** The library's table: one row a dataset with its newest published version, found, filtered, sorted and paged. */
 
@@ -56,6 +57,16 @@ const SORT_KEYS: Record<LibrarySort, SQL> = {
 	published: sql`coalesce(extract(epoch from latest.published_at), 0)::float8`
 };
 
+/** With a search, "by material" means the best hit first: the formula or name itself, then names that begin with it. */
+function sortKey({ sort, search }: LibraryQuery): SQL {
+	const text = folded(search);
+	if (sort !== 'material' || text === '') return SORT_KEYS[sort];
+	const begins = containing(text).slice(1);
+	return sql`case when lower(material.formula) = ${text} or lower(material.name) = ${text} or material.slug = ${text} then '0'
+		when lower(material.name) like ${begins} or dataset.slug like ${begins} then '1'
+		when material.search_text like ${containing(text)} then '2' else '3' end || lower(material.name)`;
+}
+
 const TIE = sql`coalesce(dataset.slug, material.slug)`;
 
 const FROM = sql`
@@ -72,7 +83,7 @@ const FROM = sql`
 const cursorKey = z.tuple([z.union([z.string(), z.number()]), z.string()]);
 
 export async function rows(query: LibraryQuery, executor: Executor = database()): Promise<LibraryPage> {
-	const key = SORT_KEYS[query.sort];
+	const key = sortKey(query);
 	const matching = conditions(query);
 	const down = query.direction === 'descending';
 	const after = query.cursor ? [afterCursor(query, key, down)] : [];
@@ -107,7 +118,7 @@ async function counts(query: LibraryQuery, executor: Executor): Promise<LibraryP
 const where = (parts: SQL[]): SQL => (parts.length > 0 ? sql`where ${sql.join(parts, sql` and `)}` : sql``);
 
 function conditions(query: LibraryQuery): SQL[] {
-	const parts = words(query.search).map(matchesWord);
+	const parts = searchWords(query.search).map(matchesWord);
 	if (query.class) parts.push(sql`material.class = ${query.class}`);
 	if (query.quality) parts.push(sql`latest.quality = ${query.quality}`);
 	if (query.coversEv !== undefined)
@@ -118,19 +129,9 @@ function conditions(query: LibraryQuery): SQL[] {
 	return parts;
 }
 
-/** More than these would only slow the search down; nobody types them. */
-const WORDS_MAX = 8;
-
-const words = (search: string): string[] =>
-	search
-		.toLowerCase()
-		.split(/\s+/)
-		.filter((word) => word !== '')
-		.slice(0, WORDS_MAX);
-
 /** Every word must be found in the material, the dataset or one of its sources. */
 function matchesWord(word: string): SQL {
-	const pattern = `%${word.replace(/[\\%_]/g, '\\$&')}%`;
+	const pattern = containing(word);
 	return sql`(material.search_text like ${pattern} or lower(dataset.title) like ${pattern}
 		or dataset.slug like ${pattern} or exists (
 			select from version_source join source on source.id = version_source.source_id

@@ -4,14 +4,7 @@ import type { ResolvedVersion, VersionDetail } from '../../schemas/version.ts';
 import { database, type Executor } from '../db/client.ts';
 import { checkResult, dataset, version } from '../db/schema/dataset.ts';
 import { NotFound } from '../errors.ts';
-import {
-	PUBLIC_STATES,
-	rangeOf,
-	selectVersions,
-	sourcesOf,
-	toSummary,
-	type VersionRow
-} from './read-versions.ts';
+import { PUBLIC_STATES, selectVersions, sourcesOf, toSummary, type VersionRow } from './read-versions.ts';
 
 /** Reading published versions; withdrawn ones keep their address. */
 

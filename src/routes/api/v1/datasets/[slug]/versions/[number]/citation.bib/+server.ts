@@ -1,0 +1,16 @@
+import { answering } from '$lib/server/api/problem.ts';
+import { taggedFile } from '$lib/server/api/serialize/tagged.ts';
+import { bibtex } from '$lib/server/library/citation.ts';
+import * as versions from '$lib/server/library/versions.ts';
+import type { RequestHandler } from './$types';
+
+export const GET: RequestHandler = ({ request, params, url }) =>
+	answering(async () => {
+		const version = await versions.get(params.slug, params.number);
+		return taggedFile(
+			request,
+			bibtex(version, url.origin),
+			'application/x-bibtex; charset=utf-8',
+			`${version.ref}.bib`
+		);
+	});
