@@ -98,7 +98,7 @@ describe('a study in an address', () => {
 		study.left.layers.push({ of: { version: 'silica-two-oscillators@1.0' }, thicknessNm: 20 });
 		study.left.substrate.zeroFrequency = 'plasma';
 		expect(encodeStudy(study)).toBe(
-			'?left=silica-two-oscillators@1.0:20nm,gold-drude@1.0!plasma&medium=bromobenzene-debye-uv@1.0' +
+			'?left=silica-two-oscillators@1.0:20nm,gold-lorentz-drude@1.0!plasma&medium=bromobenzene-debye-uv@1.0' +
 				'&right=silica-two-oscillators@1.0&T=300&choice=Debye+and+one+UV+term' +
 				'&choice=Seven+oscillators;medium:bromobenzene-seven-oscillators@1.0&at=38'
 		);

@@ -28,9 +28,9 @@ describe('the request of a model choice', () => {
 		study.debyeLengthNm = 10;
 		study.choices[1] = { name: '', changes: { left: { zeroFrequency: 'written' } }, debyeLengthNm: 'none' };
 		const [first, second] = study.choices.map((choice) => choiceRequest(study, choice).arrangement);
-		expect(first.left.substrate).toEqual({ version: 'gold-drude@1.0', zeroFrequency: 'plasma' });
+		expect(first.left.substrate).toEqual({ version: 'gold-lorentz-drude@1.0', zeroFrequency: 'plasma' });
 		expect(first.debyeLengthNm).toBe(10);
-		expect(second.left.substrate).toEqual({ version: 'gold-drude@1.0' });
+		expect(second.left.substrate).toEqual({ version: 'gold-lorentz-drude@1.0' });
 		expect(second.debyeLengthNm).toBeUndefined();
 	});
 

@@ -49,7 +49,7 @@ describe('a choice in words', () => {
 			debyeLengthNm: 'none' as const
 		};
 		expect(changeWords(WORKED_STUDY, choice, known)).toEqual([
-			'Gold-drude@1.0: static term plasma',
+			'Gold-lorentz-drude@1.0: static term plasma',
 			'No ions'
 		]);
 		expect(changeWords(WORKED_STUDY, WORKED_STUDY.choices[0], known)).toEqual([]);
