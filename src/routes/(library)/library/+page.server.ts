@@ -1,9 +1,9 @@
-import * as materials from '$lib/server/library/materials.ts';
+import * as search from '$lib/server/library/search.ts';
 import { answered } from '../answered.ts';
 import { decodeView } from './library-address.ts';
 import type { PageServerLoad } from './$types';
 
 export const load: PageServerLoad = async ({ url }) => {
 	const { view, problems } = decodeView(url.searchParams);
-	return { view, problems, library: await answered(() => materials.library(view)) };
+	return { view, problems, library: await answered(() => search.rows(view)) };
 };

@@ -70,7 +70,7 @@ export function decodeView(parameters: URLSearchParams): { view: LibraryView; pr
 }
 
 /** The query of a changed view: only what differs from the defaults, and the first page unless `changes` names another. */
-export function viewQuery(view: LibraryView, changes: Partial<LibraryView> = {}): string {
+export function viewQuery(view: LibraryView, changes: Partial<LibraryView> = {}): '' | `?${string}` {
 	const next: LibraryView = { ...view, cursor: undefined, ...changes };
 	const parameters = new URLSearchParams();
 	for (const field of [...FIELDS, 'at'] as const) {
@@ -85,7 +85,7 @@ export function viewQuery(view: LibraryView, changes: Partial<LibraryView> = {})
 }
 
 /** A second press on a column turns its order round. */
-export function sortedBy(view: LibraryView, sort: LibrarySort): string {
+export function sortedBy(view: LibraryView, sort: LibrarySort): '' | `?${string}` {
 	const turned = view.sort === sort && view.direction === 'ascending';
 	return viewQuery(view, { sort, direction: turned ? 'descending' : 'ascending' });
 }

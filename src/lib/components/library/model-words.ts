@@ -1,0 +1,143 @@
+import type { HighEnd, LowEnd, PermittivityModel } from '../../engine/contract.ts';
+import { evFromRadPerS } from '../../engine/units.ts';
+
+/** A permittivity model as a reader checks it against a paper: the formula of each part and its figures, unrounded. */
+
+export interface ModelPart {
+	name: string;
+	/** Set by MathLine. */
+	formula: string;
+	/** Heads with their units, set by MathLine. */
+	columns: string[];
+	rows: string[][];
+	notes: string[];
+}
+
+const part = (name: string, formula: string, over: Partial<ModelPart> = {}): ModelPart => ({
+	name,
+	formula,
+	columns: [],
+	rows: [],
+	notes: [],
+	...over
+});
+
+const plasmaColumn = 'ħω_{p} / eV';
+const dampingColumn = 'ħγ / eV';
+/** The second unit is a help to the eye; six figures are more than any fit has. */
+const inEv = (radPerS: number) => String(Number(evFromRadPerS(radPerS).toPrecision(6)));
+
+function lowEndWords(end: LowEnd): string {
+	switch (end.kind) {
+		case 'drude':
+			return `Below the table: the absorption of a Drude metal with plasma energy ${end.plasmaEnergyEv} eV and damping ${end.dampingEv} eV.`;
+		case 'plasma':
+			return `Below the table: no absorption, and a plasma term with plasma energy ${end.plasmaEnergyEv} eV.`;
+		case 'power':
+			return `Below the table: absorption proportional to the frequency to the power ${end.exponent}, joined at the first point.`;
+		case 'none':
+			return 'Below the table: no absorption.';
+	}
+}
+
+function highEndWords(end: HighEnd): string {
+	return end.kind === 'power'
+		? `Above the table: absorption falling with the frequency to the power ${end.exponent}, joined at the last point.`
+		: 'Above the table: no absorption.';
+}
+
+/** The parts that add up; a sum inside a sum is one sum. */
+export function modelParts(model: PermittivityModel): ModelPart[] {
+	switch (model.kind) {
+		case 'sum':
+			return model.of.flatMap(modelParts);
+		case 'vacuum':
+			return [part('Vacuum', 'ε(iξ) = 1')];
+		case 'constant':
+			return [part('Constant', 'ε(iξ) = ε', { columns: ['ε'], rows: [[String(model.value)]] })];
+		case 'idealConductor':
+			return [part('Ideal conductor', 'r_{TM} = 1, r_{TE} = −1')];
+		case 'drude':
+			return [
+				part('Drude', 'ε(iξ) − 1 = ω_{p}^{2} / ξ(ξ + γ)', {
+					columns: [plasmaColumn, dampingColumn],
+					rows: [[String(model.plasmaEnergyEv), String(model.dampingEv)]]
+				})
+			];
+		case 'plasma':
+			return [
+				part('Plasma', 'ε(iξ) − 1 = ω_{p}^{2} / ξ^{2}', {
+					columns: [plasmaColumn],
+					rows: [[String(model.plasmaEnergyEv)]]
+				})
+			];
+		case 'lorentz':
+			return [
+				part('Lorentz oscillators', 'ε(iξ) − 1 = Σ f_{j} / (ω_{j}^{2} + ξ^{2} + γ_{j}ξ)', {
+					columns: ['f_{j} / eV^{2}', 'ħω_{j} / eV', 'ħγ_{j} / eV'],
+					rows: model.terms.map((term) => [
+						String(term.strengthEv2),
+						String(term.energyEv),
+						String(term.dampingEv)
+					])
+				})
+			];
+		case 'debye':
+			return [
+				part('Debye relaxation', 'ε(iξ) − 1 = Σ d_{j} / (1 + ξτ_{j})', {
+					columns: ['d_{j}', 'τ_{j} / ps'],
+					rows: model.terms.map((term) => [String(term.strength), String(term.relaxationTimePs)])
+				})
+			];
+		case 'ninhamParsegian':
+			return [
+				part('Undamped oscillators', 'ε(iξ) − 1 = Σ C_{j} / (1 + ξ^{2}/ω_{j}^{2})', {
+					columns: ['C_{j}', 'ω_{j} / rad s^{−1}', 'ħω_{j} / eV'],
+					rows: model.terms.map((term) => [
+						String(term.strength),
+						term.frequencyRadPerS.toExponential().replace('e+', 'e'),
+						inEv(term.frequencyRadPerS)
+					])
+				})
+			];
+		case 'dcConductivity':
+			return [
+				part('Conductivity at zero frequency', 'ε(iξ) − 1 = σ / ε_{0}ξ', {
+					columns: ['σ / S m^{−1}'],
+					rows: [[String(model.siemensPerM)]]
+				})
+			];
+		case 'table':
+			return [
+				part('Table', 'ε(iξ) − 1 = (2/π) ∫ ωε″(ω) / (ω^{2} + ξ^{2}) dω', {
+					columns: ['rows', 'first, ħω / eV', 'last, ħω / eV'],
+					rows: [
+						[
+							String(model.energiesEv.length),
+							String(model.energiesEv[0]),
+							String(model.energiesEv[model.energiesEv.length - 1])
+						]
+					],
+					notes: [
+						'Between the points the absorption is a straight line on logarithmic axes.',
+						lowEndWords(model.lowEnd),
+						highEndWords(model.highEnd)
+					]
+				})
+			];
+		case 'imaginaryTable':
+			return [
+				part('Table on the imaginary axis', 'ε(iξ)', {
+					columns: ['rows', 'first ξ / rad s^{−1}', 'last ξ / rad s^{−1}'],
+					rows: [
+						[
+							String(model.frequenciesRadPerS.length),
+							String(model.frequenciesRadPerS[0]),
+							String(model.frequenciesRadPerS[model.frequenciesRadPerS.length - 1])
+						]
+					],
+					notes: ['Between the points a monotone curve in the logarithm of the frequency.']
+				})
+			];
+	}
+}
