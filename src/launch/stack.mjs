@@ -6,16 +6,21 @@ const SIGNALS = /** @type {const} */ (['SIGINT', 'SIGTERM', 'SIGHUP']);
  * @typedef {object} Stack
  * @property {(stop: () => unknown) => void} onStop adds what must be stopped; the last added is stopped first
  * @property {Promise<void>} asked fulfilled by Ctrl-C or a signal
+ * @property {() => boolean} interrupted whether it was
+ * @property {(say: () => void) => void} atEnd adds what is said after everything has stopped
  */
 
 /**
  * Runs `work`, and afterwards stops everything it started, in the reverse order: at its end, on an error, on Ctrl-C.
  *
  * @param {(stack: Stack) => Promise<void>} work
+ * @param {number} [interruptedCode] of this process when it was told to stop; a server that was is a success
  */
-export async function runStack(work) {
+export async function runStack(work, interruptedCode = 0) {
 	/** @type {(() => unknown)[]} */
 	const stops = [];
+	/** @type {(() => void)[]} */
+	const lastWords = [];
 	let wanted = false;
 	let ask = () => {};
 	/** @type {Promise<void>} */
@@ -29,7 +34,12 @@ export async function runStack(work) {
 	for (const signal of SIGNALS) process.on(signal, onSignal);
 	watchParent(onSignal);
 	try {
-		await work({ onStop: (stop) => stops.push(stop), asked });
+		await work({
+			onStop: (stop) => stops.push(stop),
+			asked,
+			interrupted: () => wanted,
+			atEnd: (say) => lastWords.push(say)
+		});
 	} catch (error) {
 		// What fails because it was interrupted is no news.
 		if (!wanted) {
@@ -46,7 +56,8 @@ export async function runStack(work) {
 			process.exitCode = 1;
 		}
 	}
-	process.exit();
+	for (const say of lastWords) say();
+	process.exit(wanted ? interruptedCode : undefined);
 }
 
 /**
