@@ -13,16 +13,23 @@ export interface FrequencyBlock {
 	weight: Float64Array;
 	/** Coefficients of the last three orthonormal polynomials, times the root of the total weight. */
 	projections: Float64Array[];
+	/** Distance of the outer nodes on (-1, 1). */
+	reach: number;
 	/** All terms are there: no error of summation. */
 	exact: boolean;
 	/** Last block of its octave: the tail is judged here. */
 	closesOctave: boolean;
 	/** Node i is computed on the lattice shifted by half a step where parity + i is odd. */
 	parity: number;
+	/** Computed on both lattices: terms that may carry the whole result alone. */
+	doubled: boolean;
 	/** eps(i xi) - 1 and mu(i xi) by material, filled when first asked for. */
 	chi: Float64Array[];
 	mu: Float64Array[];
 }
+
+/** Matsubara terms up to this one are computed on two lattices. */
+const DOUBLED = 2;
 
 const rules = new Map<string, GaussRule>();
 
@@ -44,9 +51,11 @@ function block(
 		xi: rule.nodes.map(place),
 		weight: rule.weights.map((w) => w * total),
 		projections: rule.projections.map((row) => row.map((value) => value * total)),
+		reach: rule.nodes[rule.nodes.length - 1] - rule.nodes[0],
 		exact,
 		closesOctave: true,
 		parity,
+		doubled: false,
 		chi: [],
 		mu: []
 	};
@@ -101,6 +110,7 @@ export function matsubaraBlocks(
 	for (let n = 1; n < level.direct; n++) {
 		const one = matsubaraBlock(n, n + 1, 1, temperature);
 		one.closesOctave = (n & (n + 1)) === 0;
+		one.doubled = n <= DOUBLED;
 		blocks.push(one);
 	}
 	let next = level.direct;

@@ -7,12 +7,30 @@ import { valueOf, type Tally } from './tally.ts';
 
 /**
  * The error of an m-node Gauss rule over an octave: terms are analytic for Re xi > 0, so the coefficients c_j of a
- * block fall at least like (3 + sqrt 8)^-j (Bernstein ellipse through xi = 0), and the rule errs by c_2m.
+ * block fall in the end at least like (3 + sqrt 8)^-j (Bernstein ellipse through xi = 0), and the rule errs by c_2m.
+ * They are extrapolated from the last ones seen.
  */
 const COEFFICIENT_FALL = 1 / (3 + Math.sqrt(8));
 
+/**
+ * c_2m over c_{m-1}. Where e^-y0 falls steeply across a block, y0 changing by z a unit of x, its own expansion sets the
+ * pace until it has caught up: modified Bessel functions, I_{j+1/2}/I_{j-1/2} ~ z/(j + 1/2 + sqrt((j + 1/2)^2 + z^2)).
+ */
+function fallBeyond(block: FrequencyBlock, [first, last]: [number, number]): number {
+	const nodes = block.xi.length;
+	const z = (STEEPNESS * (last - first)) / block.reach;
+	let product = 1;
+	for (let j = nodes; j <= 2 * nodes; j++) {
+		product *= Math.max(COEFFICIENT_FALL, z / (j + 0.5 + Math.hypot(j + 0.5, z)));
+	}
+	return product;
+}
+
+/** The powers of y0 beside e^-y0, and layers that decay faster, make a block a little steeper than its phase says. */
+const STEEPNESS = 1.3;
+
 /** What polynomials beyond the last measured one may add together, over the geometric estimate. */
-const BLOCK_SAFETY = 4;
+const BLOCK_SAFETY = 12;
 
 /** The sum ends where its tail is this share of the accuracy asked for, or of the rounding of all terms. */
 const TAIL_SHARE = 0.02;
@@ -38,8 +56,7 @@ function blockSum(system: System, level: Level): BlockSum {
 	const last = new Float64Array(3);
 	const error = new Float64Array(3);
 	const projected = new Float64Array(9);
-	const fall = COEFFICIENT_FALL;
-	const gaussFall = BLOCK_SAFETY * Math.pow(fall, level.nodes + 1);
+	const phases: [number, number] = [0, 0];
 	const add = (block: FrequencyBlock, separation: number, tally: Tally, extrapolate: boolean): void => {
 		const time = roundTripTime(separation);
 		last.fill(0);
@@ -47,6 +64,8 @@ function blockSum(system: System, level: Level): BlockSum {
 		projected.fill(0);
 		for (let i = 0; i < block.xi.length; i++) {
 			at(block, i, separation, time);
+			if (i === 0) phases[0] = terms.phase;
+			phases[1] = terms.phase;
 			const w = block.weight[i];
 			for (let q = 0; q < 3; q++) {
 				const te = terms.te[q];
@@ -62,16 +81,14 @@ function blockSum(system: System, level: Level): BlockSum {
 		}
 		tally.evaluations += terms.evaluations;
 		terms.evaluations = 0;
+		const beyond = block.exact ? 0 : fallBeyond(block, phases);
+		const rate = COEFFICIENT_FALL;
 		for (let q = 0; q < 3; q++) {
 			tally.magnitude[q] += last[q];
 			if (block.exact) continue;
 			const at = 3 * q;
-			const size = Math.max(
-				Math.abs(projected[at]),
-				fall * Math.abs(projected[at + 1]),
-				fall * fall * Math.abs(projected[at + 2])
-			);
-			error[q] = size * (extrapolate ? gaussFall : BLOCK_SAFETY);
+			const [c1, c2, c3] = [0, 1, 2].map((j) => Math.abs(projected[at + j]));
+			error[q] = BLOCK_SAFETY * Math.max(c1, rate * c2, rate * rate * c3) * (extrapolate ? beyond : 1);
 			tally.blocks[q] += error[q];
 		}
 	};

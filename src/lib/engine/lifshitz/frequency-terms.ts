@@ -3,7 +3,7 @@ import { halfSpaceReflection, idealReflection } from '../reflection/half-space.t
 import { stackAtFrequency, stackReflection, OPAQUE, type StackAtFrequency } from '../reflection/stack.ts';
 import type { Body, System } from '../system.ts';
 import type { FrequencyBlock } from './frequency-blocks.ts';
-import type { Level } from './level.ts';
+import { doubledFall, LATTICE_CONSTANTS, singleFall, type Level } from './level.ts';
 import { addPolarizationNoise, polarizationSum } from './polarization-sum.ts';
 import { UNIT_ROUNDOFF } from './tally.ts';
 
@@ -13,6 +13,8 @@ export interface FrequencyTerms {
 	tm: Float64Array;
 	lattice: Float64Array;
 	rounding: Float64Array;
+	/** y0 of the frequency. */
+	phase: number;
 	evaluations: number;
 }
 
@@ -53,9 +55,13 @@ export function frequencyTerms(
 		tm: new Float64Array(3),
 		lattice: new Float64Array(3),
 		rounding: new Float64Array(3),
+		phase: 0,
 		evaluations: 0
 	};
 	const { te, tm, lattice: open, rounding } = terms;
+	const [firstTe, firstTm, firstOpen] = [0, 1, 2].map(() => new Float64Array(3));
+	const single = singleFall(level);
+	const doubled = doubledFall(level);
 	const mediumUlps = substances[0].chi?.ulps ?? 0;
 
 	/** Permittivities of a block, computed when first asked for. */
@@ -132,14 +138,15 @@ export function frequencyTerms(
 		stackReflection(lattice, y0, X, stack, rTM, rTE);
 	};
 
-	const at = (block: FrequencyBlock, i: number, separation: number, time: number): void => {
-		if (block.chi.length === 0) fill(block);
-		const phase = block.xi[i] * time;
-		const X = phase * phase;
-		const y0 = phase * Math.sqrt((1 + block.chi[0][i]) * block.mu[0][i]);
-		const radius = FOOT * analyticRadius(block, i, separation, X, y0);
-		const scale = Math.min(SMALLEST_SCALE, Math.max(0, Math.ceil(-Math.log2(radius))));
-		const lattice = latticeOf(scale, (block.parity + i) & 1);
+	/** TE and TM on one lattice added to the terms; `sums` of even and odd nodes decide what the lattice leaves open. */
+	const onLattice = (
+		block: FrequencyBlock,
+		i: number,
+		separation: number,
+		lattice: LogLattice,
+		y0: number,
+		X: number
+	): void => {
 		reflect(left, stacks[0], block, i, separation, lattice, y0, X, tm1, te1, noise);
 		let tmRight = tm1;
 		let teRight = te1;
@@ -151,22 +158,47 @@ export function frequencyTerms(
 			noiseRight = noise2;
 		}
 		terms.evaluations += 2 * lattice.count;
-		polarizationSum(lattice, y0, te1, teRight, sums);
-		for (let q = 0; q < 3; q++) {
-			te[q] = sums[2 * q] + sums[2 * q + 1];
-			open[q] = Math.abs(sums[2 * q] - sums[2 * q + 1]);
-		}
-		polarizationSum(lattice, y0, tm1, tmRight, sums);
 		const relative = UNIT_ROUNDOFF * (ROUNDING + 2 * y0 + 2 * (noise.relative + noiseRight.relative));
 		rounding.fill(0);
 		if (noise.absolute > 0 || noiseRight.absolute > 0) {
 			addPolarizationNoise(lattice, y0, te1, teRight, noise.absolute, noiseRight.absolute, rounding);
 			addPolarizationNoise(lattice, y0, tm1, tmRight, noise.absolute, noiseRight.absolute, rounding);
 		}
+		polarizationSum(lattice, y0, te1, teRight, sums);
+		for (let q = 0; q < 3; q++) {
+			te[q] = sums[2 * q] + sums[2 * q + 1];
+			open[q] = Math.abs(sums[2 * q] - sums[2 * q + 1]);
+		}
+		polarizationSum(lattice, y0, tm1, tmRight, sums);
 		for (let q = 0; q < 3; q++) {
 			tm[q] = sums[2 * q] + sums[2 * q + 1];
 			open[q] += Math.abs(sums[2 * q] - sums[2 * q + 1]);
 			rounding[q] += relative * (Math.abs(te[q]) + Math.abs(tm[q]));
+		}
+	};
+
+	const at = (block: FrequencyBlock, i: number, separation: number, time: number): void => {
+		if (block.chi.length === 0) fill(block);
+		const phase = block.xi[i] * time;
+		const X = phase * phase;
+		const y0 = phase * Math.sqrt((1 + block.chi[0][i]) * block.mu[0][i]);
+		terms.phase = y0;
+		const radius = FOOT * analyticRadius(block, i, separation, X, y0);
+		const scale = Math.min(SMALLEST_SCALE, Math.max(0, Math.ceil(-Math.log2(radius))));
+		const odd = (block.parity + i) & 1;
+		onLattice(block, i, separation, latticeOf(scale, odd), y0, X);
+		if (!block.doubled) {
+			for (let q = 0; q < 3; q++) open[q] *= single * LATTICE_CONSTANTS[q];
+			return;
+		}
+		firstTe.set(te);
+		firstTm.set(tm);
+		firstOpen.set(open);
+		onLattice(block, i, separation, latticeOf(scale, 1 - odd), y0, X);
+		for (let q = 0; q < 3; q++) {
+			te[q] = (te[q] + firstTe[q]) / 2;
+			tm[q] = (tm[q] + firstTm[q]) / 2;
+			open[q] = doubled * LATTICE_CONSTANTS[q] * Math.hypot(open[q], firstOpen[q]);
 		}
 	};
 	return { terms, at };

@@ -56,15 +56,14 @@ export function atLevel(system: System, level: Level): (separation: number, accu
 		const tally = newTally();
 		zero?.(separation, tally);
 		sum(separation, accuracy, tally);
-		return forces(tally, level, scales(system, separation));
+		return forces(tally, scales(system, separation));
 	};
 }
 
-function forces(tally: Tally, level: Level, scale: [number, number, number]): PlateForces {
+function forces(tally: Tally, scale: [number, number, number]): PlateForces {
 	const values = [0, 1, 2].map((q) => valueOf(tally, q));
 	const bound = (q: number): number =>
-		Math.abs(scale[q]) *
-		(level.latticeFactor[q] * tally.lattice[q] + tally.blocks[q] + tally.tail[q] + tally.rounding[q]);
+		Math.abs(scale[q]) * (tally.lattice[q] + tally.blocks[q] + tally.tail[q] + tally.rounding[q]);
 	return {
 		value: [scale[0] * values[0], scale[1] * values[1], scale[2] * values[2]],
 		bound: [bound(0), bound(1), bound(2)],

@@ -10,7 +10,7 @@ export interface Tally {
 	parts: Float64Array;
 	/** Sum of magnitudes: what cancellation is measured against. */
 	magnitude: Float64Array;
-	/** Error of the integrals over y: half differences of the even and odd lattice. */
+	/** Error of the integrals over y. */
 	lattice: Float64Array;
 	/** Error of the Gauss rules over blocks of frequencies. */
 	blocks: Float64Array;

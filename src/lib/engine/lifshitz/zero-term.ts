@@ -8,7 +8,7 @@ import {
 	type ZeroFrequencyMaterial
 } from '../reflection/zero-frequency.ts';
 import type { Body, System } from '../system.ts';
-import type { Level } from './level.ts';
+import { doubledFall, LATTICE_CONSTANTS, type Level } from './level.ts';
 import { polarizationSum } from './polarization-sum.ts';
 import { UNIT_ROUNDOFF, type Tally } from './tally.ts';
 
@@ -26,10 +26,12 @@ export function zeroTerm(system: System, level: Level): (separation: number, tal
 	const { left, right, screening } = system;
 	const medium = left.zero[0];
 	const foot = screening === null && medium.square === 0 ? Math.sqrt(level.cut) / 4 : level.cut;
-	const lattice = logLattice(level.step, NO_DISC, level.cut, foot);
-	const rLeft = new Float64Array(lattice.count);
-	const rRight = new Float64Array(lattice.count);
+	const lattices = [0, 1 / 2].map((shift) => logLattice(level.step, NO_DISC, level.cut, foot, shift));
+	const fall = doubledFall(level);
+	const rLeft = new Float64Array(lattices[0].count + 4);
+	const rRight = new Float64Array(rLeft.length);
 	const sums = new Float64Array(6);
+	const open = new Float64Array(3);
 	const bare = left.zero.length === 2 && right.zero.length === 2;
 	const carriers = [left, right].some(({ zero }) => zero.some(({ square }) => square > 0));
 	const silent =
@@ -39,29 +41,33 @@ export function zeroTerm(system: System, level: Level): (separation: number, tal
 		const X = (2 * separation) / SPEED_OF_LIGHT;
 		const screened = polarisation === 'tm' && screening !== null;
 		const y0 = screened ? 2 * separation * screening : X * Math.sqrt(medium.square * medium.mu);
-		const reflect = (body: Body, r: Float64Array): void =>
-			zeroFrequencyReflection(
-				polarisation,
-				lattice,
-				y0,
-				X * X,
-				body.zero,
-				reduced(body, separation),
-				screened,
-				r
-			);
-		reflect(left, rLeft);
-		reflect(right, rRight);
-		polarizationSum(lattice, y0, rLeft, rRight, sums);
-		tally.evaluations += lattice.count;
-		// Plain roundoff of the coefficients, absolute where they are small differences.
-		for (let q = 0; q < 3; q++) {
-			const even = sums[2 * q];
-			const odd = sums[2 * q + 1];
-			add(tally, polarisation, q, (even + odd) / 2, UNIT_ROUNDOFF * (ROUNDING + 2 * y0));
-			tally.lattice[q] += Math.abs(even - odd) / 2;
-			tally.rounding[q] += smallness(lattice, y0, q, rLeft, rRight);
+		open.fill(0);
+		for (const lattice of lattices) {
+			const reflect = (body: Body, r: Float64Array): void =>
+				zeroFrequencyReflection(
+					polarisation,
+					lattice,
+					y0,
+					X * X,
+					body.zero,
+					reduced(body, separation),
+					screened,
+					r
+				);
+			reflect(left, rLeft);
+			reflect(right, rRight);
+			polarizationSum(lattice, y0, rLeft, rRight, sums);
+			tally.evaluations += lattice.count;
+			for (let q = 0; q < 3; q++) {
+				const even = sums[2 * q];
+				const odd = sums[2 * q + 1];
+				// Half weight of the primed sum, and half of each of the two lattices.
+				add(tally, polarisation, q, (even + odd) / 4, UNIT_ROUNDOFF * (ROUNDING + 2 * y0));
+				open[q] = Math.hypot(open[q], even - odd);
+				tally.rounding[q] += smallness(lattice, y0, q, rLeft, rRight) / 4;
+			}
 		}
+		for (let q = 0; q < 3; q++) tally.lattice[q] += (fall * LATTICE_CONSTANTS[q] * open[q]) / 2;
 	};
 
 	const closed = (polarisation: 'te' | 'tm', tally: Tally): void => {

@@ -17,6 +17,22 @@ export interface StackAtFrequency {
 	ideal: boolean;
 }
 
+/** Below this a layer takes so little off a wave that 1 - e^-x is the number to work with. */
+const THIN = 0.5;
+
+/**
+ * One layer in front of what lies behind: `(front + behind e^-x)/(1 + front behind e^-x)`, x = 2 kappa t, written with
+ * 1 - e^-x for thin layers, whose front and back nearly cancel.
+ */
+export function throughLayer(front: number, behind: number, x: number): number {
+	if (x > THIN) {
+		const seen = behind * Math.exp(-x);
+		return (front + seen) / (1 + front * seen);
+	}
+	const lost = behind * -Math.expm1(-x);
+	return (front + behind - lost) / (1 + front * (behind - lost));
+}
+
 /** Work space of one stack. */
 export const stackAtFrequency = (layers: number): StackAtFrequency => ({
 	layers,
@@ -83,9 +99,8 @@ export function stackReflection(
 				continue;
 			}
 			const x = kappas[b] * thickness[b];
-			const lost = x < 1 ? -Math.expm1(-x) : 1 - Math.exp(-x);
-			tm = (rTm + tm - tm * lost) / (1 + rTm * tm - rTm * tm * lost);
-			te = (rTe + te - te * lost) / (1 + rTe * te - rTe * te * lost);
+			tm = throughLayer(rTm, tm, x);
+			te = throughLayer(rTe, te, x);
 		}
 		rTM[i] = tm;
 		rTE[i] = te;

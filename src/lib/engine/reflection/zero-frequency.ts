@@ -1,6 +1,7 @@
 import type { ZeroFrequencyRule } from '../contract.ts';
 import type { LogLattice } from '../numerics/log-lattice.ts';
 import type { StaticLimit } from '../permittivity/susceptibility.ts';
+import { throughLayer } from './stack.ts';
 
 /**
  * A material at n = 0 (methods.md section 2). eps grows like amplitude/xi^order as xi falls; `square` is what is left of
@@ -84,12 +85,6 @@ function interfaceTe(
 	return (
 		(d * (a.mu + b.mu) * K + a.mu * b.mu * X * (d * a.square - a.mu * (b.square - a.square))) / (den * den)
 	);
-}
-
-/** One round trip added in front of what lies behind. */
-function throughLayer(front: number, behind: number, x: number): number {
-	const lost = x < 1 ? -Math.expm1(-x) : 1 - Math.exp(-x);
-	return (front + behind - behind * lost) / (1 + front * behind - front * behind * lost);
 }
 
 /**
