@@ -27,7 +27,7 @@ function fallBeyond(block: FrequencyBlock, [first, last]: [number, number]): num
 }
 
 /** The powers of y0 beside e^-y0, and layers that decay faster, make a block a little steeper than its phase says. */
-const STEEPNESS = 1.3;
+const STEEPNESS = 1.2;
 
 /** What polynomials beyond the last measured one may add together, over the geometric estimate. */
 const BLOCK_SAFETY = 12;

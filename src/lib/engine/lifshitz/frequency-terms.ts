@@ -188,7 +188,10 @@ export function frequencyTerms(
 		const odd = (block.parity + i) & 1;
 		onLattice(block, i, separation, latticeOf(scale, odd), y0, X);
 		if (!block.doubled) {
-			for (let q = 0; q < 3; q++) open[q] *= single * LATTICE_CONSTANTS[q];
+			for (let q = 0; q < 3; q++) {
+				open[q] *= single * LATTICE_CONSTANTS[q];
+				open[q] += 2 * level.cut * (Math.abs(te[q]) + Math.abs(tm[q]));
+			}
 			return;
 		}
 		firstTe.set(te);
@@ -199,6 +202,7 @@ export function frequencyTerms(
 			te[q] = (te[q] + firstTe[q]) / 2;
 			tm[q] = (tm[q] + firstTm[q]) / 2;
 			open[q] = doubled * LATTICE_CONSTANTS[q] * Math.hypot(open[q], firstOpen[q]);
+			open[q] += 2 * level.cut * (Math.abs(te[q]) + Math.abs(tm[q]));
 		}
 	};
 	return { terms, at };

@@ -15,9 +15,9 @@ export interface Level {
 }
 
 export const LEVELS: readonly Level[] = [
-	{ step: 0.4, cut: 1e-10, nodes: 5, direct: 8, reach: 1e-6 },
-	{ step: 0.32, cut: 1e-13, nodes: 7, direct: 8, reach: 1e-8 },
-	{ step: 0.26, cut: 1e-16, nodes: 9, direct: 16, reach: 0 }
+	{ step: 0.4, cut: 1e-13, nodes: 5, direct: 8, reach: 1e-6 },
+	{ step: 0.32, cut: 1e-15, nodes: 7, direct: 8, reach: 1e-8 },
+	{ step: 0.25, cut: 1e-17, nodes: 11, direct: 16, reach: 0 }
 ];
 
 /**
