@@ -12,6 +12,9 @@ import { slowForces, type SlowForces } from '../support/slow-lifshitz.ts';
 const CASES = Number(process.env.HAIRSBREADTH_BOUND_CASES ?? 150);
 const FIRST_SEED = Number(process.env.HAIRSBREADTH_BOUND_SEED ?? 1);
 
+/** What is said of the draw as a whole needs a draw; a replayed seed is only held to its own bounds. */
+const ENOUGH_CASES = 100;
+
 /** A bound this many times the true error, in the median, says too little to be of use. */
 const LOOSEST_MEDIAN = 100;
 
@@ -114,13 +117,13 @@ describe('the error bound of the engine', () => {
 		expect(wrong.map(line).slice(0, 12)).toEqual([]);
 	});
 
-	it('is zero, like the value, where no term is left', () => {
+	it.runIf(CASES >= ENOUGH_CASES)('is zero, like the value, where no term is left', () => {
 		const vanishing = comparisons.filter((c) => c.magnitude === 0);
 		expect(vanishing.length).toBeGreaterThan(0);
 		expect(vanishing.filter((c) => c.value !== 0 || c.bound !== 0 || !c.met).map(line)).toEqual([]);
 	});
 
-	it('is not absurdly above the true error', () => {
+	it.runIf(CASES >= ENOUGH_CASES)('is not absurdly above the true error', () => {
 		const ratios = comparisons
 			.filter((c) => c.trueError > ROUNDING_LEVEL && c.trueError > (10 * c.slack) / Math.abs(c.value))
 			.map((c) => c.bound / c.trueError);
