@@ -36,13 +36,14 @@ export const toMaterial = (
 	versionCount
 });
 
+/** Columns spelled out: in a query of one table Drizzle drops the table's name, which would be another id here. */
 const PUBLISHED_VERSIONS = sql<number>`(
 	select count(*) from version join dataset on dataset.id = version.dataset_id
-	where dataset.material_id = ${material.id} and version.state = 'published')::int`;
+	where dataset.material_id = material.id and version.state = 'published')::int`;
 
 const PUBLISHED_DATASETS = sql<number>`(
 	select count(distinct dataset.id) from version join dataset on dataset.id = version.dataset_id
-	where dataset.material_id = ${material.id} and version.state in ('published', 'withdrawn'))::int`;
+	where dataset.material_id = material.id and version.state in ('published', 'withdrawn'))::int`;
 
 const cursorKey = z.tuple([z.string(), z.string()]);
 
