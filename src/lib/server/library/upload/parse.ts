@@ -1,6 +1,6 @@
 import Papa from 'papaparse';
 import { readNumber } from './number.ts';
-import { RefusedFile, refuse, type FileIssue } from './refused-file.ts';
+import { RefusedFile, refuse } from './refused-file.ts';
 
 /** An uploaded text as a sheet of cells with their line numbers; nothing is interpreted but the layout. */
 
@@ -84,18 +84,26 @@ function settle(
 	if (!first) return { delimiter: given.delimiter ?? ',', decimal: given.decimal ?? '.' };
 	// Whole numbers read the same with either decimal sign, and a tab is also a blank: neither is a doubt.
 	const rival = others.find((other) => reading(sampled, other) !== reading(sampled, first));
-	if (rival) {
-		const { line, text } = sampled[0];
-		const issue: FileIssue = {
-			line,
-			column: null,
-			rule: 'ambiguous',
-			message: `the line reads as columns split by "${first.delimiter}" or by "${rival.delimiter}"; say which`,
-			text
-		};
-		throw new RefusedFile([issue], 'ambiguous');
-	}
+	if (rival) ask(sampled[0], `split by "${first.delimiter}" or by "${rival.delimiter}"`);
+	if (first.delimiter === ',' && !given.delimiter && sampled.every(({ text }) => mayBePairs(text)))
+		ask(sampled[0], 'of whole numbers or as half as many numbers with decimal commas');
 	return first;
+}
+
+function ask({ line, text }: { line: number; text: string }, between: string): never {
+	const message = `the columns can be read as ${between}; say which delimiter and decimal sign are meant`;
+	throw new RefusedFile([{ line, column: null, rule: 'ambiguous', message, text }], 'ambiguous');
+}
+
+/** "0,5,1,2" is four whole numbers or 0.5 and 1.2. Text lines say nothing either way. */
+function mayBePairs(text: string): boolean {
+	const cells = text.split(',').map((cell) => cell.trim());
+	if (!cells.some((cell) => isNumber(cell, '.'))) return true;
+	return (
+		cells.length >= 4 &&
+		cells.length % 2 === 0 &&
+		cells.every((cell, i) => (i % 2 ? /^\d+$/ : /^[+-]?\d+$/).test(cell))
+	);
 }
 
 function fits(lines: { line: number; text: string }[], delimiter: Delimiter, decimal: '.' | ','): boolean {
