@@ -1,15 +1,14 @@
-import { randomBytes } from 'node:crypto';
-import postgres from 'postgres';
+import type postgres from 'postgres';
 import { ensureBuild } from '../../src/launch/build.mjs';
-import { prepareDatabase } from '../../src/launch/database.mjs';
 import { freePort } from '../../src/launch/free-port.mjs';
-import { startCluster } from '../../src/launch/postgres.mjs';
 import { startServer } from '../../src/launch/server.mjs';
+import { freshDatabase } from './database.ts';
 
 export interface TestServer {
 	/** As `http://localhost:5999`. */
 	origin: string;
-	databaseUrl: string;
+	/** Into its database, as superuser. */
+	sql: postgres.Sql;
 	stop: () => Promise<void>;
 }
 
@@ -25,7 +24,10 @@ export async function startTestServer(environment: Record<string, string> = {}):
 	try {
 		const { release } = await ensureBuild();
 		stops.push(release);
-		const databaseUrl = await seededDatabase(stops);
+		const { applicationUrl: databaseUrl, sql, drop } = await freshDatabase();
+		stops.push(drop);
+		// A cluster of ours gives its application role this by default; a copied template has no such defaults.
+		await sql`grant select, insert, update, delete on rate_counter to hairsbreadth_app`;
 		const port = await freePort();
 		const origin = `http://localhost:${port}`;
 		const server = await startServer({
@@ -47,29 +49,9 @@ export async function startTestServer(environment: Record<string, string> = {}):
 			healthUrl: `${origin}/api/v1/health`
 		});
 		stops.push(server.stop);
-		return { origin, databaseUrl, stop };
+		return { origin, sql, stop };
 	} catch (error) {
 		await stop();
 		throw error;
 	}
-}
-
-async function seededDatabase(stops: (() => unknown)[]): Promise<string> {
-	let server = process.env.HAIRSBREADTH_TEST_SERVER;
-	if (!server) {
-		const cluster = await startCluster({ throwaway: true });
-		stops.push(cluster.stop);
-		server = cluster.url;
-	}
-	const name = `server_${randomBytes(6).toString('hex')}`;
-	const admin = postgres(server, { max: 1, onnotice: () => undefined });
-	await admin.unsafe(`create database ${name}`);
-	stops.push(async () => {
-		await admin.unsafe(`drop database ${name} with (force)`);
-		await admin.end();
-	});
-	const url = new URL(server);
-	url.pathname = `/${name}`;
-	await prepareDatabase(url.href);
-	return url.href;
 }
