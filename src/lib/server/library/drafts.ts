@@ -1,8 +1,9 @@
 import { eq, inArray, sql } from 'drizzle-orm';
 import { runChecks } from '../../engine/checks/all-checks.ts';
-import type { CheckOutcome } from '../../engine/checks/check.ts';
+import type { CheckOutcome, CheckSubject } from '../../engine/checks/check.ts';
 import { staticPermittivity } from '../../engine/checks/static-permittivity.ts';
 import type { PermittivityModel } from '../../engine/contract.ts';
+import { Refusal } from '../../engine/refusal.ts';
 import type { ModelDescription, TableDescription } from '../../schemas/upload.ts';
 import { appendAudit } from '../audit/append.ts';
 import type { Transaction } from '../db/client.ts';
@@ -74,7 +75,7 @@ async function store(tx: Transaction, place: Place, content: Content): Promise<D
 	const parentId = description.parent ? await findVersion(tx, home.id, description.parent) : null;
 	const number = place.number ?? (await nextMajor(tx, home.id));
 
-	const checks = runChecks({ model, rows: table?.rows ?? null, material: home.material });
+	const checks = checkModel({ model, rows: table?.rows ?? null, material: home.material });
 	const atRest = staticPermittivity(model);
 	const measured = table?.measuredRangeEv ?? description.measuredRangeEv;
 	const checksum = sha256(canonicalJson(model));
@@ -131,6 +132,16 @@ async function store(tx: Transaction, place: Place, content: Content): Promise<D
 		details: { dataset: place.datasetSlug, number: `${number.major}.${number.minor}`, checksum }
 	});
 	return { id, number: `${number.major}.${number.minor}`, checksum, checks };
+}
+
+/** What the engine would refuse to compute is refused here already, in the caller's terms. */
+function checkModel(subject: CheckSubject): CheckOutcome[] {
+	try {
+		return runChecks(subject);
+	} catch (error) {
+		if (!(error instanceof Refusal)) throw error;
+		throw new InvalidInput('The engine cannot compute with this model.', error.issues);
+	}
 }
 
 async function findDataset(tx: Transaction, slug: string) {

@@ -15,6 +15,13 @@ const XI = { from: 1e11, to: 1e18, count: 211 };
 /** eV; widened to the measured range where that goes further. */
 const ENERGY = { from: 1e-3, to: 1e2, count: 501 };
 
+/** Each sample of eps' is an integral over the table: a long one is thinned for the picture, its points stay whole. */
+const ROWS_MAX = 600;
+
+/** A published version never changes, so its samples are kept; the oldest make room. */
+const KEPT_MAX = 300;
+const kept = new Map<string, Spectrum>();
+
 const logGrid = ({ from, to, count }: { from: number; to: number; count: number }): number[] =>
 	Array.from({ length: count }, (_, index) => from * (to / from) ** (index / (count - 1)));
 
@@ -22,14 +29,31 @@ const logGrid = ({ from, to, count }: { from: number; to: number; count: number 
 export async function spectrum(ref: string, executor: Executor = database()): Promise<Spectrum> {
 	const found = (await resolve([ref], executor)).get(ref);
 	if (!found) throw new NotFound(`There is no version "${ref}".`);
+	const key = `${ref} ${found.checksum}`;
+	const known = kept.get(key);
+	if (known) return known;
 	const [slug, number] = ref.split('@');
 	const given = await givenTable(slug, number, executor);
-	return {
+	const sampled: Spectrum = {
 		ref,
 		measuredRangeEv: found.measuredRangeEv,
 		imaginary: onImaginaryAxis(found.model),
-		real: onRealAxis(found.model, found.measuredRangeEv),
+		real: onRealAxis(thinned(found.model), found.measuredRangeEv),
 		points: found.model.kind === 'table' && given ? pointsOf(found.model, given.epsilon1) : null
+	};
+	if (kept.size >= KEPT_MAX) kept.delete(kept.keys().next().value ?? '');
+	kept.set(key, sampled);
+	return sampled;
+}
+
+function thinned(model: PermittivityModel): PermittivityModel {
+	if (model.kind !== 'table' || model.energiesEv.length <= ROWS_MAX) return model;
+	const last = model.energiesEv.length - 1;
+	const indices = Array.from({ length: ROWS_MAX }, (_, index) => Math.round((index * last) / (ROWS_MAX - 1)));
+	return {
+		...model,
+		energiesEv: indices.map((index) => model.energiesEv[index]),
+		epsilon2: indices.map((index) => model.epsilon2[index])
 	};
 }
 
