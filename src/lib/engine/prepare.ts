@@ -143,7 +143,8 @@ const NAMES = ['free energy', 'pressure', 'pressure gradient'];
 /** Terms of both signs count as cancelling from here on. */
 const CANCELLING = 3;
 
-function whyNot({ value, bound, cancellation }: PlateForces, accuracy: number, lineError: number): string {
+function whyNot(forces: PlateForces, accuracy: number, lineError: number): string {
+	const { value, bound, cancellation, roundingShare } = forces;
 	const missed = [0, 1, 2].filter((q) => relative(value[q], bound[q]) > accuracy);
 	if (missed.length === 0)
 		return `The integral over the curved shape is known to ${lineError.toExponential(1)} only.`;
@@ -155,7 +156,9 @@ function whyNot({ value, bound, cancellation }: PlateForces, accuracy: number, l
 		const cause =
 			loss > CANCELLING
 				? `because terms of opposite sign cancel to 1/${loss.toPrecision(2)} of their sizes`
-				: 'because rounding in double precision sets the limit';
+				: roundingShare[q] > 0.5
+					? 'because rounding in double precision sets the limit'
+					: 'because the finest rules of integration reach no further';
 		return `The ${NAMES[q]} ${figure} ${cause}.`;
 	});
 	return reasons.join(' ');

@@ -26,14 +26,20 @@ function fallBeyond(block: FrequencyBlock, [first, last]: [number, number]): num
 	return product;
 }
 
+/** The last coefficient, or what the two before it promise: one alone may be small by chance. */
+function lastCoefficients(projected: Float64Array, at: number): number {
+	const [c1, c2, c3] = [projected[at], projected[at + 1], projected[at + 2]];
+	return Math.max(Math.abs(c1), COEFFICIENT_FALL * Math.abs(c2), COEFFICIENT_FALL ** 2 * Math.abs(c3));
+}
+
 /** The powers of y0 beside e^-y0, and layers that decay faster, make a block a little steeper than its phase says. */
 const STEEPNESS = 1.2;
 
 /** What polynomials beyond the last measured one may add together, over the geometric estimate. */
-const BLOCK_SAFETY = 12;
+const BLOCK_SAFETY = 16;
 
 /** The sum ends where its tail is this share of the accuracy asked for, or of the rounding of all terms. */
-const TAIL_SHARE = 0.02;
+const TAIL_SHARE = 0.05;
 const TAIL_ROUNDING = 2 ** -56;
 
 /** Beyond this y0 every exponential is zero in double precision. */
@@ -41,7 +47,7 @@ const LARGEST_PHASE = 745;
 
 /** Tails are judged by the fall of magnitude from octave to octave, never trusted to fall faster than this. */
 const FASTEST_FALL = 0.02;
-const TAIL_SAFETY = 2;
+const TAIL_SAFETY = 6;
 
 /** One block added to the tally; magnitudes of the block and the largest phase reached are left in `last`. */
 interface BlockSum {
@@ -55,7 +61,7 @@ function blockSum(system: System, level: Level): BlockSum {
 	const { terms, at } = frequencyTerms(system, level);
 	const last = new Float64Array(3);
 	const error = new Float64Array(3);
-	const projected = new Float64Array(9);
+	const projected = new Float64Array(18);
 	const phases: [number, number] = [0, 0];
 	const add = (block: FrequencyBlock, separation: number, tally: Tally, extrapolate: boolean): void => {
 		const time = roundTripTime(separation);
@@ -76,19 +82,20 @@ function blockSum(system: System, level: Level): BlockSum {
 				tally.lattice[q] += w * terms.lattice[q];
 				tally.rounding[q] += w * terms.rounding[q];
 				if (block.exact) continue;
-				for (let j = 0; j < 3; j++) projected[3 * q + j] += block.projections[j][i] * (te + tm);
+				for (let j = 0; j < 3; j++) {
+					projected[6 * q + j] += block.projections[j][i] * te;
+					projected[6 * q + 3 + j] += block.projections[j][i] * tm;
+				}
 			}
 		}
 		tally.evaluations += terms.evaluations;
 		terms.evaluations = 0;
 		const beyond = block.exact ? 0 : fallBeyond(block, phases);
-		const rate = COEFFICIENT_FALL;
 		for (let q = 0; q < 3; q++) {
 			tally.magnitude[q] += last[q];
 			if (block.exact) continue;
-			const at = 3 * q;
-			const [c1, c2, c3] = [0, 1, 2].map((j) => Math.abs(projected[at + j]));
-			error[q] = BLOCK_SAFETY * Math.max(c1, rate * c2, rate * rate * c3) * (extrapolate ? beyond : 1);
+			const size = lastCoefficients(projected, 6 * q) + lastCoefficients(projected, 6 * q + 3);
+			error[q] = BLOCK_SAFETY * size * (extrapolate ? beyond : 1);
 			tally.blocks[q] += error[q];
 		}
 	};

@@ -26,7 +26,7 @@ export const LEVELS: readonly Level[] = [
  * |Im u| < pi/2 makes spectra fall like exp(-pi^2 frequency). The constants, for F, P and G, cover the powers of the
  * frequency that go with it and phases at which the difference is small by chance.
  */
-export const LATTICE_CONSTANTS = [16, 32, 60] as const;
+export const LATTICE_CONSTANTS = [24, 36, 60] as const;
 
 /** exp(-pi^2 (1/h - 1/(2h))): error of one lattice over the difference of its halves. */
 export const singleFall = ({ step }: Level): number => Math.exp(-(Math.PI ** 2) / (2 * step));

@@ -14,6 +14,8 @@ export interface PlateForces {
 	parts: Float64Array;
 	/** Sum of magnitudes over magnitude of the sum. */
 	cancellation: [number, number, number];
+	/** Part of the bound that finer rules cannot lower. */
+	roundingShare: [number, number, number];
 	evaluations: number;
 }
 
@@ -71,6 +73,11 @@ function forces(tally: Tally, scale: [number, number, number]): PlateForces {
 		cancellation: [0, 1, 2].map((q) =>
 			tally.magnitude[q] === 0 ? 1 : tally.magnitude[q] / Math.abs(values[q])
 		) as [number, number, number],
+		roundingShare: [0, 1, 2].map((q) => (Math.abs(scale[q]) * tally.rounding[q]) / bound(q)) as [
+			number,
+			number,
+			number
+		],
 		evaluations: tally.evaluations
 	};
 }

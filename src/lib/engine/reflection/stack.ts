@@ -1,4 +1,5 @@
 import type { LogLattice } from '../numerics/log-lattice.ts';
+import { interfaces, MOST_INTERFACES, reflectionFromBack, type Interfaces } from './recursion.ts';
 
 /** Once the round trip through the layers has decayed by e^-40, what lies behind is not seen (4e-18). */
 export const OPAQUE = 40;
@@ -17,22 +18,6 @@ export interface StackAtFrequency {
 	ideal: boolean;
 }
 
-/** Below this a layer takes so little off a wave that 1 - e^-x is the number to work with. */
-const THIN = 0.5;
-
-/**
- * One layer in front of what lies behind: `(front + behind e^-x)/(1 + front behind e^-x)`, x = 2 kappa t, written with
- * 1 - e^-x for thin layers, whose front and back nearly cancel.
- */
-export function throughLayer(front: number, behind: number, x: number): number {
-	if (x > THIN) {
-		const seen = behind * Math.exp(-x);
-		return (front + seen) / (1 + front * seen);
-	}
-	const lost = behind * -Math.expm1(-x);
-	return (front + behind - lost) / (1 + front * (behind - lost));
-}
-
 /** Work space of one stack. */
 export const stackAtFrequency = (layers: number): StackAtFrequency => ({
 	layers,
@@ -42,15 +27,14 @@ export const stackAtFrequency = (layers: number): StackAtFrequency => ({
 	ideal: false
 });
 
-const kappas = new Float64Array(64);
+const kappas = new Float64Array(MOST_INTERFACES);
+const depths = new Float64Array(MOST_INTERFACES);
+const tm = interfaces();
+const te = interfaces();
 
 /**
- * Reflection of a stack (methods.md section 3), recursion from the back:
- *
- *     rho_{j-1} = (r_{j-1,j} + rho_j e)/(1 + r_{j-1,j} rho_j e),   e = exp(-2 kappa_j t_j)
- *
- * written with 1 - e where that is small, so that a layer much thinner than its decay length is seen as the small
- * change it is. Interfaces as in half-space.ts.
+ * Reflection of a stack over y = y0 + s: interfaces as in half-space.ts, put together by recursion.ts. Layers behind an
+ * opaque part of the stack are not looked at.
  */
 export function stackReflection(
 	lattice: LogLattice,
@@ -65,44 +49,50 @@ export function stackReflection(
 		const s = lattice.s[i];
 		const K = s * (2 * y0 + s);
 		kappas[0] = y0 + s;
-		// Inwards until nothing further is seen.
 		let depth = 0;
 		let last = 0;
-		while (last < layers && depth < OPAQUE) {
+		while (last <= layers && depth < OPAQUE) {
 			last++;
-			kappas[last] = Math.sqrt(K + (1 + chi[last]) * mu[last] * X);
-			depth += kappas[last] * thickness[last];
-		}
-		// Behind the last layer seen: nothing, an ideal conductor, or the substrate.
-		const behind = depth < OPAQUE && ideal ? 1 : 0;
-		let tm = behind;
-		let te = -behind;
-		if (depth < OPAQUE && !ideal) {
-			last++;
-			kappas[last] = Math.sqrt(K + (1 + chi[last]) * mu[last] * X);
-		}
-		for (let b = last; b >= 1; b--) {
-			const a = b - 1;
-			const epsA = 1 + chi[a];
-			const epsB = 1 + chi[b];
-			const dEps = chi[b] - chi[a];
-			const dMu = mu[b] - mu[a];
-			const tmDen = epsB * kappas[a] + epsA * kappas[b];
-			const teDen = mu[b] * kappas[a] + mu[a] * kappas[b];
-			const rTm =
-				(dEps * (epsA + epsB) * K + epsA * epsB * X * (dEps * mu[a] - epsA * dMu)) / (tmDen * tmDen);
-			const rTe =
-				(dMu * (mu[a] + mu[b]) * K + mu[a] * mu[b] * X * (dMu * epsA - mu[a] * dEps)) / (teDen * teDen);
-			if (b > layers) {
-				tm = rTm;
-				te = rTe;
-				continue;
+			if (last > layers && ideal) {
+				setIdeal(tm, last, 1);
+				setIdeal(te, last, -1);
+				break;
 			}
-			const x = kappas[b] * thickness[b];
-			tm = throughLayer(rTm, tm, x);
-			te = throughLayer(rTe, te, x);
+			kappas[last] = Math.sqrt(K + (1 + chi[last]) * mu[last] * X);
+			setInterface(last, K, X, chi, mu);
+			depths[last] = kappas[last] * thickness[last];
+			depth += depths[last];
 		}
-		rTM[i] = tm;
-		rTE[i] = te;
+		rTM[i] = reflectionFromBack(tm, last, depths);
+		rTE[i] = reflectionFromBack(te, last, depths);
 	}
+}
+
+function setIdeal(into: Interfaces, b: number, r: number): void {
+	into.r[b] = r;
+	into.plus[b] = 1 + r;
+	into.minus[b] = 1 - r;
+}
+
+/** Interface between place b - 1 and place b. */
+function setInterface(b: number, K: number, X: number, chi: Float64Array, mu: Float64Array): void {
+	const a = b - 1;
+	const epsA = 1 + chi[a];
+	const epsB = 1 + chi[b];
+	const muA = mu[a];
+	const muB = mu[b];
+	const dEps = chi[b] - chi[a];
+	const dMu = muB - muA;
+	const tmA = epsA * kappas[b];
+	const tmB = epsB * kappas[a];
+	const tmDen = 1 / (tmA + tmB);
+	const teA = muA * kappas[b];
+	const teB = muB * kappas[a];
+	const teDen = 1 / (teA + teB);
+	tm.r[b] = (dEps * (epsA + epsB) * K + epsA * epsB * X * (dEps * muA - epsA * dMu)) * tmDen * tmDen;
+	tm.plus[b] = 2 * tmB * tmDen;
+	tm.minus[b] = 2 * tmA * tmDen;
+	te.r[b] = (dMu * (muA + muB) * K + muA * muB * X * (dMu * epsA - muA * dEps)) * teDen * teDen;
+	te.plus[b] = 2 * teB * teDen;
+	te.minus[b] = 2 * teA * teDen;
 }

@@ -1,7 +1,7 @@
 import type { ZeroFrequencyRule } from '../contract.ts';
 import type { LogLattice } from '../numerics/log-lattice.ts';
 import type { StaticLimit } from '../permittivity/susceptibility.ts';
-import { throughLayer } from './stack.ts';
+import { interfaces, MOST_INTERFACES, reflectionFromBack } from './recursion.ts';
 
 /**
  * A material at n = 0 (methods.md section 2). eps grows like amplitude/xi^order as xi falls; `square` is what is left of
@@ -51,40 +51,69 @@ export function staticTe(a: ZeroFrequencyMaterial, b: ZeroFrequencyMaterial): nu
 	return (b.mu - a.mu) / (b.mu + a.mu);
 }
 
-const kappas = new Float64Array(64);
+const kappas = new Float64Array(MOST_INTERFACES);
+const depths = new Float64Array(MOST_INTERFACES);
+const all = interfaces();
 
-/** r_TM of one interface; K = (2 d k)^2, X = (2 d/c)^2. */
-function interfaceTm(
-	a: ZeroFrequencyMaterial,
-	b: ZeroFrequencyMaterial,
-	K: number,
-	X: number,
-	kA: number,
-	kB: number
-): number {
-	if (a.order !== 2 || b.order !== 2 || b.ideal) return staticTm(a, b);
-	const d = b.amplitude - a.amplitude;
-	const den = b.amplitude * kA + a.amplitude * kB;
-	const crossed = d * a.mu - a.amplitude * (b.mu - a.mu);
-	return (d * (a.amplitude + b.amplitude) * K + a.amplitude * b.amplitude * X * crossed) / (den * den);
+/** r, 1 + r and 1 - r of interface b from the two admittances: r = (onward - back)/(onward + back). */
+function setQuotients(b: number, difference: number, onward: number, back: number): void {
+	const sum = onward + back;
+	all.r[b] = difference / sum;
+	all.plus[b] = (2 * onward) / sum;
+	all.minus[b] = (2 * back) / sum;
 }
 
-/** r_TE of one interface. */
-function interfaceTe(
-	a: ZeroFrequencyMaterial,
-	b: ZeroFrequencyMaterial,
+function setTotal(b: number, r: number): void {
+	all.r[b] = r;
+	all.plus[b] = 1 + r;
+	all.minus[b] = 1 - r;
+}
+
+/** TM at interface b; K = (2 d k)^2, X = (2 d/c)^2. */
+function setTm(
+	b: number,
+	left: ZeroFrequencyMaterial,
+	right: ZeroFrequencyMaterial,
 	K: number,
-	X: number,
-	kA: number,
-	kB: number
-): number {
-	if (b.ideal) return -1;
-	const d = b.mu - a.mu;
-	const den = b.mu * kA + a.mu * kB;
-	if (den === 0) return 0;
-	return (
-		(d * (a.mu + b.mu) * K + a.mu * b.mu * X * (d * a.square - a.mu * (b.square - a.square))) / (den * den)
-	);
+	X: number
+): void {
+	if (right.ideal || right.order > left.order) return setTotal(b, 1);
+	if (right.order < left.order) return setTotal(b, -1);
+	const d = right.amplitude - left.amplitude;
+	if (left.order < 2) {
+		const one = left.order === 0 ? 1 : 0;
+		return setQuotients(b, d, one + right.amplitude, one + left.amplitude);
+	}
+	const onward = right.amplitude * kappas[b - 1];
+	const back = left.amplitude * kappas[b];
+	const crossed = d * left.mu - left.amplitude * (right.mu - left.mu);
+	const product = d * (left.amplitude + right.amplitude) * K + left.amplitude * right.amplitude * X * crossed;
+	setQuotients(b, product / (onward + back), onward, back);
+}
+
+/** TE at interface b. */
+function setTe(
+	b: number,
+	left: ZeroFrequencyMaterial,
+	right: ZeroFrequencyMaterial,
+	K: number,
+	X: number
+): void {
+	if (right.ideal) return setTotal(b, -1);
+	const d = right.mu - left.mu;
+	const onward = right.mu * kappas[b - 1];
+	const back = left.mu * kappas[b];
+	const crossed = d * left.square - left.mu * (right.square - left.square);
+	const product = d * (left.mu + right.mu) * K + left.mu * right.mu * X * crossed;
+	setQuotients(b, product / (onward + back), onward, back);
+}
+
+/** First TM interface where the medium holds mobile ions: (eps k - eps_m s)/(eps k + eps_m s). */
+function setScreened(medium: ZeroFrequencyMaterial, wall: ZeroFrequencyMaterial, k: number, s: number): void {
+	if (wall.ideal || wall.order > 0) return setTotal(1, 1);
+	const onward = (1 + wall.amplitude) * k;
+	const back = (1 + medium.amplitude) * s;
+	setQuotients(1, onward - back, onward, back);
 }
 
 /**
@@ -106,31 +135,19 @@ export function zeroFrequencyReflection(
 	screened: boolean,
 	r: Float64Array
 ): void {
-	const last = materials.length - 1;
-	const single = polarisation === 'te' ? interfaceTe : interfaceTm;
+	const end = materials.findIndex(({ ideal }) => ideal);
+	const last = end < 0 ? materials.length - 1 : end;
 	for (let i = 0; i < lattice.count; i++) {
 		const s = lattice.s[i];
 		const K = s * (2 * y0 + s);
 		kappas[0] = y0 + s;
-		for (let j = 1; j <= last; j++) kappas[j] = Math.sqrt(K + materials[j].square * materials[j].mu * X);
-		let rho = 0;
-		for (let b = last; b >= 1; b--) {
-			let front = single(materials[b - 1], materials[b], K, X, kappas[b - 1], kappas[b]);
-			if (b === 1 && screened) front = screenedTm(materials[0], materials[1], Math.sqrt(K), kappas[0]);
-			rho = b === last || materials[b].ideal ? front : throughLayer(front, rho, kappas[b] * thickness[b]);
+		for (let b = 1; b <= last; b++) {
+			kappas[b] = Math.sqrt(K + materials[b].square * materials[b].mu * X);
+			if (b < last) depths[b] = kappas[b] * thickness[b];
+			if (polarisation === 'te') setTe(b, materials[b - 1], materials[b], K, X);
+			else setTm(b, materials[b - 1], materials[b], K, X);
 		}
-		r[i] = rho;
+		if (screened) setScreened(materials[0], materials[1], Math.sqrt(K), kappas[0]);
+		r[i] = reflectionFromBack(all, last, depths);
 	}
-}
-
-function screenedTm(
-	medium: ZeroFrequencyMaterial,
-	wall: ZeroFrequencyMaterial,
-	k: number,
-	s: number
-): number {
-	if (wall.ideal || wall.order > 0) return 1;
-	const wallSide = (1 + wall.amplitude) * k;
-	const mediumSide = (1 + medium.amplitude) * s;
-	return (wallSide - mediumSide) / (wallSide + mediumSide);
 }
