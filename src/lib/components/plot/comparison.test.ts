@@ -30,6 +30,8 @@ describe('ideal conductors', () => {
 	it('have the ratio one to themselves', () => {
 		const ideal = [10, 100].map((d) => idealValue('pressure', d, plates) ?? NaN);
 		expect(ratioToIdeal(series([10, 100], ideal), 'pressure', plates).values).toEqual([1, 1]);
+		const cylinder = { kind: 'cylinderPlate', radiusUm: 5 } as const;
+		expect(ratioToIdeal(series([10, 100], ideal), 'force', cylinder).values).toEqual([]);
 	});
 });
 

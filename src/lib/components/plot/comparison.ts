@@ -47,14 +47,18 @@ export interface Compared {
 	values: (number | undefined)[];
 }
 
-export function ratioToIdeal(series: Series, quantity: Quantity, shape: Shape): Compared {
-	return {
-		separationsNm: series.separationsNm,
-		values: series.values.map((value, index) => {
-			const ideal = idealValue(quantity, series.separationsNm[index], shape);
-			return ideal === undefined ? undefined : value / ideal;
-		})
-	};
+/** Ratio to ideal conductors; no points where the shape has no closed form. Positive where both have one sign. */
+export function ratioToIdeal(series: Series, quantity: Quantity, shape: Shape): Series {
+	const ratio: Series = { separationsNm: [], values: [], bounds: [], met: [] };
+	series.values.forEach((value, index) => {
+		const ideal = idealValue(quantity, series.separationsNm[index], shape);
+		if (ideal === undefined) return;
+		ratio.separationsNm.push(series.separationsNm[index]);
+		ratio.values.push(value / ideal);
+		ratio.bounds.push(series.bounds[index]);
+		ratio.met.push(series.met[index]);
+	});
+	return ratio;
 }
 
 /** (value - reference)/|reference|, so that "more attractive" is negative whatever the sign; as a share, not in per cent. */

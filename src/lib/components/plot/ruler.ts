@@ -33,7 +33,7 @@ export function rulerMarks(
 	if (debyeLengthNm !== undefined)
 		marks.push({ label: 'Debye length', separationNm: debyeLengthNm, own: true });
 	for (const { letter, separationNm, stable } of equilibria) {
-		marks.push({ label: `${letter} ${stable ? 'rests' : 'tips over'}`, separationNm, own: true });
+		marks.push({ label: `${letter} balances, ${stable ? 'stable' : 'unstable'}`, separationNm, own: true });
 	}
 	return marks;
 }

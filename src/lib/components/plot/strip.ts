@@ -13,7 +13,10 @@ export interface DrawnChoice {
 	previous: Series | null;
 	runs: SignRun[];
 	shares: Shares;
-	compared: Compared | null;
+	/** Difference from the choice that is compared with; null while the comparison is with ideal conductors. */
+	difference: Compared | null;
+	/** Ratio to ideal conductors, below zero where both attract so that it is drawn solid there. */
+	ratio: Series;
 }
 
 /** Room beside the axis for numerals and for the labels at line ends. */

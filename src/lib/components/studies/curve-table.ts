@@ -57,7 +57,10 @@ export function curveCsv(
 	];
 	const units: string[] = ['nm', ...columns.flatMap(() => [unit, '1'])];
 	const rows = tableRows(columns, quantity).map(({ separationNm, cells }) =>
-		[separationNm, ...cells.flatMap((cell): (string | number)[] => (cell ? [cell.value, cell.bound] : ['', '']))].map(String)
+		[
+			separationNm,
+			...cells.flatMap((cell): (string | number)[] => (cell ? [cell.value, cell.bound] : ['', '']))
+		].map(String)
 	);
 	const comments = provenance.map((line) => `# ${line.replace(/\s+/g, ' ')}`);
 	return (

@@ -37,7 +37,8 @@ export function drawnChoices(
 			previous: previous.length > 0 ? oriented(seriesOf(previous, quantity), solid) : null,
 			runs: signRuns(drawn),
 			shares: sharesOf(points, quantity),
-			compared: reference ? differenceFrom(series, reference) : ratioToIdeal(series, quantity, shape)
+			difference: reference ? differenceFrom(series, reference) : null,
+			ratio: oriented(ratioToIdeal(series, quantity, shape), 1)
 		};
 	});
 }

@@ -9,7 +9,8 @@ function choice(letter: string, ink: number, values: number[]): DrawnChoice {
 	return {
 		...{ letter, ink, name: letter, series, previous: null, runs: signRuns(series) },
 		shares: { separationsNm: [], static: [], te: [] },
-		compared: { separationsNm, values: values.map((value) => value / 10) }
+		difference: null,
+		ratio: { ...series, values: values.map((value) => value / 10) }
 	};
 }
 

@@ -65,8 +65,15 @@ function power(x: number, y: number, exponent: number, fill: string): string {
 	return tag('text', { x, y, 'text-anchor': 'end', fill }, `10${raised}`);
 }
 
-function magnitudeStrip(sheet: Sheet, x: LogScale, top: number, height: number): string {
-	const { colour, choices, unitSize } = sheet;
+/** @param unitSize  of the axis; the ratio has none and is drawn in ones */
+function magnitudeStrip(
+	{ colour }: Sheet,
+	choices: readonly Pick<DrawnChoice, 'letter' | 'ink' | 'series'>[],
+	unitSize: number,
+	x: LogScale,
+	top: number,
+	height: number
+): string {
 	const scaled = choices.map((choice) => ({
 		...choice,
 		series: { ...choice.series, values: choice.series.values.map((value) => value / unitSize) }
@@ -132,8 +139,12 @@ function signBars(sheet: Sheet, x: LogScale, top: number): string {
 }
 
 function comparisonStrip(sheet: Sheet, x: LogScale, top: number, height: number): string {
-	const { colour, choices, comparisonInPercent } = sheet;
-	const compared = choices.flatMap(({ compared, ink }) => (compared ? [{ ...compared, ink }] : []));
+	const { colour, choices } = sheet;
+	if (!sheet.comparisonInPercent) {
+		const ratios = choices.map(({ letter, ink, ratio }) => ({ letter, ink, series: ratio }));
+		return magnitudeStrip(sheet, ratios, 1, x, top, height);
+	}
+	const compared = choices.flatMap(({ difference, ink }) => (difference ? [{ ...difference, ink }] : []));
 	const limits = comparisonLimits(compared, 0.02);
 	const y = (value: number) => top + height - ((value - limits[0]) / (limits[1] - limits[0])) * height;
 	const ticks = comparisonTicks(limits).map(
@@ -142,15 +153,10 @@ function comparisonStrip(sheet: Sheet, x: LogScale, top: number, height: number)
 				d: `M${x.at(x.min)} ${y(tick)}H${x.at(x.max)}`,
 				stroke: colour(tick === 0 ? 'edge' : 'rule')
 			}) +
-			text(
-				LEFT - 8,
-				y(tick) + 4,
-				comparisonInPercent ? percent(tick, { signed: true, digits: 3 }) : String(tick),
-				{
-					'text-anchor': 'end',
-					fill: colour('muted')
-				}
-			)
+			text(LEFT - 8, y(tick) + 4, percent(tick, { signed: true, digits: 3 }), {
+				'text-anchor': 'end',
+				fill: colour('muted')
+			})
 	);
 	const lines = compared.map(({ separationsNm, values, ink }) =>
 		tag('path', {
@@ -198,7 +204,7 @@ export function sheetSvg(sheet: Sheet): string {
 		text(LEFT, 26, sheet.title, { ...heading, 'font-size': 18 }),
 		text(LEFT, 50, sheet.magnitudeLabel, heading),
 		text(WIDTH - RIGHT, 50, sheet.legend, { 'text-anchor': 'end', fill: colour('muted') }),
-		magnitudeStrip(sheet, x, 60, 224),
+		magnitudeStrip(sheet, sheet.choices, sheet.unitSize, x, 60, 224),
 		text(LEFT, signTop - 8, 'Sign', heading),
 		signBars(sheet, x, signTop),
 		text(LEFT, comparisonTop - 10, sheet.comparisonLabel, heading),

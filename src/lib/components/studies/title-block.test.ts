@@ -73,7 +73,7 @@ describe('what a number rests on', () => {
 	});
 
 	it('states the bound relative and in the unit of the value', () => {
-		expect(boundWords(-2.43, 1e-6, PRESSURE)).toBe('1.0 × 10^\u22126 of the value, 2.4 µPa');
+		expect(boundWords(-2.43, 1e-6, PRESSURE)).toBe('2.4 µPa, 1 × 10^\u22126 of the value');
 		expect(boundWords(-2.43, null, PRESSURE)).toBe('being computed');
 		expect(boundWords(0, 0, PRESSURE)).toBe('exact');
 	});

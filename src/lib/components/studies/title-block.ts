@@ -69,7 +69,7 @@ export function relianceWords(used: readonly Ingredient[], separationNm: number)
 export function boundWords(value: number, bound: number | null, scale: UnitScale): string {
 	if (bound === null) return 'being computed';
 	if (bound === 0) return 'exact';
-	return `${numberLine(bound, 2)} of the value, ${quantityLine(Math.abs(value) * bound, scale, 2)}`;
+	return `${quantityLine(Math.abs(value) * bound, scale, 2)}, ${numberLine(bound, 1)} of the value`;
 }
 
 /** "Silica, fused" sorts well in a list; in a sentence it is silica. */
