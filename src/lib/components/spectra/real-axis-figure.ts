@@ -1,4 +1,4 @@
-import type { Annotations, Data, Layout, LayoutAxis } from 'plotly.js-dist-min';
+import type { Annotation, Data, Layout, LayoutAxis } from 'plotly.js-dist-min';
 import { numberLine } from '../../format/number.ts';
 import { ENERGY, quantityLine } from '../../format/quantity.ts';
 import { spreadLabels } from '../plot/curve-data.ts';
@@ -143,7 +143,7 @@ function endLetters(
 	abscissa: Abscissa,
 	theme: FigureTheme,
 	plotHeight: number
-): Partial<Annotations>[] {
+): Partial<Annotation>[] {
 	const shown = shownRange(series);
 	const top = panel === 0 ? 0 : (1 - PANEL_SHARE) * plotHeight;
 	const height = PANEL_SHARE * plotHeight;
@@ -235,7 +235,7 @@ export function realAxisFigure(
 				...axis,
 				type: 'log',
 				anchor: 'y2',
-				range: ends.map(Math.log10),
+				range: [Math.log10(ends[0]), Math.log10(ends[1])],
 				tickvals: powers.map((power) => 10 ** power),
 				ticktext: powers.map((power) =>
 					abscissa === 'energy' ? quantityLine(10 ** power, ENERGY, 1) : `${numberLine(10 ** power, 1)} µm`

@@ -124,9 +124,10 @@ describe('realAxisFigure', () => {
 	});
 
 	it('draws the extrapolated parts dashed and the measured part solid', () => {
-		const dashes = figure('nk', 'energy').data.map((trace) =>
-			'line' in trace ? trace.line?.dash : undefined
-		);
+		const dashes = figure('nk', 'energy').data.map((trace) => {
+			const line = 'line' in trace ? trace.line : undefined;
+			return line !== undefined && 'dash' in line ? line.dash : undefined;
+		});
 		expect(dashes.filter((dash) => dash === '3px,3px')).toHaveLength(8);
 		expect(dashes.filter((dash) => dash === undefined)).toHaveLength(4);
 	});

@@ -1,8 +1,8 @@
 import * as citation from '$lib/server/library/citation.ts';
 import * as materials from '$lib/server/library/materials.ts';
-import { spectrum } from '$lib/server/library/spectrum.ts';
 import * as versions from '$lib/server/library/versions.ts';
 import { answered } from '../../answered.ts';
+import { drawnAtOnce } from '../../sampled.ts';
 import { decodeMaterialView } from './material-address.ts';
 import type { PageServerLoad } from './$types';
 
@@ -14,12 +14,10 @@ export const load: PageServerLoad = async ({ params, url }) => {
 	const datasets = await answered(() =>
 		Promise.all(
 			published.map(async ({ slug, latest }) => {
-				const version = await versions.get(slug, latest);
-				const { imaginary, measuredRangeEv, real } = await spectrum(version.ref);
+				const { model: _model, ...version } = await versions.get(slug, latest);
 				return {
 					version,
-					// The real axis is asked for when its plot comes into view: it is the larger part by far.
-					spectrum: { imaginary, measuredRangeEv, hasRealAxis: real !== null },
+					spectrum: await drawnAtOnce(version.ref),
 					citation: {
 						plain: citation.plain(version),
 						bibtex: citation.bibtex(version),
