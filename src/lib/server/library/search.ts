@@ -41,10 +41,14 @@ interface Found extends Record<string, unknown> {
 	static_permittivity: number | null;
 	published_at: string;
 	version_count: number;
-	authors: string[];
-	year: number;
+	first_source: { authors: string[]; year: number };
 	source_count: number;
 }
+
+/** The source that lists name. A subquery of the shown rows, not a join: PostgreSQL then looks it up after the limit. */
+const FIRST_SOURCE = sql`
+	from version_source join source on source.id = version_source.source_id
+	where version_source.version_id = latest.id order by version_source.position limit 1`;
 
 /** Conductors sort as what they are: an infinite static value. Each key ends in a tie-break that is unique. */
 const SORT_KEYS: Record<LibrarySort, SQL> = {
@@ -52,7 +56,7 @@ const SORT_KEYS: Record<LibrarySort, SQL> = {
 	class: sql`material.class || ' ' || lower(material.name)`,
 	dataset: sql`lower(coalesce(dataset.title, ''))`,
 	static: sql`case when latest.conducts then 1e300::float8 else coalesce(latest.static_permittivity, 0) end`,
-	source: sql`lower(coalesce(first_source.authors[1] || first_source.year, ''))`,
+	source: sql`lower(coalesce((select source.authors[1] || source.year ${FIRST_SOURCE}), ''))`,
 	quality: sql`coalesce(latest.quality, '')`,
 	published: sql`coalesce(extract(epoch from latest.published_at), 0)::float8`
 };
@@ -75,10 +79,7 @@ const FROM = sql`
 		select from version where version.dataset_id = dataset.id and version.state = 'published')
 	left join lateral (
 		select * from version where version.dataset_id = dataset.id and version.state = 'published'
-		order by version.major desc, version.minor desc limit 1) as latest on true
-	left join lateral (
-		select source.authors, source.year from version_source join source on source.id = version_source.source_id
-		where version_source.version_id = latest.id order by version_source.position limit 1) as first_source on true`;
+		order by version.major desc, version.minor desc limit 1) as latest on true`;
 
 const cursorKey = z.tuple([z.union([z.string(), z.number()]), z.string()]);
 
@@ -98,7 +99,7 @@ export async function rows(query: LibraryQuery, executor: Executor = database())
 			to_char(latest.published_at at time zone 'UTC', 'YYYY-MM-DD"T"HH24:MI:SS.MS"Z"') as published_at,
 			(select count(*) from version where version.dataset_id = dataset.id and version.state = 'published')::int
 				as version_count,
-			first_source.authors, first_source.year,
+			(select jsonb_build_object('authors', source.authors, 'year', source.year) ${FIRST_SOURCE}) as first_source,
 			(select count(*) from version_source where version_source.version_id = latest.id)::int as source_count
 		${FROM} ${where([...matching, ...after])} ${order} limit ${query.limit + 1}`);
 	const { rows: shown, next } = page([...found], query.limit, (row) => [row.sort_key, row.tie]);
@@ -171,7 +172,7 @@ function toRow(row: Found): LibraryRow {
 			extrapolatedEv: extrapolatedRange(row.model),
 			conducts: row.conducts,
 			staticPermittivity: row.static_permittivity,
-			source: shortCitation(row),
+			source: shortCitation(row.first_source),
 			furtherSources: row.source_count - 1,
 			publishedAt: row.published_at,
 			versionCount: row.version_count
