@@ -1,9 +1,16 @@
+import type { Principal } from '$lib/server/auth/principal.ts';
+
 declare global {
 	namespace App {
 		interface Error {
 			message: string;
 			/** Written in the log beside what really happened; shown to the person so that it can be quoted. */
 			id?: string;
+		}
+
+		interface Locals {
+			/** Who asks; decided by the hook before any route runs. */
+			principal: Principal;
 		}
 	}
 }

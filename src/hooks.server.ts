@@ -1,22 +1,29 @@
-import type { Handle, HandleServerError, ServerInit } from '@sveltejs/kit';
+import { error, redirect, type Handle, type HandleServerError, type ServerInit } from '@sveltejs/kit';
 import { sequence } from '@sveltejs/kit/hooks';
 import { building } from '$app/environment';
 import { logUnforeseen, problemResponse } from '$lib/server/api/problem.ts';
 import { closeEnginePool, enginePool } from '$lib/server/compute/pool.ts';
 import { closeDatabase } from '$lib/server/db/client.ts';
+import { NOBODY } from '$lib/server/auth/principal.ts';
 import { logRequest } from '$lib/server/hooks/request-log.ts';
 import { isForeign } from '$lib/server/hooks/same-origin.ts';
+import { identify, permit, personal, unauthenticated } from '$lib/server/hooks/session.ts';
 import { withSecurityHeaders } from '$lib/server/hooks/security-headers.ts';
 import { checkStart } from '$lib/server/hooks/start.ts';
-import { NotFound } from '$lib/server/errors.ts';
+import { Forbidden, NotFound } from '$lib/server/errors.ts';
 import { BadRequest } from '$lib/server/limits/refusals.ts';
-import { whoMay } from '$lib/server/policy.ts';
+import { startPeople, stopPeople } from '$lib/server/people/start.ts';
+import { callOf, whoMay } from '$lib/server/policy.ts';
 
 export const init: ServerInit = async () => {
 	if (building) return;
 	await checkStart(process.env);
+	await startPeople();
 	// Open connections and threads would keep the process alive after the last answer.
-	process.once('sveltekit:shutdown', () => Promise.all([closeEnginePool(), closeDatabase()]));
+	process.once('sveltekit:shutdown', async () => {
+		await stopPeople();
+		await Promise.all([closeEnginePool(), closeDatabase()]);
+	});
 	if (process.connected) {
 		// Whoever started this process and holds a channel to it is gone: nobody would ever stop it.
 		process.once('disconnect', () => process.kill(process.pid, 'SIGTERM'));
@@ -41,22 +48,47 @@ const sameOrigin: Handle = ({ event, resolve }) => {
 	return problemResponse(new BadRequest(403, 'foreign-origin', 'This request was caused by another site.'));
 };
 
-/** Only what the policy table names is answered; under /api every answer is JSON. */
-const permitted: Handle = ({ event, resolve }) => {
-	const { id } = event.route;
-	if (id === null) {
-		if (!event.url.pathname.startsWith('/api/')) return resolve(event);
-		return problemResponse(
-			new NotFound(`There is nothing at ${event.url.pathname}; see /api/v1/openapi.json.`)
-		);
+const identified: Handle = async ({ event, resolve }) => {
+	event.locals.principal = NOBODY;
+	try {
+		event.locals.principal = await identify(event.request, (name) => event.cookies.get(name));
+	} catch (refusal) {
+		// Nobody signs in while the database is away; under /api a token may also have been used too often.
+		return problemResponse(refusal);
 	}
-	if (whoMay(id, event.request.method)) return resolve(event);
-	return problemResponse(
-		new BadRequest(405, 'method', `${event.request.method} is not answered here; see /api/v1/openapi.json.`)
-	);
+	return personal(await resolve(event), event.locals.principal);
 };
 
-export const handle = sequence(logged, secured, sameOrigin, permitted);
+/** Only what the policy table names is answered, and to whom it says; under /api every answer is JSON. */
+const permitted: Handle = async ({ event, resolve }) => {
+	const { id } = event.route;
+	const { pathname, search, searchParams } = event.url;
+	const isApi = pathname.startsWith('/api/');
+	if (id === null) {
+		if (!isApi) return resolve(event);
+		return problemResponse(new NotFound(`There is nothing at ${pathname}; see /api/v1/openapi.json.`));
+	}
+	const { method } = event.request;
+	const who = whoMay(id, callOf(method, searchParams));
+	if (!who) {
+		return problemResponse(
+			new BadRequest(405, 'method', `${method} is not answered here; see /api/v1/openapi.json.`)
+		);
+	}
+	const verdict = await permit(who, event.locals.principal);
+	if (verdict === 'yes') return resolve(event);
+	if (verdict === 'forbidden') {
+		const message = 'Your role, or the scope of the token, does not allow this. Ask an administrator.';
+		if (isApi) return problemResponse(new Forbidden(message));
+		error(403, message);
+	}
+	if (isApi || event.locals.principal.kind === 'unknown') {
+		return unauthenticated();
+	}
+	redirect(303, `/sign-in?to=${encodeURIComponent(method === 'GET' ? pathname + search : pathname)}`);
+};
+
+export const handle = sequence(logged, secured, sameOrigin, identified, permitted);
 
 export const handleError: HandleServerError = ({ error, event, status, message }) => {
 	if (status < 500) return { message };

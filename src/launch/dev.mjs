@@ -14,7 +14,13 @@ await runStack(async ({ onStop, asked }) => {
 
 	const server = await startServer({
 		args: ['node_modules/vite/bin/vite.js', 'dev', '--host', host, '--port', String(port), '--strictPort'],
-		env: { ...process.env, HAIRSBREADTH_DATABASE_URL: database.url },
+		env: {
+			HAIRSBREADTH_DEMO: '1',
+			...process.env,
+			HOST: host,
+			ORIGIN: origin,
+			HAIRSBREADTH_DATABASE_URL: database.url
+		},
 		healthUrl: `http://${host}:${port}/api/v1/health`,
 		show: true
 	});

@@ -25,6 +25,8 @@ await runStack(async ({ onStop, asked }) => {
 			BODY_SIZE_LIMIT: '6M',
 			SHUTDOWN_TIMEOUT: '5',
 			HAIRSBREADTH_LOG_FILE: logFile,
+			// Trying it out needs no accounts; HAIRSBREADTH_DEMO=0 turns this off.
+			HAIRSBREADTH_DEMO: '1',
 			...process.env,
 			NODE_ENV: 'production',
 			HOST: host,

@@ -77,6 +77,7 @@ async function browser({ onStop }) {
 			HAIRSBREADTH_DATABASE_URL: cluster.url,
 			HAIRSBREADTH_DURABILITY: 'throwaway',
 			HAIRSBREADTH_LOG_LEVEL: 'warn',
+			HAIRSBREADTH_DEMO: '1',
 			// Every test comes from the same address; the limit has tests of its own.
 			HAIRSBREADTH_COMPUTE_SECONDS: '1000000'
 		},

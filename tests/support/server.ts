@@ -43,6 +43,7 @@ export async function startTestServer(environment: Record<string, string> = {}):
 				HAIRSBREADTH_DATABASE_URL: databaseUrl,
 				HAIRSBREADTH_DURABILITY: 'throwaway',
 				HAIRSBREADTH_LOG_LEVEL: 'silent',
+				HAIRSBREADTH_DEMO: '1',
 				HAIRSBREADTH_COMPUTE_SECONDS: '1000000',
 				...environment
 			},

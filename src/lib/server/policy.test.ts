@@ -1,30 +1,32 @@
 import { readFileSync, readdirSync } from 'node:fs';
 import { dirname, join, relative } from 'node:path';
 import { describe, expect, it } from 'vitest';
-import { POLICY, whoMay, withoutGroups, type Method } from './policy.ts';
+import { callOf, POLICY, whoMay, withoutGroups, type Call, type Method } from './policy.ts';
 
 const ROUTES = 'src/routes';
 const METHODS: Method[] = ['GET', 'POST', 'PUT', 'PATCH', 'DELETE'];
 
 /** What each route file answers to, read from its exports. */
-function methodsOf(file: string, text: string): Method[] {
+function callsOf(file: string, text: string): Call[] {
 	if (/\+page(\.server)?\.(svelte|ts)$/.test(file)) {
-		return /export const actions\b/.test(text) ? ['GET', 'POST'] : ['GET'];
+		const actions = /export const actions\b[^{]*\{\n([\s\S]*?)\n\}/.exec(text)?.[1] ?? '';
+		const names = [...actions.matchAll(/^\t(?:async )?(\w+)(?=[:(,]|$)/gm)].map(([, name]) => name);
+		return ['GET', ...names.map((name) => (name === 'default' ? 'POST' : (`?/${name}` as const)))];
 	}
 	return METHODS.filter((method) =>
 		new RegExp(`export (const|async function|function) ${method}\\b`).test(text)
 	);
 }
 
-function routes(): Map<string, Set<Method>> {
-	const found = new Map<string, Set<Method>>();
+function routes(): Map<string, Set<Call>> {
+	const found = new Map<string, Set<Call>>();
 	const files = readdirSync(ROUTES, { recursive: true, withFileTypes: true })
 		.filter((entry) => entry.isFile() && /^\+(page\.svelte|page(\.server)?\.ts|server\.ts)$/.test(entry.name))
 		.map((entry) => join(entry.parentPath, entry.name));
 	for (const file of files) {
 		const id = withoutGroups(`/${relative(ROUTES, dirname(file))}`);
-		const methods = found.get(id) ?? new Set();
-		for (const method of methodsOf(file, readFileSync(file, 'utf8'))) methods.add(method);
+		const methods = found.get(id) ?? new Set<Call>();
+		for (const call of callsOf(file, readFileSync(file, 'utf8'))) methods.add(call);
 		found.set(id, methods);
 	}
 	return found;
@@ -46,7 +48,7 @@ describe('the policy table', () => {
 
 	it('speaks of no route or method that does not exist', () => {
 		const idle = Object.entries(POLICY).flatMap(([id, row]) =>
-			(Object.keys(row) as Method[])
+			(Object.keys(row) as Call[])
 				.filter((method) => !found.get(id)?.has(method))
 				.map((method) => `${method} ${id}`)
 		);
@@ -56,9 +58,10 @@ describe('the policy table', () => {
 
 describe('whoMay', () => {
 	it.each([
-		['/(library)/materials/[slug]', 'GET', 'everyone'],
-		['/api/v1/forces', 'POST', 'everyone'],
-		['/library', 'HEAD', 'everyone'],
+		['/(library)/materials/[slug]', 'GET', 'readers'],
+		['/api/v1/forces', 'POST', 'computing'],
+		['/(auth)/sign-in', '?/link', 'everyone'],
+		['/library', 'HEAD', 'readers'],
 		['/api/v1/forces', 'OPTIONS', 'everyone']
 	])('lets %s be called with %s', (route, method, who) => {
 		expect(whoMay(route, method)).toBe(who);
@@ -70,9 +73,23 @@ describe('whoMay', () => {
 		['/api/v1/forces', 'DELETE'],
 		['/not/in/the/table', 'GET'],
 		['/constructor', 'GET'],
-		['/library', 'TRACE']
+		['/library', 'TRACE'],
+		['/sign-in', 'POST'],
+		['/sign-in', '?/nothing'],
+		['/sign-in', 'hasOwnProperty']
 	])('answers %s with %s to nobody', (route, method) => {
 		expect(whoMay(route, method)).toBeUndefined();
+	});
+});
+
+describe('callOf', () => {
+	it.each([
+		['POST', '', 'POST'],
+		['POST', '?/revoke', '?/revoke'],
+		['POST', '?x=1&/revoke&/other', '?/revoke'],
+		['GET', '?/revoke', 'GET']
+	])('takes %s %s for %s', (method, query, call) => {
+		expect(callOf(method, new URLSearchParams(query))).toBe(call);
 	});
 });
 

@@ -1,28 +1,87 @@
+import type { Who } from './auth/access.ts';
+
 /**
- * Who may call what: one row a route, one word a method. A route without a row is answered to nobody, and a test walks
- * src/routes so that none is forgotten. Form actions count as POST.
+ * Who may call what: one row a route, one word a method or form action; auth/access.ts says what the words mean. A route
+ * without a row is answered to nobody, and a test walks src/routes so that none is forgotten.
  */
 
 export type Method = 'GET' | 'POST' | 'PUT' | 'PATCH' | 'DELETE';
 
-/** `everyone`: no sign-in needed; what a caller may use of it is limited elsewhere (limits/). */
-export type Who = 'everyone';
+/** A method, or a named form action as `?/revoke`. */
+export type Call = Method | `?/${string}`;
 
-type Row = Partial<Record<Method, Who>>;
+type Row = Partial<Record<Call, Who>>;
 
-const readable: Row = { GET: 'everyone' };
+const readable: Row = { GET: 'readers' };
+const open: Row = { GET: 'everyone' };
+const administered: Row = { GET: 'administrators' };
 
 /** Route ids without their groups. */
 export const POLICY: Readonly<Record<string, Row>> = {
 	'/': readable,
 	'/library': readable,
 	'/materials/[slug]': readable,
+	'/datasets/[slug]': readable,
+	'/datasets/[slug]/versions/[number]/[file]': readable,
 	'/datasets/[slug]/latest': readable,
 	'/datasets/[slug]/versions/[number]': readable,
 	'/datasets/[slug]/versions/[number]/spectrum.json': readable,
-	'/api/v1/forces': { POST: 'everyone' },
-	'/api/v1/health': readable,
-	'/api/v1/openapi.json': readable,
+	'/sign-in': { GET: 'everyone', '?/link': 'everyone', '?/institution': 'everyone', '?/demo': 'everyone' },
+	'/sign-in/confirm': { GET: 'everyone', POST: 'everyone' },
+	'/sign-out': { POST: 'everyone' },
+	'/invitation': { GET: 'everyone', POST: 'everyone' },
+	'/auth/callback/institution': open,
+	'/demo/mail': open,
+	'/demo/mail/[id]': open,
+	'/account': {
+		GET: 'people',
+		'?/profile': 'people',
+		'?/leave': 'people',
+		'?/link': 'people',
+		'?/unlink': 'people'
+	},
+	'/account/sessions': { GET: 'people', '?/end': 'people', '?/others': 'people' },
+	'/account/tokens': { GET: 'people', '?/create': 'people', '?/revoke': 'people' },
+	'/account/data': { GET: 'people', '?/delete': 'people' },
+	'/account/data.json': { GET: 'people' },
+	'/account/groups/[slug]': {
+		GET: 'people',
+		'?/rename': 'people',
+		'?/invite': 'people',
+		'?/revoke': 'people',
+		'?/lead': 'people',
+		'?/remove': 'people'
+	},
+	'/administration': administered,
+	'/administration/people': administered,
+	'/administration/people/[id]': {
+		...administered,
+		'?/role': 'administrators',
+		'?/remove': 'administrators',
+		'?/readmit': 'administrators',
+		'?/group': 'administrators'
+	},
+	'/administration/groups': {
+		...administered,
+		'?/create': 'administrators',
+		'?/close': 'administrators',
+		'?/reopen': 'administrators'
+	},
+	'/administration/invitations': {
+		...administered,
+		'?/invite': 'administrators',
+		'?/revoke': 'administrators'
+	},
+	'/administration/tokens': { ...administered, '?/revoke': 'administrators' },
+	'/administration/settings': { ...administered, POST: 'administrators' },
+	'/administration/outbox': { ...administered, '?/try': 'administrators' },
+	'/administration/audit': administered,
+	'/administration/audit.csv': administered,
+	'/api/v1/tokens': { GET: 'people-by-token', POST: 'people' },
+	'/api/v1/tokens/[id]': { DELETE: 'people' },
+	'/api/v1/forces': { POST: 'computing' },
+	'/api/v1/health': open,
+	'/api/v1/openapi.json': open,
 	'/api/v1/materials': readable,
 	'/api/v1/materials/[slug]': readable,
 	'/api/v1/datasets/[slug]/versions/[number]': readable,
@@ -37,11 +96,19 @@ export function withoutGroups(routeId: string): string {
 	return routeId.replace(/\/\([^)]+\)/g, '') || '/';
 }
 
+/** Which row's word counts for a request: the form action that it names, or its method. */
+export function callOf(method: string, query: URLSearchParams): string {
+	if (method !== 'POST') return method;
+	const action = [...query.keys()].find((key) => key.startsWith('/'));
+	return action === undefined ? method : `?${action}`;
+}
+
 /** Undefined where nobody may. */
-export function whoMay(routeId: string, method: string): Who | undefined {
+export function whoMay(routeId: string, call: string): Who | undefined {
 	const id = withoutGroups(routeId);
 	const row = Object.hasOwn(POLICY, id) ? POLICY[id] : undefined;
 	// HEAD and OPTIONS tell nothing that GET does not.
-	const asked = method === 'HEAD' || method === 'OPTIONS' ? 'GET' : method;
-	return row?.[asked as Method] ?? (method === 'OPTIONS' && row ? 'everyone' : undefined);
+	const asked = call === 'HEAD' || call === 'OPTIONS' ? 'GET' : call;
+	if (row && Object.hasOwn(row, asked)) return row[asked as Call];
+	return call === 'OPTIONS' && row ? 'everyone' : undefined;
 }

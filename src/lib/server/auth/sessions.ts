@@ -1,4 +1,5 @@
 import { and, desc, eq, gt, lt, ne, or, sql, type SQL } from 'drizzle-orm';
+import { z } from 'zod';
 import type { SignedIn } from '../../schemas/person.ts';
 import { appendAudit, INSTALLATION } from '../audit/append.ts';
 import { now } from '../clock.ts';
@@ -112,6 +113,7 @@ export async function list(personId: string, currentId: string | null): Promise<
 
 /** @throws NotFound for a session that is over or somebody else's */
 export async function end(personId: string, sessionId: string): Promise<void> {
+	if (!z.uuid().safeParse(sessionId).success) throw new NotFound('That session has ended already.');
 	await database().transaction(async (tx) => {
 		const ended = await remove(
 			tx,
@@ -130,6 +132,11 @@ export async function endAll(
 ): Promise<number> {
 	const others = except ? ne(session.id, except) : undefined;
 	return remove(tx, actor, and(eq(session.personId, personId), others), 'session.end');
+}
+
+/** Every session of one's own but the one that asks. @returns how many */
+export function endOthers(personId: string, sessionId: string): Promise<number> {
+	return database().transaction((tx) => endAll(tx, { personId, actor: personId, except: sessionId }));
 }
 
 /** Clears away what nobody can use any more. */

@@ -4,7 +4,7 @@ import { decodeCursor, page } from '../api/paginate.ts';
 import { appendAudit } from '../audit/append.ts';
 import { now } from '../clock.ts';
 import { database } from '../db/client.ts';
-import { outbox, type OutboxState } from '../db/schema/outbox.ts';
+import { OUTBOX_STATES, outbox, type OutboxState } from '../db/schema/outbox.ts';
 import { StateError } from '../errors.ts';
 
 export interface OutgoingMail {
@@ -18,6 +18,8 @@ export interface OutgoingMail {
 	nextAttemptAt: string | null;
 	lastError: string | null;
 }
+
+export const OUTBOX_STATE_WORDS = OUTBOX_STATES;
 
 const PAGE = 50;
 

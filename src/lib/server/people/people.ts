@@ -1,4 +1,4 @@
-import { and, asc, eq, gt, ilike, or, sql } from 'drizzle-orm';
+import { and, asc, eq, gt, ilike, or } from 'drizzle-orm';
 import { z } from 'zod';
 import type { PersonState, ProfileChange, Role, SignedIn } from '../../schemas/person.ts';
 import { decodeCursor, page } from '../api/paginate.ts';
@@ -204,14 +204,4 @@ export async function keepingAnAdministrator<T>(work: () => Promise<T>): Promise
 			'This is the last administrator. Make somebody else administrator first, then repeat.'
 		);
 	}
-}
-
-export async function namesOf(ids: readonly string[]): Promise<Map<string, string>> {
-	const wanted = [...new Set(ids)].filter((id) => z.uuid().safeParse(id).success);
-	if (wanted.length === 0) return new Map();
-	const rows = await database()
-		.select({ id: person.id, name: person.name })
-		.from(person)
-		.where(sql`${person.id} = any(${sql.param(wanted)}::uuid[])`);
-	return new Map(rows.map(({ id, name }) => [id, name]));
 }

@@ -1,4 +1,4 @@
-import { and, desc, eq, gt, isNull, lt, sql } from 'drizzle-orm';
+import { and, desc, eq, gt, isNull, lt, sql, type SQL } from 'drizzle-orm';
 import { z } from 'zod';
 import type { SignedIn } from '../../schemas/person.ts';
 import type { NewToken, Scope, TokenSummary } from '../../schemas/token.ts';
@@ -123,15 +123,23 @@ export async function list(owner: SignedIn): Promise<TokenSummary[]> {
 	return rows.map(summary);
 }
 
-/** One's own, or as an administrator anybody's. @throws NotFound for everything else */
-export async function revoke(actor: SignedIn, id: string): Promise<void> {
+/** One's own. @throws NotFound for everything else, whoever asks */
+export function revokeOwn(actor: SignedIn, id: string): Promise<void> {
+	return revokeWhere(actor, id, eq(apiToken.personId, actor.id));
+}
+
+export async function revokeAnybodys(actor: SignedIn, id: string): Promise<void> {
+	requireAdministrator(actor);
+	await revokeWhere(actor, id, undefined);
+}
+
+async function revokeWhere(actor: SignedIn, id: string, which: SQL | undefined): Promise<void> {
 	if (!z.uuid().safeParse(id).success) throw noSuchToken();
-	const own = actor.role === 'administrator' ? undefined : eq(apiToken.personId, actor.id);
 	await database().transaction(async (tx) => {
 		const [row] = await tx
 			.select({ revokedAt: apiToken.revokedAt })
 			.from(apiToken)
-			.where(and(eq(apiToken.id, id), own))
+			.where(and(eq(apiToken.id, id), which))
 			.for('update');
 		if (!row) throw noSuchToken();
 		if (row.revokedAt) return;
