@@ -115,7 +115,7 @@ describe('a draft', () => {
 		const rows = text.split('\n').filter((line) => /^\d/.test(line));
 		const inNm = rows.map((line) => {
 			const [energy, n, k] = line.split(',');
-			return `${1239.8419843320026 / Number(energy)};${Number(n).toFixed(4)};${k}`.replaceAll('.', ',');
+			return `${1239.841984332 / Number(energy)};${Number(n).toFixed(4)};${k}`.replaceAll('.', ',');
 		});
 		const reading = tableDescription.parse({
 			...description(),
