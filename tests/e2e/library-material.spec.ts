@@ -40,7 +40,7 @@ test('compares two datasets in per cent and keeps that in the address', async ({
 	await expect(page.getByText('of A against H, in per cent')).toBeVisible();
 	await expect(page.getByText(/A and H differ most, by [+−]\d+/)).toBeVisible();
 	await expect(page).toHaveURL(/first=gold-drude&second=gold-lorentz-drude/);
-	await page.reload();
+	await page.reload({ waitUntil: 'networkidle' });
 	await expect(page.getByText('of A against H, in per cent')).toBeVisible();
 	await page.getByLabel('Second dataset').selectOption({ label: 'A Drude, infrared fit' });
 	await expect(page.getByText('A dataset does not differ from itself.')).toBeVisible();
@@ -79,7 +79,7 @@ test('draws the real axis when it comes into view, and gives the numbers by one 
 	await expect(part.getByRole('img', { name: /Real and imaginary part/ })).toBeVisible();
 	await page.keyboard.press('t');
 	await expect(part.getByRole('table').first()).toBeVisible();
-	await page.reload();
+	await page.reload({ waitUntil: 'networkidle' });
 	await part.scrollIntoViewIfNeeded();
 	await expect(part.getByRole('radio', { name: 'wavelength' })).toBeChecked();
 	const origin = new URL(page.url()).origin;
@@ -97,10 +97,20 @@ test('saves the drawn numbers with their origin, and the picture', async ({ page
 	expect(download.suggestedFilename()).toBe('silicon-imaginary-axis.csv');
 	const lines = (await readFile(await download.path(), 'utf8')).split('\r\n');
 	expect(lines[0]).toContain('Permittivity of Silicon');
+	expect(lines.join()).toContain('silicon-table@1.0');
 	const head = lines.findIndex((text) => text.startsWith('xi,'));
 	expect(lines[head + 1]).toMatch(/^rad\/s,eV,nm,1/);
 	const cells = lines[head + 2].split(',').map(Number);
 	expect(cells.every(Number.isFinite)).toBe(true);
+
+	const drawing = page.waitForEvent('download');
+	await page.getByRole('button', { name: 'SVG', exact: true }).click();
+	const stack = await readFile(await (await drawing).path(), 'utf8');
+	expect(stack).toContain('silicon-table@1.0');
+	expect(stack).not.toMatch(/var\(--|(href|src)="/);
+	const pixels = page.waitForEvent('download');
+	await page.getByRole('button', { name: 'PNG', exact: true }).click();
+	expect((await readFile(await (await pixels).path())).subarray(1, 4).toString()).toBe('PNG');
 
 	await page.getByRole('region', { name: 'On the real axis' }).scrollIntoViewIfNeeded();
 	const picture = page.waitForEvent('download');

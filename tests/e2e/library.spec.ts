@@ -92,8 +92,8 @@ test('the line moves by keys and by the mouse, and tells what is measured there'
 	await page.mouse.move(box.x + box.width * 0.3, box.y + 40, { steps: 4 });
 	await page.mouse.up();
 	const drawn = await bar.evaluate((cell) => {
-		const place = getComputedStyle(cell, '::after').left;
-		return Number.parseFloat(place) / cell.clientWidth;
+		const [row, stroke] = [cell, cell.querySelector('.line')].map((one) => one?.getBoundingClientRect());
+		return row && stroke ? (stroke.left - row.left) / row.width : Number.NaN;
 	});
 	expect(drawn).toBeGreaterThan(0.27);
 	expect(drawn).toBeLessThan(0.33);

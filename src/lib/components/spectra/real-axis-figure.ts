@@ -114,7 +114,7 @@ function tracesOf(
 		const color = theme.series[one.ink - 1];
 		const parts = splitAtRange(one, quantity);
 		const points = pointColumns(one, quantity);
-		const dashed = { mode: 'lines', line: { color, width: 1.6, dash: '3px,3px' } } as Partial<Data>;
+		const dashed = { mode: 'lines', line: { color, width: 1.6, dash: 'dot' } } as Partial<Data>;
 		return [
 			...[parts.below, parts.above]
 				.filter((columns) => columns.energyEv.length > 0)

@@ -128,7 +128,7 @@ describe('realAxisFigure', () => {
 			const line = 'line' in trace ? trace.line : undefined;
 			return line !== undefined && 'dash' in line ? line.dash : undefined;
 		});
-		expect(dashes.filter((dash) => dash === '3px,3px')).toHaveLength(8);
+		expect(dashes.filter((dash) => dash === 'dot')).toHaveLength(8);
 		expect(dashes.filter((dash) => dash === undefined)).toHaveLength(4);
 	});
 });
