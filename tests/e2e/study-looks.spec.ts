@@ -10,14 +10,20 @@ for (const width of [390, 768, 1440]) {
 			await page.emulateMedia({ colorScheme });
 			await openStudy(page);
 			await expectAccessible(page);
-			await page.keyboard.press('t');
 			await page.getByRole('button', { name: 'Change what differs in choice B' }).click();
 			await page.getByRole('button', { name: 'Change left body' }).click();
-			await expect(page.getByRole('option').first()).toBeVisible();
+			await expect(page.getByRole('listbox').getByRole('option').first()).toBeVisible();
 			await expectAccessible(page);
 		});
 	}
 }
+
+test('the table of numbers keeps nobody out', async ({ page }) => {
+	await openStudy(page, '?from=10&to=20&at=12');
+	await page.keyboard.press('t');
+	await expect(page.getByRole('table')).toBeVisible();
+	await expectAccessible(page);
+});
 
 test('a phone keeps the reading in sight and never scrolls sideways', async ({ page }) => {
 	await page.setViewportSize({ width: 390, height: 844 });

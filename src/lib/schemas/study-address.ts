@@ -69,7 +69,7 @@ const escaped = (text: string) =>
 		.replace(/%20/g, '+');
 
 /** The query of a study, with its question mark. */
-export function encodeStudy(study: Study): string {
+export function encodeStudy(study: Study): `?${string}` {
 	const parts: [string, string][] = [
 		['left', encodeBody(study.left)],
 		['medium', encodeMaterial(study.medium)],

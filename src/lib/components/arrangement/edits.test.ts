@@ -127,6 +127,14 @@ describe('model choices', () => {
 		expect(edits.setChange(0, 'medium', {})(changed)).toEqual(layered());
 	});
 
+	it('take in a newer version beside the present one, at every place that has it', () => {
+		const study = edits.addSuccessor('silica-two-oscillators@1.0', 'silica-two-oscillators@1.1')(layered());
+		expect(study.choices).toHaveLength(3);
+		expect(study.choices[2].name).toBe('with silica-two-oscillators@1.1');
+		expect(study.choices[2].changes.right).toEqual({ version: 'silica-two-oscillators@1.1' });
+		expect(study.choices[2].changes.left2).toEqual({ version: 'outer-b@1.0' });
+	});
+
 	it('are renamed and lose their ions', () => {
 		const ions = edits.setChoiceIons(0, 'none')(edits.renameChoice(0, 'dry')(layered()));
 		expect(ions.choices[0]).toEqual({ name: 'dry', changes: {}, debyeLengthNm: 'none' });

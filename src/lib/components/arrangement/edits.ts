@@ -1,6 +1,8 @@
 import type { ZeroFrequencyRule } from '../../engine/contract.ts';
 import {
 	CHOICES_MAX,
+	materialIn,
+	slotsOf,
 	type ModelChoice,
 	type Side,
 	type SlotChange,
@@ -191,4 +193,19 @@ export function setChoiceIons(index: number, debyeLengthNm: ModelChoice['debyeLe
 			changes,
 			...(debyeLengthNm === undefined ? {} : { debyeLengthNm })
 		}));
+}
+
+/** A newer version of an input, set beside the present one as a further choice. */
+export function addSuccessor(version: string, successor: string): Edit {
+	return (study) => {
+		if (study.choices.length >= CHOICES_MAX) return study;
+		const grown = addChoice()(study);
+		const index = grown.choices.length - 1;
+		const places = slotsOf(grown).filter(
+			(slot) => materialIn(grown, grown.choices[index], slot)?.version === version
+		);
+		const change = (next: Study, slot: string) =>
+			setChange(index, slot, { ...next.choices[index].changes[slot], version: successor })(next);
+		return places.reduce(change, renameChoice(index, `with ${successor}`)(grown));
+	};
 }

@@ -21,6 +21,8 @@ export class Curve {
 	points = $state.raw<(ForcePoint | undefined)[]>([]);
 	/** The complete curve of the question before, drawn dimmed until the new one is complete. */
 	previous = $state.raw<(ForcePoint | undefined)[]>([]);
+	/** False from a new question to its first points: what is shown still answers the question before. */
+	fresh = $state(true);
 	computed = $state(0);
 	total = $state(0);
 	/** Shown from one second on: a count that flashes by helps nobody. */
@@ -29,7 +31,8 @@ export class Curve {
 	warnings = $state.raw<Warning[]>([]);
 	engine = $state('');
 	checksum = $state('');
-	computedAt = $state<Date>();
+	/** ISO, in UTC. */
+	computedAt = $state('');
 	problem = $state.raw<CurveProblem>();
 
 	#question = '';
@@ -42,6 +45,8 @@ export class Curve {
 		if (question === this.#question) return;
 		this.#question = question;
 		if (this.state === 'complete' && keepPrevious) this.previous = this.points;
+		if (!keepPrevious) this.points = [];
+		this.fresh = false;
 		this.cancel('computing');
 		this.#pause = setTimeout(() => void this.#run(request), this.points.length === 0 ? 0 : PAUSE_MS);
 	}
@@ -61,6 +66,10 @@ export class Curve {
 		this.points = [];
 		this.previous = [];
 		this.problem = undefined;
+		this.equilibria = [];
+		this.warnings = [];
+		this.checksum = '';
+		this.fresh = true;
 	}
 
 	cancel(state: CurveState = 'waiting'): void {
@@ -93,13 +102,14 @@ export class Curve {
 						computed += indices.length;
 						this.computed = computed;
 						this.points = [...points];
+						this.fresh = true;
 					}
 				},
 				{ signal: running.signal }
 			);
 			this.equilibria = end.equilibria;
 			this.warnings = end.warnings;
-			this.computedAt = new Date();
+			this.computedAt = new Date().toISOString();
 			this.previous = [];
 			this.state = 'complete';
 		} catch (error) {

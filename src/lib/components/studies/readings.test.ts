@@ -21,7 +21,7 @@ const series = { separationsNm: [10, 100], values: [-8, -0.008], bounds: [1e-8, 
 const choice = { letter: 'A', ink: 2, series };
 const reading = (letter: string, value: number): Reading => ({
 	...{ letter, ink: 2, value, bound: 1e-8, met: true },
-	...{ why: undefined, shapeError: undefined, staticShare: undefined }
+	...{ why: undefined, shapeError: undefined, staticShare: undefined, stale: false }
 });
 
 describe('the reading under the hairline', () => {

@@ -14,6 +14,8 @@ export interface Reading {
 	why: string | undefined;
 	shapeError: number | undefined;
 	staticShare: number | undefined;
+	/** It still answers the question before; the new one is being computed. */
+	stale: boolean;
 }
 
 const SAME = 1e-9;
@@ -41,12 +43,13 @@ export function readingAt(
 			met: point.met,
 			why: point.why,
 			shapeError: point.shapeError,
-			staticShare: sharesOf([point], quantity).static[0]
+			staticShare: sharesOf([point], quantity).static[0],
+			stale: false
 		};
 	}
 	const value = interpolate(choice.series.separationsNm, choice.series.values, atNm);
 	if (value === undefined) return undefined;
-	const unknown = { why: undefined, shapeError: undefined, staticShare: undefined };
+	const unknown = { why: undefined, shapeError: undefined, staticShare: undefined, stale: false };
 	return { letter, ink, value, bound: null, met: true, ...unknown };
 }
 

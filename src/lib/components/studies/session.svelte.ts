@@ -9,9 +9,9 @@ import { Curve } from './curves.svelte.ts';
 
 /** Where the address is kept: a new entry of the browser's history, or the present one rewritten. */
 export interface AddressBar {
-	go(address: string, options: { replace: boolean }): void;
+	go(query: `?${string}`, options: { replace: boolean }): void;
 	/** The hairline alone has moved: nothing need be loaded. */
-	note(address: string): void;
+	note(query: `?${string}`): void;
 }
 
 const UNDO_MAX = 50;

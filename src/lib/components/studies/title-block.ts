@@ -102,9 +102,9 @@ export interface TitleFacts {
 	reliance: string[];
 	conditions: string;
 	engine: string;
-	computedAt: Date | undefined;
+	/** ISO, in UTC; empty before anything is computed. */
+	computedAt: string;
 	worst: string;
-	addressOf(ref: string): string;
 	percent(share: number): string;
 }
 
@@ -172,7 +172,7 @@ export function blockLines(
 		...(title.reliance.length > 0
 			? [`Rests on extrapolation, of eps(i xi) at c/2d: ${title.reliance.join(', ')}`]
 			: []),
-		`Worst state among inputs: ${title.worst}; engine ${title.engine}; ${title.computedAt?.toISOString().slice(0, 10) ?? 'not computed'}`,
+		`Worst state among inputs: ${title.worst}; engine ${title.engine}; ${title.computedAt.slice(0, 10) || 'not computed'}`,
 		address
 	];
 }
