@@ -16,6 +16,9 @@ const problem = (description: string) => json(errorAnswer, description);
 
 export const problems = {
 	malformed: problem('The body is not JSON.'),
+	unknown: problem('The credentials are missing, wrong or no longer good.'),
+	forbidden: problem('Your role, or the scope of the token, does not allow this.'),
+	state: problem('The state of the thing does not allow this now.'),
 	absent: problem('There is no such thing, or it is hidden from you.'),
 	tooLarge: problem('The body is larger than accepted.'),
 	wrongType: problem('The body is not sent as JSON.'),

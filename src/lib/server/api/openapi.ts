@@ -1,20 +1,22 @@
+import { z } from 'zod';
 import { createDocument, type CreateDocumentOptions, type ZodOpenApiPathsObject } from 'zod-openapi';
 import { ENGINE_VERSION } from '../../engine/version.ts';
 import { materialChoiceDescribed } from '../../schemas/force.ts';
 import { forcePaths } from './openapi-forces.ts';
 import { libraryPaths } from './openapi-library.ts';
+import { peoplePaths } from './openapi-people.ts';
 
 /** The description of the API, made from the schemas that check what comes in and out. */
 
 export const API_BASE = '/api/v1';
 
-const paths: ZodOpenApiPathsObject = { ...forcePaths, ...libraryPaths };
+const paths: ZodOpenApiPathsObject = { ...forcePaths, ...libraryPaths, ...peoplePaths };
 
 const [pinned, inPlace] = materialChoiceDescribed.options;
 
 const override: CreateDocumentOptions['override'] = ({ jsonSchema, zodSchema }) => {
 	// While parsing, a material is told apart by its field `version`; drawn, it is one of two objects.
-	if (zodSchema.meta()?.id === 'Material' && zodSchema._zod.def.type === 'pipe') {
+	if (z.globalRegistry.get(zodSchema)?.id === 'Material' && zodSchema._zod.def.type === 'pipe') {
 		jsonSchema.anyOf = [reference('PinnedMaterial'), reference('InPlaceMaterial')];
 	}
 	// Sums hold models; the depth to which they may nest is checked, not drawn.
