@@ -86,7 +86,7 @@ test('the numbers stand as a table one key away', async ({ page }) => {
 		'B',
 		'bound of B'
 	]);
-	await expect(table.getByRole('row')).toHaveCount(162);
+	await expect(table.getByRole('row')).toHaveCount(230);
 	await page.keyboard.press('t');
 	await expect(table).toHaveCount(0);
 });

@@ -42,6 +42,10 @@ const anyStudy: fc.Arbitrary<Study> = fc
 			quantity: fc.constantFrom('pressure', 'energy', 'gradient'),
 			atNm: separation,
 			parkedNm: separation,
+			marks: fc.array(
+				fc.record({ label: fc.string({ minLength: 1, maxLength: 24 }), separationNm: thicknessNm }),
+				{ maxLength: 6 }
+			),
 			against: fc.constantFrom('ideal', 0)
 		},
 		{
@@ -56,6 +60,7 @@ const anyStudy: fc.Arbitrary<Study> = fc
 					'toNm',
 					'quantity',
 					'atNm',
+					'marks',
 					'against'
 				] as const)
 			]
@@ -132,6 +137,8 @@ describe('a study in an address', () => {
 		['against=4', 'against', 'no model choice'],
 		['choice=A;left7:gold-drude@1.0', 'choice', 'no place'],
 		['choice=A;medium:', 'choice', 'changes nothing'],
+		['mark=contact', 'mark', 'name with a length'],
+		['mark=:3nm', 'mark', 'name with a length'],
 		['choice=A;debye:wet', 'choice', 'not a Debye length'],
 		['choice=1&choice=2&choice=3&choice=4&choice=5&choice=6', 'choice', 'only the first 5']
 	])('reports %s and goes on', (query, part, words) => {

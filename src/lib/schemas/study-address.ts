@@ -2,6 +2,8 @@ import { versionRef, zeroFrequencyRule } from './force.ts';
 import {
 	CHOICE_NAME_MAX,
 	CHOICES_MAX,
+	MARK_LABEL_MAX,
+	MARKS_MAX,
 	materialAt,
 	quantity,
 	SEPARATION_RANGE_NM,
@@ -13,6 +15,7 @@ import {
 	type SlotChange,
 	type SlotMaterial,
 	type Study,
+	type StudyMark,
 	type StudyBody
 } from './study.ts';
 import { decodeShape, encodeShape } from './study-address-shape.ts';
@@ -88,6 +91,7 @@ export function encodeStudy(study: Study): `?${string}` {
 	add('against', study.against, 'ideal');
 	add('at', study.atNm);
 	add('parked', study.parkedNm);
+	for (const { label, separationNm } of study.marks) add('mark', `${label}:${separationNm}nm`);
 	return `?${parts.map(([name, value]) => `${name}=${escaped(value)}`).join('&')}`;
 }
 
@@ -170,6 +174,18 @@ function decodeChoice(text: string, exists: (slot: string) => boolean, report: R
 	return choice;
 }
 
+function decodeMarks(texts: string[], report: Report): StudyMark[] {
+	if (texts.length > MARKS_MAX) report('mark', `only the first ${MARKS_MAX} marks were taken`);
+	return texts.slice(0, MARKS_MAX).flatMap((text) => {
+		const colon = text.lastIndexOf(':');
+		const label = text.slice(0, Math.max(0, colon)).slice(0, MARK_LABEL_MAX);
+		const separationNm = decodeThickness(text.slice(colon + 1));
+		if (label !== '' && separationNm !== undefined) return [{ label, separationNm }];
+		report('mark', `"${text}" is not a name with a length, as contact:0.3nm; it was left out`);
+		return [];
+	});
+}
+
 function decodeNumber(text: string, min: number, max: number): number | undefined {
 	const value = NUMBER.test(text) ? Number(text) : NaN;
 	return value >= min && value <= max ? value : undefined;
@@ -235,6 +251,7 @@ export function decodeStudy(query: URLSearchParams, usual: Study = WORKED_STUDY)
 		...(debyeLengthNm === undefined ? {} : { debyeLengthNm }),
 		choices: [{ name: '', changes: {} }],
 		atNm: inside(readNumber('at', usual.atNm, min, max, 'nm')),
+		marks: decodeMarks(query.getAll('mark'), report),
 		against: 'ideal'
 	};
 	const parkedNm = readNumber('parked', undefined, min, max, 'nm');

@@ -3,7 +3,7 @@ import { materialIn, type ModelChoice, type Study, type StudyBody } from './stud
 
 /** What the engine is asked for one model choice of a study. */
 
-const PER_DECADE = 40;
+const PER_DECADE = 57;
 const POINTS_MAX = 400;
 
 /** Separations of a curve: evenly on the logarithmic axis, dense enough that straight pieces look like the curve. */

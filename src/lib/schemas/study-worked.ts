@@ -15,5 +15,6 @@ export const WORKED_STUDY: Study = {
 	toNm: 10_000,
 	quantity: 'pressure',
 	atNm: 38,
+	marks: [],
 	against: 'ideal'
 };

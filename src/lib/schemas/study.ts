@@ -8,6 +8,8 @@ import { LAYERS_MAX, shape, versionRef, zeroFrequencyRule } from './force.ts';
 
 export const CHOICES_MAX = 5;
 export const CHOICE_NAME_MAX = 60;
+export const MARKS_MAX = 6;
+export const MARK_LABEL_MAX = 24;
 /** Widest axis: what the engine accepts. */
 export const SEPARATION_RANGE_NM = { min: 0.1, max: 1e6 } as const;
 export const THICKNESS_RANGE_NM = { min: 0.1, max: 1e6 } as const;
@@ -53,6 +55,9 @@ export const quantity = z.enum(QUANTITIES);
 
 const separationNm = z.number().min(SEPARATION_RANGE_NM.min).max(SEPARATION_RANGE_NM.max);
 
+/** A length that the reader wants to see on the ruler: contact distance, roughness, a measured gap. */
+export const rulerMark = z.strictObject({ label: z.string().min(1).max(MARK_LABEL_MAX), separationNm });
+
 export const study = z.strictObject({
 	left: studyBody,
 	medium: slotMaterial,
@@ -68,6 +73,7 @@ export const study = z.strictObject({
 	atNm: separationNm,
 	/** The grey, parked one. */
 	parkedNm: separationNm.optional(),
+	marks: z.array(rulerMark).max(MARKS_MAX),
 	/** What the comparison strip holds the curves against: ideal conductors, or the choice with this index. */
 	against: z.union([
 		z.literal('ideal'),
@@ -84,6 +90,7 @@ export type StudyBody = z.infer<typeof studyBody>;
 export type SlotChange = z.infer<typeof slotChange>;
 export type ModelChoice = z.infer<typeof modelChoice>;
 export type Quantity = z.infer<typeof quantity>;
+export type StudyMark = z.infer<typeof rulerMark>;
 export type Study = z.infer<typeof study>;
 export type Side = 'left' | 'right';
 

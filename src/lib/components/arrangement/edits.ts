@@ -8,7 +8,8 @@ import {
 	type SlotChange,
 	type SlotMaterial,
 	type Study,
-	type StudyLayer
+	type StudyLayer,
+	type StudyMark
 } from '../../schemas/study.ts';
 
 /** Edits of a study: each answers a new one and leaves the old as it was, so that undo is a list of studies. */
@@ -208,4 +209,9 @@ export function addSuccessor(version: string, successor: string): Edit {
 			setChange(index, slot, { ...next.choices[index].changes[slot], version: successor })(next);
 		return places.reduce(change, renameChoice(index, `with ${successor}`)(grown));
 	};
+}
+
+/** The reader's own marks on the ruler. */
+export function setMarks(marks: StudyMark[]): Edit {
+	return (study) => ({ ...study, marks });
 }

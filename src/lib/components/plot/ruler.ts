@@ -23,7 +23,7 @@ const LANDMARKS: RulerMark[] = [
 export const thermalLengthNm = (temperatureK: number): number => THERMAL_NM_K / temperatureK;
 
 export function rulerMarks(
-	{ temperatureK, debyeLengthNm }: Pick<Study, 'temperatureK' | 'debyeLengthNm'>,
+	{ temperatureK, debyeLengthNm, marks: kept }: Pick<Study, 'temperatureK' | 'debyeLengthNm' | 'marks'>,
 	equilibria: readonly { letter: string; separationNm: number; stable: boolean }[]
 ): RulerMark[] {
 	const marks = [...LANDMARKS];
@@ -32,6 +32,7 @@ export function rulerMarks(
 	}
 	if (debyeLengthNm !== undefined)
 		marks.push({ label: 'Debye length', separationNm: debyeLengthNm, own: true });
+	marks.push(...kept.map((mark) => ({ ...mark, own: true })));
 	for (const { letter, separationNm, stable } of equilibria) {
 		marks.push({ label: `${letter} balances, ${stable ? 'stable' : 'unstable'}`, separationNm, own: true });
 	}

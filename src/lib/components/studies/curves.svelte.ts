@@ -109,7 +109,7 @@ export class Curve {
 			);
 			this.equilibria = end.equilibria;
 			this.warnings = end.warnings;
-			this.computedAt = new Date().toISOString();
+			this.computedAt = end.receivedAt;
 			this.previous = [];
 			this.state = 'complete';
 		} catch (error) {

@@ -42,7 +42,11 @@ describe('asking for forces', () => {
 		const { run, received } = answering(
 			`${start}{"type":"points","indices":[1],"points":[{}]}\n{"type":"end","equilibria":[],"warnings":[]}\n`
 		);
-		await expect(run).resolves.toMatchObject({ equilibria: [], warnings: [] });
+		await expect(run).resolves.toMatchObject({
+			equilibria: [],
+			warnings: [],
+			receivedAt: expect.stringMatching(/Z$/)
+		});
 		expect(received).toEqual([2, [1]]);
 	});
 

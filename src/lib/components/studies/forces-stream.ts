@@ -13,6 +13,8 @@ export interface StreamStart {
 }
 
 export interface StreamEnd {
+	/** ISO, in UTC; by the clock of the reader. */
+	receivedAt: string;
 	equilibria: Equilibrium[];
 	warnings: Warning[];
 }
@@ -20,7 +22,7 @@ export interface StreamEnd {
 type Line =
 	| ({ type: 'start' } & StreamStart)
 	| { type: 'points'; indices: number[]; points: ForcePoint[] }
-	| ({ type: 'end' } & StreamEnd)
+	| ({ type: 'end' } & Omit<StreamEnd, 'receivedAt'>)
 	| ({ type: 'error' } & ErrorAnswer);
 
 /** The request was understood and refused, or computing failed; `issues` name the fields. */
@@ -101,7 +103,7 @@ export async function computeForces(
 		const line = JSON.parse(text) as Line;
 		if (line.type === 'start') listener.start(line);
 		else if (line.type === 'points') listener.points(line.indices, line.points);
-		else if (line.type === 'end') return line;
+		else if (line.type === 'end') return { ...line, receivedAt: new Date().toISOString() };
 		else throw new ForcesRefused(line.error.code, line.error.message, line.error.issues);
 	}
 	throw new ForcesRefused('cut-off', 'The answer broke off before its end; what came so far is shown.');

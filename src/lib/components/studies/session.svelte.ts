@@ -97,9 +97,9 @@ export class StudySession {
 
 	/** Parks the grey hairline under the red one, or takes it away where it stands there already. */
 	park(): void {
-		const parkedNm = settled(this.atNm);
-		const { parkedNm: before, ...rest } = this.study;
-		this.#settle(before === parkedNm ? rest : { ...rest, parkedNm });
+		const atNm = settled(this.atNm);
+		const { parkedNm, ...rest } = this.study;
+		this.#settle(parkedNm === atNm ? { ...rest, atNm } : { ...rest, atNm, parkedNm: atNm });
 	}
 
 	#settle(study: Study): void {
