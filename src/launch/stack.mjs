@@ -57,7 +57,9 @@ export async function runStack(work, interruptedCode = 0) {
 		}
 	}
 	for (const say of lastWords) say();
-	process.exit(wanted ? interruptedCode : undefined);
+	if (wanted) process.exitCode = interruptedCode;
+	// Without an argument: even an undefined one would wipe out the code that was set.
+	process.exit();
 }
 
 /**
