@@ -1,6 +1,6 @@
 import * as search from '$lib/server/library/search.ts';
 import { answered } from '../answered.ts';
-import { decodeView } from './library-address.ts';
+import { decodeView } from './decode-view.ts';
 import type { PageServerLoad } from './$types';
 
 export const load: PageServerLoad = async ({ url }) => {

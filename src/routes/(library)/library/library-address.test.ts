@@ -1,5 +1,7 @@
 import { describe, expect, it } from 'vitest';
-import { decodeView, sortedBy, viewQuery } from './library-address.ts';
+import { libraryQuery } from '$lib/schemas/material.ts';
+import { decodeView } from './decode-view.ts';
+import { sortedBy, USUAL_VIEW, viewQuery } from './library-address.ts';
 
 const decoded = (query: string) => decodeView(new URLSearchParams(query));
 
@@ -9,6 +11,10 @@ describe('the address of the library page', () => {
 		expect(problems).toEqual([]);
 		expect(view.at).toBe(100);
 		expect(viewQuery(view)).toBe('');
+	});
+
+	it('means by nothing what the schema means by nothing', () => {
+		expect(USUAL_VIEW).toEqual({ ...libraryQuery.parse({}), at: 100 });
 	});
 
 	it('gives the same view back after a round trip', () => {
