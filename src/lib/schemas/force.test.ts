@@ -45,6 +45,14 @@ describe('the schema of a force request', () => {
 			'arrangement.medium.permittivity.dampingEv'
 		],
 		[
+			'a field that no model has',
+			{
+				...plain,
+				arrangement: { ...plain.arrangement, medium: { permittivity: { kind: 'vacuum', colour: 'red' } } }
+			},
+			'arrangement.medium.permittivity.colour'
+		],
+		[
 			'a version without a number',
 			{ ...plain, arrangement: { ...plain.arrangement, medium: { version: 'gold' } } },
 			'arrangement.medium.version'

@@ -29,6 +29,8 @@ export type PinnedMaterial = z.infer<typeof pinned>;
 export type InPlaceMaterial = z.infer<typeof inPlace>;
 export type MaterialChoice = PinnedMaterial | InPlaceMaterial;
 
+const STRAY_FIELD = 'is not a field here; check the spelling or leave it out';
+
 /** Told apart by the field `version`, so that a slip inside a model is reported where it is and not as "no alternative fits". */
 export const materialChoice: z.ZodType<MaterialChoice> = z
 	.unknown()
@@ -36,13 +38,19 @@ export const materialChoice: z.ZodType<MaterialChoice> = z
 		const named = typeof value === 'object' && value !== null && 'version' in value;
 		const parsed = (named ? pinned : inPlace).safeParse(value);
 		if (parsed.success) return parsed.data;
-		for (const { path, message } of parsed.error.issues) context.addIssue({ code: 'custom', path, message });
+		for (const issue of parsed.error.issues) {
+			if (issue.code !== 'unrecognized_keys')
+				context.addIssue({ code: 'custom', path: issue.path, message: issue.message });
+			else
+				for (const key of issue.keys)
+					context.addIssue({ code: 'custom', path: [...issue.path, key], message: STRAY_FIELD });
+		}
 		return z.NEVER;
 	})
-	.meta({ id: 'Material' });
+	.meta({ id: 'MaterialChoice' });
 
 /** The same for the API's description, where a transform cannot be drawn. */
-export const materialChoiceDescribed = z.union([pinned, inPlace]).meta({ id: 'Material' });
+export const materialChoiceDescribed = z.union([pinned, inPlace]).meta({ id: 'MaterialChoice' });
 
 const lengthNm = z.number().positive();
 

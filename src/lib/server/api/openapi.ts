@@ -16,7 +16,7 @@ const [pinned, inPlace] = materialChoiceDescribed.options;
 
 const override: CreateDocumentOptions['override'] = ({ jsonSchema, zodSchema }) => {
 	// While parsing, a material is told apart by its field `version`; drawn, it is one of two objects.
-	if (z.globalRegistry.get(zodSchema)?.id === 'Material' && zodSchema._zod.def.type === 'pipe') {
+	if (z.globalRegistry.get(zodSchema)?.id === 'MaterialChoice' && zodSchema._zod.def.type === 'pipe') {
 		jsonSchema.anyOf = [reference('PinnedMaterial'), reference('InPlaceMaterial')];
 	}
 	// Sums hold models; the depth to which they may nest is checked, not drawn.
