@@ -72,7 +72,7 @@ test('a parked line gives the difference and the mean exponent', async ({ page }
 	await expect(page).toHaveURL(/[?&]parked=100$/);
 	await hairline(page).focus();
 	await page.keyboard.press('Shift+ArrowRight');
-	await expect(valueOf(page, 'B')).toContainText(/from 100 nm: .*mean exponent \u2212[3-5]\.\d/);
+	await expect(valueOf(page, 'B')).toContainText(/change .*mean exponent \u2212[3-5]\.\d/);
 });
 
 test('the numbers stand as a table one key away', async ({ page }) => {

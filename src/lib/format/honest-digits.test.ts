@@ -21,7 +21,8 @@ describe('honest digits', () => {
 		[-5.632, 1e-9, 1.2, `${MINUS}5`, '.632', 'Pa'],
 		[2.43, 1e-2, null, '2.4', '', 'Pa'],
 		[0.04567, 1e-9, 0.02, '45.6', '7', 'mPa'],
-		[123.4, 1e-9, 1.2, '123', '.4', 'Pa']
+		[123.4, 1e-9, 1.2, '1', '23.4', 'Pa'],
+		[0, 0, null, '0', '', 'pPa']
 	])('writes %d with bound %d and spread %d', (value, bound, spread, supported, certified, unit) => {
 		expect(honestNumber(value, PRESSURE, bound, spread)).toEqual({
 			supported,

@@ -38,19 +38,11 @@ export function honestNumber(
 	const supportedFigures = spread === null ? shown : Math.min(shown, figuresLeft(spread));
 
 	let figures = 0;
-	let cut = mantissa.length;
-	for (let index = 0; index < mantissa.length; index++) {
-		const digit = /\d/.test(mantissa[index]);
-		if (digit && (figures > 0 || mantissa[index] !== '0')) figures++;
-		// Digits before the point stay together: a lighter "23" in "1 023" reads as a decimal part.
-		if (figures === supportedFigures && mantissa.slice(0, index + 1).includes('.')) {
-			cut = index + 1;
-			break;
-		}
-		if (figures >= supportedFigures && mantissa[index + 1] === '.') {
-			cut = index + 1;
-			break;
-		}
+	let cut = 0;
+	while (cut < mantissa.length && figures < supportedFigures) {
+		// Zeros before the first figure only place the point.
+		if (/\d/.test(mantissa[cut]) && (figures > 0 || mantissa[cut] !== '0')) figures++;
+		cut++;
 	}
 	return { supported: mantissa.slice(0, cut), certified: mantissa.slice(cut), exponent, unit: unit.symbol };
 }

@@ -1,4 +1,4 @@
-import { quantityLine, type UnitScale } from '../../format/quantity.ts';
+import { lengthText } from '../../format/length.ts';
 import { materialIn, type ModelChoice, type Side, type Study } from '../../schemas/study.ts';
 import type { SectionBody, SectionMaterial } from '../plot/section.ts';
 import { plainName } from './title-block.ts';
@@ -7,8 +7,7 @@ import type { VersionFacts } from './version-facts.ts';
 /** The cross-section of the arrangement; materials that only a choice has are not drawn. */
 export function sectionOf(
 	study: Study,
-	facts: Record<string, VersionFacts>,
-	lengthScale: UnitScale
+	facts: Record<string, VersionFacts>
 ): { left: SectionBody; medium: SectionMaterial; right: SectionBody } {
 	const asArranged: ModelChoice = { name: '', changes: {} };
 	const material = (slot: string): SectionMaterial => {
@@ -23,7 +22,7 @@ export function sectionOf(
 		substrate: material(side),
 		layers: study[side].layers.map(({ thicknessNm }, index) => {
 			const of = material(`${side}${index + 1}`);
-			return { ...of, thicknessNm, label: `${of.name}, ${quantityLine(thicknessNm, lengthScale)}` };
+			return { ...of, thicknessNm, label: `${of.name}, ${lengthText(thicknessNm)}` };
 		})
 	});
 	return { left: body('left'), medium: material('medium'), right: body('right') };
