@@ -13,6 +13,8 @@ export interface AxisMark {
 	percent: number;
 	/** Empty for the marks between two decades. */
 	label: string;
+	/** Every other label, left out where the axis is too short for all. */
+	spare: boolean;
 	/** The first and the last label stay inside the axis. */
 	anchor: 'start' | 'middle' | 'end';
 }
@@ -35,12 +37,14 @@ export const AXIS_MARKS: readonly AxisMark[] = [
 		energyEv,
 		percent: scale.at(energyEv),
 		label: quantityLine(energyEv, ENERGY, 1),
+		spare: Math.round(Math.log10(energyEv)) % 2 !== 0,
 		anchor: anchorOf(energyEv)
 	})),
 	...scale.minors.map((energyEv) => ({
 		energyEv,
 		percent: scale.at(energyEv),
 		label: '',
+		spare: false,
 		anchor: 'middle' as const
 	}))
 ];
