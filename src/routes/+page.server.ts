@@ -1,7 +1,7 @@
 import { epsilonShares } from '$lib/engine/index.ts';
 import { factsOf } from '$lib/components/studies/facts-of.ts';
 import { decodeStudy } from '$lib/schemas/study-address.ts';
-import { versionsOf } from '$lib/schemas/study.ts';
+import { versionsOf } from '$lib/schemas/study-slots.ts';
 import * as versions from '$lib/server/library/versions.ts';
 import type { PageServerLoad } from './$types';
 

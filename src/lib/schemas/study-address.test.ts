@@ -1,7 +1,9 @@
 import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
-import { study as studySchema, slotsOf, type Study } from './study.ts';
-import { decodeStudy, encodeStudy } from './study-address.ts';
+import { study as studySchema, type Study } from './study.ts';
+import { slotsOf } from './study-slots.ts';
+import { decodeStudy } from './study-address.ts';
+import { encodeStudy } from './study-encode.ts';
 import { WORKED_STUDY } from './study-worked.ts';
 
 const decode = (query: string) => decodeStudy(new URLSearchParams(query));

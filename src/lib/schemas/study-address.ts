@@ -4,13 +4,15 @@ import {
 	CHOICES_MAX,
 	MARK_LABEL_MAX,
 	MARKS_MAX,
-	materialAt,
-	quantity,
 	SEPARATION_RANGE_NM,
+	TEMPERATURE_RANGE_K,
+	THICKNESS_RANGE_NM
+} from './study-limits.ts';
+import { materialAt } from './study-slots.ts';
+import {
+	quantity,
 	slotName,
 	study as studySchema,
-	TEMPERATURE_RANGE_K,
-	THICKNESS_RANGE_NM,
 	type ModelChoice,
 	type SlotChange,
 	type SlotMaterial,
@@ -18,7 +20,7 @@ import {
 	type StudyMark,
 	type StudyBody
 } from './study.ts';
-import { decodeShape, encodeShape } from './study-address-shape.ts';
+import { decodeShape } from './study-address-shape.ts';
 import { WORKED_STUDY } from './study-worked.ts';
 
 /**
@@ -46,54 +48,6 @@ type Report = (part: string, message: string) => void;
 
 const NUMBER = /^\d+(\.\d+)?(e[+-]?\d+)?$/i;
 const UNIT_NM: Record<string, number> = { '': 1, nm: 1, um: 1000, A: 0.1 };
-
-const rule = (material: SlotMaterial) => (material.zeroFrequency ? `!${material.zeroFrequency}` : '');
-const encodeMaterial = (material: SlotMaterial) => material.version + rule(material);
-
-function encodeBody(body: StudyBody): string {
-	const layers = body.layers.map(({ of, thicknessNm }) => `${encodeMaterial(of)}:${thicknessNm}nm`);
-	return [...layers, encodeMaterial(body.substrate)].join(',');
-}
-
-function encodeChoice(choice: ModelChoice): string {
-	const name = choice.name.replace(/[%;]/g, encodeURIComponent);
-	const changes = Object.entries(choice.changes).map(
-		([slot, { version = '', zeroFrequency }]) =>
-			`${slot}:${version}${zeroFrequency === undefined ? '' : `!${zeroFrequency}`}`
-	);
-	const ions = choice.debyeLengthNm === undefined ? [] : [`debye:${choice.debyeLengthNm}`];
-	return [name, ...changes, ...ions].join(';');
-}
-
-/** Everything is escaped but the few signs that keep an address readable and mean nothing in a query. */
-const escaped = (text: string) =>
-	encodeURIComponent(text)
-		.replace(/%(40|3A|2C|3B)/g, decodeURIComponent)
-		.replace(/%20/g, '+');
-
-/** The query of a study, with its question mark. */
-export function encodeStudy(study: Study): `?${string}` {
-	const parts: [string, string][] = [
-		['left', encodeBody(study.left)],
-		['medium', encodeMaterial(study.medium)],
-		['right', encodeBody(study.right)]
-	];
-	const add = (name: string, value: string | number | undefined, usual?: string | number) => {
-		if (value !== undefined && value !== usual) parts.push([name, String(value)]);
-	};
-	add('shape', encodeShape(study.shape), 'plates');
-	add('T', study.temperatureK);
-	add('debye', study.debyeLengthNm);
-	for (const choice of study.choices) add('choice', encodeChoice(choice));
-	add('from', study.fromNm, WORKED_STUDY.fromNm);
-	add('to', study.toNm, WORKED_STUDY.toNm);
-	add('show', study.quantity, 'pressure');
-	add('against', study.against, 'ideal');
-	add('at', study.atNm);
-	add('parked', study.parkedNm);
-	for (const { label, separationNm } of study.marks) add('mark', `${label}:${separationNm}nm`);
-	return `?${parts.map(([name, value]) => `${name}=${escaped(value)}`).join('&')}`;
-}
 
 function decodeMaterial(text: string): SlotMaterial | string {
 	const [version, ruleText, ...rest] = text.split('!');

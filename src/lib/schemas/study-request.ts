@@ -1,5 +1,6 @@
 import type { ForceRequestInput, PinnedMaterial } from './force.ts';
-import { materialIn, type ModelChoice, type Study, type StudyBody } from './study.ts';
+import { materialIn } from './study-slots.ts';
+import type { ModelChoice, Study, StudyBody } from './study.ts';
 
 /** What the engine is asked for one model choice of a study. */
 

@@ -1,19 +1,20 @@
 import { z } from 'zod';
 import { LAYERS_MAX, shape, versionRef, zeroFrequencyRule } from './force.ts';
+import {
+	CHOICE_NAME_MAX,
+	CHOICES_MAX,
+	MARK_LABEL_MAX,
+	MARKS_MAX,
+	QUANTITIES,
+	SEPARATION_RANGE_NM,
+	TEMPERATURE_RANGE_K,
+	THICKNESS_RANGE_NM
+} from './study-limits.ts';
 
 /**
  * A study as an address carries it: one arrangement of pinned versions, up to five model choices that each name only what
  * they change, and where the reader stands (quantity, range, hairline). Results are never part of it: they follow from it.
  */
-
-export const CHOICES_MAX = 5;
-export const CHOICE_NAME_MAX = 60;
-export const MARKS_MAX = 6;
-export const MARK_LABEL_MAX = 24;
-/** Widest axis: what the engine accepts. */
-export const SEPARATION_RANGE_NM = { min: 0.1, max: 1e6 } as const;
-export const THICKNESS_RANGE_NM = { min: 0.1, max: 1e6 } as const;
-export const TEMPERATURE_RANGE_K = { min: 0.5, max: 5000 } as const;
 
 export const slotMaterial = z.strictObject({
 	version: versionRef,
@@ -50,7 +51,6 @@ export const modelChoice = z.strictObject({
 	debyeLengthNm: z.union([z.number().min(0.1).max(1e6), z.literal('none')]).optional()
 });
 
-export const QUANTITIES = ['pressure', 'energy', 'gradient', 'force'] as const;
 export const quantity = z.enum(QUANTITIES);
 
 const separationNm = z.number().min(SEPARATION_RANGE_NM.min).max(SEPARATION_RANGE_NM.max);
@@ -93,39 +93,3 @@ export type Quantity = z.infer<typeof quantity>;
 export type StudyMark = z.infer<typeof rulerMark>;
 export type Study = z.infer<typeof study>;
 export type Side = 'left' | 'right';
-
-/** Letters by which the choices are called everywhere. */
-export const choiceLetter = (index: number): string => 'ABCDE'[index] ?? String(index + 1);
-
-/** Every place of an arrangement in the order of the drawing, left to right. */
-export function slotsOf(study: Study): string[] {
-	const layers = (side: Side) => study[side].layers.map((_, index) => `${side}${index + 1}`);
-	return ['left', ...layers('left').reverse(), 'medium', ...layers('right'), 'right'];
-}
-
-/** What the arrangement itself puts at a place; undefined where the place does not exist. */
-export function materialAt(study: Study, slot: string): SlotMaterial | undefined {
-	if (slot === 'medium') return study.medium;
-	const side: Side = slot.startsWith('left') ? 'left' : 'right';
-	const layer = Number(slot.slice(side.length));
-	return layer === 0 ? study[side].substrate : study[side].layers[layer - 1]?.of;
-}
-
-/** What a choice puts at a place: the arrangement's material with the choice's change laid over it. */
-export function materialIn(study: Study, choice: ModelChoice, slot: string): SlotMaterial | undefined {
-	const base = materialAt(study, slot);
-	const change = choice.changes[slot];
-	if (!base || !change) return base;
-	const version = change.version ?? base.version;
-	const rule = change.zeroFrequency ?? base.zeroFrequency;
-	return rule === undefined || rule === 'written' ? { version } : { version, zeroFrequency: rule };
-}
-
-/** Every version a study names, in the arrangement or in a choice, each once. */
-export function versionsOf(study: Study): string[] {
-	const named = slotsOf(study).map((slot) => materialAt(study, slot)?.version);
-	const changed = study.choices.flatMap((choice) =>
-		Object.values(choice.changes).map(({ version }) => version)
-	);
-	return [...new Set([...named, ...changed])].filter((version) => version !== undefined);
-}

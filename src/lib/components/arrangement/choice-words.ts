@@ -1,4 +1,5 @@
-import { choiceLetter, materialAt, type ModelChoice, type Study } from '../../schemas/study.ts';
+import { choiceLetter, materialAt } from '../../schemas/study-slots.ts';
+import type { ModelChoice, Study } from '../../schemas/study.ts';
 import type { VersionFacts } from '../studies/version-facts.ts';
 import { ruleWords } from './conduction.ts';
 

@@ -1,15 +1,14 @@
 import type { ZeroFrequencyRule } from '../../engine/contract.ts';
-import {
-	CHOICES_MAX,
-	materialIn,
-	slotsOf,
-	type ModelChoice,
-	type Side,
-	type SlotChange,
-	type SlotMaterial,
-	type Study,
-	type StudyLayer,
-	type StudyMark
+import { CHOICES_MAX } from '../../schemas/study-limits.ts';
+import { materialIn, slotsOf } from '../../schemas/study-slots.ts';
+import type {
+	ModelChoice,
+	Side,
+	SlotChange,
+	SlotMaterial,
+	Study,
+	StudyLayer,
+	StudyMark
 } from '../../schemas/study.ts';
 
 /** Edits of a study: each answers a new one and leaves the old as it was, so that undo is a list of studies. */

@@ -1,5 +1,6 @@
 import type { ForcePoint } from '../../engine/contract.ts';
-import { choiceLetter, type Quantity, type Study } from '../../schemas/study.ts';
+import { choiceLetter } from '../../schemas/study-slots.ts';
+import type { Quantity, Study } from '../../schemas/study.ts';
 import { differenceFrom, ratioToIdeal } from '../plot/comparison.ts';
 import { seriesOf, sharesOf, type Series } from '../plot/series.ts';
 import { signRuns } from '../plot/sign-runs.ts';

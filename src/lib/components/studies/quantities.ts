@@ -56,7 +56,6 @@ const SHAPES: Record<Shape['kind'], string> = {
 };
 
 export const shapeName = (kind: Shape['kind']): string => SHAPES[kind];
-export const SHAPE_KINDS = Object.keys(SHAPES) as Shape['kind'][];
 
 /** The shape for a heading: pressure, energy and gradient are always those between plates at this separation. */
 export function quantityHeading(quantity: Quantity, shape: Shape): string {

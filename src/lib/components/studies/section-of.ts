@@ -1,5 +1,6 @@
 import { lengthText } from '../../format/length.ts';
-import { materialIn, type ModelChoice, type Side, type Study } from '../../schemas/study.ts';
+import { materialIn } from '../../schemas/study-slots.ts';
+import type { ModelChoice, Side, Study } from '../../schemas/study.ts';
 import type { SectionBody, SectionMaterial } from '../plot/section.ts';
 import { plainName } from './title-block.ts';
 import type { VersionFacts } from './version-facts.ts';

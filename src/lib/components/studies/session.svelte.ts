@@ -1,6 +1,7 @@
-import { encodeStudy } from '../../schemas/study-address.ts';
+import { encodeStudy } from '../../schemas/study-encode.ts';
 import { choiceRequest } from '../../schemas/study-request.ts';
-import { CHOICES_MAX, type Study } from '../../schemas/study.ts';
+import { CHOICES_MAX } from '../../schemas/study-limits.ts';
+import type { Study } from '../../schemas/study.ts';
 import type { Edit } from '../arrangement/edits.ts';
 import { settled } from '../plot/hairline.ts';
 import { Curve } from './curves.svelte.ts';

@@ -1,6 +1,7 @@
 import { numberLine, percent } from '../../format/number.ts';
 import { quantityLine, type UnitScale } from '../../format/quantity.ts';
-import { materialIn, slotsOf, type ModelChoice, type Study } from '../../schemas/study.ts';
+import { materialIn, slotsOf } from '../../schemas/study-slots.ts';
+import type { ModelChoice, Study } from '../../schemas/study.ts';
 import { ruleWords } from '../arrangement/conduction.ts';
 import type { Reading } from './readings.ts';
 import { relianceAt, type VersionFacts } from './version-facts.ts';

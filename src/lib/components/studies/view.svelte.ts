@@ -1,8 +1,8 @@
 import { percent } from '../../format/number.ts';
 import { quantityLine } from '../../format/quantity.ts';
 import { scaleFor } from '../../format/units.ts';
-import { encodeStudy } from '../../schemas/study-address.ts';
-import { choiceLetter } from '../../schemas/study.ts';
+import { encodeStudy } from '../../schemas/study-encode.ts';
+import { choiceLetter } from '../../schemas/study-slots.ts';
 import { otherMessages } from '../arrangement/issues.ts';
 import { drawnChoices } from './drawn.ts';
 import { quantityFacts, quantityHeading, quantityWord, shapeName } from './quantities.ts';

@@ -1,0 +1,39 @@
+import type { ModelChoice, Side, SlotMaterial, Study } from './study.ts';
+
+/** The places of an arrangement, and what fills them in a model choice. */
+
+/** Letters by which the choices are called everywhere. */
+export const choiceLetter = (index: number): string => 'ABCDE'[index] ?? String(index + 1);
+
+/** Every place of an arrangement in the order of the drawing, left to right. */
+export function slotsOf(study: Study): string[] {
+	const layers = (side: Side) => study[side].layers.map((_, index) => `${side}${index + 1}`);
+	return ['left', ...layers('left').reverse(), 'medium', ...layers('right'), 'right'];
+}
+
+/** What the arrangement itself puts at a place; undefined where the place does not exist. */
+export function materialAt(study: Study, slot: string): SlotMaterial | undefined {
+	if (slot === 'medium') return study.medium;
+	const side: Side = slot.startsWith('left') ? 'left' : 'right';
+	const layer = Number(slot.slice(side.length));
+	return layer === 0 ? study[side].substrate : study[side].layers[layer - 1]?.of;
+}
+
+/** What a choice puts at a place: the arrangement's material with the choice's change laid over it. */
+export function materialIn(study: Study, choice: ModelChoice, slot: string): SlotMaterial | undefined {
+	const base = materialAt(study, slot);
+	const change = choice.changes[slot];
+	if (!base || !change) return base;
+	const version = change.version ?? base.version;
+	const rule = change.zeroFrequency ?? base.zeroFrequency;
+	return rule === undefined || rule === 'written' ? { version } : { version, zeroFrequency: rule };
+}
+
+/** Every version a study names, in the arrangement or in a choice, each once. */
+export function versionsOf(study: Study): string[] {
+	const named = slotsOf(study).map((slot) => materialAt(study, slot)?.version);
+	const changed = study.choices.flatMap((choice) =>
+		Object.values(choice.changes).map(({ version }) => version)
+	);
+	return [...new Set([...named, ...changed])].filter((version) => version !== undefined);
+}
