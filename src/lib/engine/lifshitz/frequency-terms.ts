@@ -32,14 +32,16 @@ interface BodyNoise {
 	absolute: number;
 }
 
-/**
- * Evaluator of frequency terms for one system and level: `at(block, i, time)` computes node i of a block at
- * separation c time/2 and leaves the result in `terms`.
- */
-export function frequencyTerms(
-	system: System,
-	level: Level
-): { terms: FrequencyTerms; at(block: FrequencyBlock, i: number, separation: number, time: number): void } {
+export interface FrequencyEvaluator {
+	terms: FrequencyTerms;
+	/** Computes node i of a block into `terms`; time is 2 d/c. */
+	at(block: FrequencyBlock, i: number, separation: number, time: number): void;
+	/** y0 of node i. */
+	phaseOf(block: FrequencyBlock, i: number, time: number): number;
+}
+
+/** Evaluator of frequency terms for one system and level. */
+export function frequencyTerms(system: System, level: Level): FrequencyEvaluator {
 	const { substances, left, right, twins } = system;
 	const lattices: LogLattice[] = [];
 	const latticeOf = (index: number, odd: number): LogLattice =>
@@ -177,11 +179,14 @@ export function frequencyTerms(
 		}
 	};
 
-	const at = (block: FrequencyBlock, i: number, separation: number, time: number): void => {
+	const phaseOf = (block: FrequencyBlock, i: number, time: number): number => {
 		if (block.chi.length === 0) fill(block);
-		const phase = block.xi[i] * time;
-		const X = phase * phase;
-		const y0 = phase * Math.sqrt((1 + block.chi[0][i]) * block.mu[0][i]);
+		return block.xi[i] * time * Math.sqrt((1 + block.chi[0][i]) * block.mu[0][i]);
+	};
+
+	const at = (block: FrequencyBlock, i: number, separation: number, time: number): void => {
+		const y0 = phaseOf(block, i, time);
+		const X = (block.xi[i] * time) ** 2;
 		terms.phase = y0;
 		const radius = FOOT * analyticRadius(block, i, separation, X, y0);
 		const scale = Math.min(SMALLEST_SCALE, Math.max(0, Math.ceil(-Math.log2(radius))));
@@ -205,5 +210,5 @@ export function frequencyTerms(
 			open[q] += 2 * level.cut * (Math.abs(te[q]) + Math.abs(tm[q]));
 		}
 	};
-	return { terms, at };
+	return { terms, at, phaseOf };
 }

@@ -15,7 +15,7 @@ export interface Level {
 }
 
 export const LEVELS: readonly Level[] = [
-	{ step: 0.4, cut: 1e-13, nodes: 5, direct: 8, reach: 1e-6 },
+	{ step: 0.37, cut: 1e-13, nodes: 5, direct: 8, reach: 1e-6 },
 	{ step: 0.32, cut: 1e-15, nodes: 7, direct: 8, reach: 1e-8 },
 	{ step: 0.25, cut: 1e-17, nodes: 11, direct: 16, reach: 0 }
 ];
@@ -26,7 +26,7 @@ export const LEVELS: readonly Level[] = [
  * |Im u| < pi/2 makes spectra fall like exp(-pi^2 frequency). The constants, for F, P and G, cover the powers of the
  * frequency that go with it and phases at which the difference is small by chance.
  */
-export const LATTICE_CONSTANTS = [24, 36, 60] as const;
+export const LATTICE_CONSTANTS = [20, 32, 50] as const;
 
 /** exp(-pi^2 (1/h - 1/(2h))): error of one lattice over the difference of its halves. */
 export const singleFall = ({ step }: Level): number => Math.exp(-(Math.PI ** 2) / (2 * step));

@@ -1,8 +1,9 @@
 import { BOLTZMANN, REDUCED_PLANCK } from '../constants.ts';
 import type { System } from '../system.ts';
-import { matsubaraSum, zeroTemperatureIntegral } from './frequency-sum.ts';
+import { matsubaraSum } from './matsubara-sum.ts';
 import { LEVELS, type Level } from './level.ts';
 import { newTally, valueOf, type Tally } from './tally.ts';
+import { zeroTemperatureIntegral } from './zero-temperature.ts';
 import { zeroTerm } from './zero-term.ts';
 
 /** Free energy per area (J/m^2), pressure (Pa) and dP/dd (Pa/m) of two plates; negative energy and pressure attract. */

@@ -1,10 +1,10 @@
-/** Free energy, pressure and gradient, in this order, wherever three numbers stand together. */
-export const QUANTITIES = [0, 1, 2] as const;
-
 /** Half a unit in the last place of one. */
 export const UNIT_ROUNDOFF = 2 ** -53;
 
-/** Sums of one separation in the reduced units of methods.md section 1, and what may be wrong with them. */
+/**
+ * Free energy, pressure and gradient, in this order: sums of one separation in the reduced units of methods.md section 1, and what may be wrong
+ * with them.
+ */
 export interface Tally {
 	/** For each quantity: zero TE, zero TM, TE, TM. */
 	parts: Float64Array;
@@ -36,4 +36,18 @@ export function valueOf(tally: Tally, quantity: number): number {
 	const { parts } = tally;
 	const at = 4 * quantity;
 	return parts[at] + parts[at + 1] + (parts[at + 2] + parts[at + 3]);
+}
+
+const FIELDS = ['parts', 'magnitude', 'lattice', 'blocks', 'tail', 'rounding'] as const;
+
+/** What a tally holds now, to go back to. */
+export function copyTally(tally: Tally): Tally {
+	const copy = newTally();
+	for (const field of FIELDS) copy[field].set(tally[field]);
+	return copy;
+}
+
+/** Sums as they were; what has been evaluated stays counted. */
+export function restoreTally(tally: Tally, before: Tally): void {
+	for (const field of FIELDS) tally[field].set(before[field]);
 }

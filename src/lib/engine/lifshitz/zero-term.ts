@@ -18,6 +18,9 @@ const CLOSED = [-1, 2, 6];
 /** Below the disc of analyticity nothing is known when n = 0: the lattice runs down in ln s to where it may be cut. */
 const NO_DISC = 1e-30;
 
+/** Share of the axis that a screened n = 0 term may live on. */
+const SMALL_PART = 1e-4;
+
 /** Rounding of the closed and of the numerical n = 0 term, in units of roundoff. */
 const ROUNDING = 24;
 
@@ -25,11 +28,13 @@ const ROUNDING = 24;
 export function zeroTerm(system: System, level: Level): (separation: number, tally: Tally) => void {
 	const { left, right, screening } = system;
 	const medium = left.zero[0];
-	const foot = screening === null && medium.square === 0 ? Math.sqrt(level.cut) / 4 : level.cut;
-	const lattices = [0, 1 / 2].map((shift) => logLattice(level.step, NO_DISC, level.cut, foot, shift));
+	const latticesTo = (floor: number): LogLattice[] =>
+		[0, 1 / 2].map((shift) => logLattice(level.step, NO_DISC, level.cut, floor, shift));
+	// With y0 = 0 the integrands vanish at least like y ln y at the foot.
+	const unscreened = latticesTo(Math.sqrt(level.cut) / 200);
 	const fall = doubledFall(level);
-	const rLeft = new Float64Array(lattices[0].count + 4);
-	const rRight = new Float64Array(rLeft.length);
+	let rLeft = new Float64Array(0);
+	let rRight = new Float64Array(0);
 	const sums = new Float64Array(6);
 	const open = new Float64Array(3);
 	const bare = left.zero.length === 2 && right.zero.length === 2;
@@ -42,7 +47,13 @@ export function zeroTerm(system: System, level: Level): (separation: number, tal
 		const screened = polarisation === 'tm' && screening !== null;
 		const y0 = screened ? 2 * separation * screening : X * Math.sqrt(medium.square * medium.mu);
 		open.fill(0);
+		// With y0 > 0 they need not vanish, and may live on a small part of the axis.
+		const lattices = y0 === 0 ? unscreened : latticesTo(level.cut * SMALL_PART * Math.min(1, y0));
 		for (const lattice of lattices) {
+			if (rLeft.length < lattice.count) {
+				rLeft = new Float64Array(lattice.count);
+				rRight = new Float64Array(lattice.count);
+			}
 			const reflect = (body: Body, r: Float64Array): void =>
 				zeroFrequencyReflection(
 					polarisation,

@@ -1,0 +1,39 @@
+import { roundTripTime, type System } from '../system.ts';
+import { blockSum } from './block-sum.ts';
+import { matsubaraBlocks } from './frequency-blocks.ts';
+import type { Level } from './level.ts';
+import { LARGEST_PHASE, tailJudge } from './tail.ts';
+import type { Tally } from './tally.ts';
+
+/**
+ * Adds all terms n >= 1 (T > 0) to a tally, octave by octave until the tail no longer counts (methods.md section 9).
+ *
+ * @returns (separation in m, relative accuracy, tally); made once a system, so that eps(i xi) serves every separation
+ */
+export function matsubaraSum(
+	system: System,
+	level: Level
+): (separation: number, accuracy: number, tally: Tally) => void {
+	const blockAt = matsubaraBlocks(level, system.temperature, system.knots);
+	const sum = blockSum(system, level);
+	const octave = new Float64Array(3);
+	return (separation, accuracy, tally) => {
+		const time = roundTripTime(separation);
+		const judge = tailJudge();
+		octave.fill(0);
+		let start = sum.startPhase(blockAt(0), separation);
+		for (let index = 0; blockAt(index).xi[0] * time < LARGEST_PHASE; index++) {
+			const block = blockAt(index);
+			sum.add(block, separation, tally, true);
+			for (let q = 0; q < 3; q++) octave[q] += sum.last[q];
+			if (!block.closesOctave) continue;
+			const next = sum.startPhase(blockAt(index + 1), separation);
+			judge.octave(octave, start, next);
+			octave.fill(0);
+			start = next;
+			if (!judge.smallEnough(tally, accuracy)) continue;
+			for (let q = 0; q < 3; q++) tally.tail[q] += judge.tail(q);
+			return;
+		}
+	};
+}

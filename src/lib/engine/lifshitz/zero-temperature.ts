@@ -1,0 +1,86 @@
+import { SPEED_OF_LIGHT } from '../constants.ts';
+import { roundTripTime, type System } from '../system.ts';
+import { blockSum } from './block-sum.ts';
+import { zeroTemperatureBlocks } from './frequency-blocks.ts';
+import type { Level } from './level.ts';
+import { LARGEST_PHASE, tailJudge } from './tail.ts';
+import { copyTally, restoreTally, UNIT_ROUNDOFF, valueOf, type Tally } from './tally.ts';
+
+/** Octaves above and below c/(2 d) that are tried at most; the lowest holds 2^-60 of the integral. */
+const MOST_OCTAVES = 60;
+
+/** A remainder next to xi = 0 is tried once the octave above it holds less than this many times the accuracy. */
+const REMAINDER_TRIAL = 1e5;
+
+/** Error that the remainder may have, as a share of the accuracy asked for. */
+const REMAINDER_SHARE = 0.1;
+
+/**
+ * T = 0: adds the integral over xi (rad/s) of the integrals over y to a tally. Octaves of xi from c/(2 d) upwards until
+ * the tail no longer counts, then downwards until what is left next to xi = 0 can be taken in one piece.
+ *
+ * @returns (separation in m, relative accuracy, tally)
+ */
+export function zeroTemperatureIntegral(
+	system: System,
+	level: Level
+): (separation: number, accuracy: number, tally: Tally) => void {
+	const blocks = zeroTemperatureBlocks(level, system.knots);
+	const sum = blockSum(system, level);
+	const octave = new Float64Array(3);
+	const addOctave = (k: number, separation: number, tally: Tally): void => {
+		octave.fill(0);
+		for (const block of blocks.octave(k)) {
+			sum.add(block, separation, tally, true);
+			for (let q = 0; q < 3; q++) octave[q] += sum.last[q];
+		}
+	};
+
+	/** The block next to xi = 0, kept if its error is small; terms need not be analytic at that end. */
+	const addRemainder = (k: number, separation: number, accuracy: number, tally: Tally): boolean => {
+		const before = copyTally(tally);
+		for (const block of blocks.below(k)) sum.add(block, separation, tally, false);
+		const good = [0, 1, 2].every((q) => {
+			const error = tally.blocks[q] - before.blocks[q];
+			const wanted = REMAINDER_SHARE * accuracy * Math.abs(valueOf(tally, q));
+			return error <= Math.max(wanted, UNIT_ROUNDOFF * tally.magnitude[q]);
+		});
+		if (!good) restoreTally(tally, before);
+		return good;
+	};
+
+	const upwards = (middle: number, separation: number, accuracy: number, tally: Tally): void => {
+		const judge = tailJudge();
+		const time = roundTripTime(separation);
+		let start = sum.startPhase(blocks.octave(middle)[0], separation);
+		for (let k = middle; k < middle + MOST_OCTAVES && 2 ** k * time < LARGEST_PHASE; k++) {
+			addOctave(k, separation, tally);
+			const next = sum.startPhase(blocks.octave(k + 1)[0], separation);
+			judge.octave(octave, start, next);
+			start = next;
+			if (!judge.smallEnough(tally, accuracy)) continue;
+			for (let q = 0; q < 3; q++) tally.tail[q] += judge.tail(q);
+			return;
+		}
+	};
+
+	const downwards = (middle: number, separation: number, accuracy: number, tally: Tally): void => {
+		const lowest = middle - MOST_OCTAVES;
+		for (let k = middle - 1; k > lowest; k--) {
+			addOctave(k, separation, tally);
+			if (octave.every((size) => size === 0)) return;
+			const late = [0, 1, 2].every(
+				(q) => octave[q] <= REMAINDER_TRIAL * accuracy * Math.abs(valueOf(tally, q))
+			);
+			if (late && (middle - k) % 2 === 0 && addRemainder(k, separation, accuracy, tally)) return;
+		}
+		// Nothing below can be larger than the octave above it.
+		for (let q = 0; q < 3; q++) tally.tail[q] += 2 * octave[q];
+	};
+
+	return (separation, accuracy, tally) => {
+		const middle = Math.floor(Math.log2(SPEED_OF_LIGHT / (2 * separation)));
+		upwards(middle, separation, accuracy, tally);
+		downwards(middle, separation, accuracy, tally);
+	};
+}
