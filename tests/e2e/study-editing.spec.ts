@@ -50,7 +50,7 @@ test('a layer is added, retyped, taken back and brought again', async ({ page })
 	await search.fill('gold');
 	await page
 		.getByRole('listbox')
-		.getByRole('option', { name: /Lorentz-Drude/ })
+		.getByRole('option', { name: /Gold.*Lorentz-Drude/ })
 		.click();
 	await expect(page.getByRole('heading', { level: 1 })).toHaveText(
 		'Gold against gold on silica, in bromobenzene'
