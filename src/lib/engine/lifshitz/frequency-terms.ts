@@ -134,6 +134,8 @@ export function frequencyTerms(system: System, level: Level): FrequencyEvaluator
 			if (j < body.thickness.length) stack.thickness[j + 1] = body.thickness[j] / separation;
 			const a = stack.chi[j];
 			const b = stack.chi[j + 1];
+			// Equal media meet without an interface: nothing is reflected there, exactly.
+			if (a === b && stack.mu[j] === stack.mu[j + 1]) continue;
 			interfaces += 4 + (((substances[place].chi?.ulps ?? 0) + mediumUlps) * (a + b)) / (2 + a + b);
 		}
 		left.absolute = UNIT_ROUNDOFF * interfaces;

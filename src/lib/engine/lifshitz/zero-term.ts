@@ -139,13 +139,16 @@ function smallness(
 	r2: Float64Array
 ): number {
 	const decay0 = Math.exp(-y0);
-	let sum = 0;
+	let first = 0;
+	let second = 0;
 	for (let i = 0; i < lattice.count; i++) {
 		const y = y0 + lattice.s[i];
 		const e = decay0 * lattice.decay[i];
 		const d = 1 / (1 - r1[i] * r2[i] * e);
 		const weight = lattice.weight[i] * e * d * y * (quantity > 0 ? y : 1) * (quantity > 1 ? y * d : 1);
-		sum += weight * (Math.abs(r1[i]) + Math.abs(r2[i]));
+		first += weight * Math.abs(r1[i]);
+		second += weight * Math.abs(r2[i]);
 	}
-	return 4 * UNIT_ROUNDOFF * sum;
+	// A body that equals the medium reflects nothing, exactly.
+	return first === 0 || second === 0 ? 0 : 4 * UNIT_ROUNDOFF * (first + second);
 }
