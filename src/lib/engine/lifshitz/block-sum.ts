@@ -37,6 +37,9 @@ const STEEPNESS = 1.2;
 /** What polynomials beyond the last measured one may add together, over the geometric estimate. */
 const BLOCK_SAFETY = 16;
 
+/** Next to xi = 0 the last coefficients themselves stand for the error: the rule is far better than that. */
+const REMAINDER_SAFETY = 2;
+
 /** One block added to the tally; magnitudes of the block are left in `last`. */
 export interface BlockSum {
 	add(block: FrequencyBlock, separation: number, tally: Tally, extrapolate: boolean): void;
@@ -86,7 +89,7 @@ export function blockSum(system: System, level: Level): BlockSum {
 			tally.magnitude[q] += last[q];
 			if (block.exact) continue;
 			const size = lastCoefficients(projected, 6 * q) + lastCoefficients(projected, 6 * q + 3);
-			error[q] = BLOCK_SAFETY * size * (extrapolate ? beyond : 1);
+			error[q] = extrapolate ? BLOCK_SAFETY * size * beyond : REMAINDER_SAFETY * size;
 			tally.blocks[q] += error[q];
 		}
 	};
