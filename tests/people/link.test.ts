@@ -1,3 +1,6 @@
+import { mkdtempSync, readFileSync, rmSync } from 'node:fs';
+import { tmpdir } from 'node:os';
+import { join } from 'node:path';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import { linkIn } from '../support/mail.ts';
 import { startPeopleServer } from '../support/people-server.ts';
@@ -7,10 +10,17 @@ const UNUSABLE = 'This link cannot be used';
 let server: Awaited<ReturnType<typeof startPeopleServer>>;
 let client = 0;
 
+const folder = mkdtempSync(join(tmpdir(), 'hairsbreadth-log-'));
+const logFile = join(folder, 'server.log');
+const secrets: string[] = [];
+
 beforeAll(async () => {
-	server = await startPeopleServer();
+	server = await startPeopleServer({ HAIRSBREADTH_LOG_LEVEL: 'info', HAIRSBREADTH_LOG_FILE: logFile });
 }, 180_000);
-afterAll(() => server.stop());
+afterAll(async () => {
+	await server.stop();
+	rmSync(folder, { recursive: true, force: true });
+});
 
 /** Each test comes from a client of its own, so that none eats the other's share. */
 const somebody = () => visitor(server.origin, `198.51.100.${++client}`);
@@ -20,7 +30,9 @@ async function askFor(person: Visitor, email: string): Promise<string> {
 	const answer = await person.form('/sign-in?/link', { email });
 	expect(answer.status).toBe(200);
 	const mail = await server.mail.waitFor(email, before + 1);
-	return new URL(linkIn(mail)).searchParams.get('link') ?? '';
+	const link = new URL(linkIn(mail)).searchParams.get('link') ?? '';
+	secrets.push(link);
+	return link;
 }
 
 const use = (person: Visitor, link: string, more: Record<string, string> = {}) =>
@@ -203,6 +215,7 @@ describe('asking for a link', () => {
 		for (let index = 0; index < 22; index += 1) {
 			answers.push(await person.form('/sign-in?/link', { email: `someone-${index}@larkmoor.example` }));
 		}
+		expect(Number(answers[21].headers.get('retry-after'))).toBeGreaterThan(0);
 		expect(answers.map(({ status }) => status)).toEqual([
 			...new Array<number>(20).fill(200),
 			...new Array<number>(2).fill(429)
@@ -292,4 +305,19 @@ describe('a session', () => {
 			expect(await answer.text()).not.toContain(person.cookies.get('hairsbreadth-session'));
 		}
 	);
+});
+
+describe('the log', () => {
+	it('holds no link, no cookie and no address of a person', async () => {
+		const person = somebody();
+		const link = await askFor(person, 'administrator-2@larkmoor.example');
+		await person.get(`/sign-in/confirm?link=${link}`);
+		await use(person, link);
+		const log = readFileSync(logFile, 'utf8');
+		expect(log).toContain('/(auth)/sign-in/confirm');
+		const cookie = person.cookies.get('hairsbreadth-session') ?? '';
+		expect(cookie).not.toBe('');
+		expect(secrets.length).toBeGreaterThan(5);
+		for (const secret of [...secrets, cookie, 'larkmoor.example']) expect(log.includes(secret)).toBe(false);
+	});
 });

@@ -42,7 +42,7 @@ const guards = [
 	{ file: 'people/invitations.ts', from: 'visibleTo(actor),', to: 'undefined,' },
 	{ file: 'people/invitations.ts', from: '\trequireMayInvite(actor, wanted);', to: '' },
 	{ file: 'people/groups.ts', from: '\trequireSeesGroup(actor, found.id);', to: '' },
-	{ file: 'people/groups.ts', from: '\trequireSeesGroup(actor, asId(groupId));', to: '' },
+	{ file: 'people/groups.ts', from: 'if (!found) throw noSuchMember();', to: '' },
 	{ file: 'people/groups.ts', from: 'email: managed ? member.email : null', to: 'email: member.email' },
 	{ file: 'people/groups.ts', from: 'if (current.closedAt) throw', to: 'if (false) throw' },
 	{

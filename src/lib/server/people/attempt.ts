@@ -10,7 +10,9 @@ export interface Refused {
 	issues: Issue[];
 }
 
-export type Attempt<T> = { failed: false; value: T } | { failed: true; status: number; refused: Refused };
+export type Attempt<T> =
+	| { failed: false; value: T }
+	| { failed: true; status: number; refused: Refused; headers: Record<string, string> };
 
 /** Anything unforeseen goes on to the hook that logs it. */
 export async function attempt<T>(work: () => Promise<T>): Promise<Attempt<T>> {
@@ -20,7 +22,7 @@ export async function attempt<T>(work: () => Promise<T>): Promise<Attempt<T>> {
 		const known = knownProblem(error);
 		if (!known) throw error;
 		const { message, issues = [] } = known.error;
-		return { failed: true, status: known.status, refused: { message, issues } };
+		return { failed: true, status: known.status, refused: { message, issues }, headers: known.headers ?? {} };
 	}
 }
 

@@ -223,9 +223,10 @@ export async function remove(actor: SignedIn, groupId: string, personId: string)
 	await database().transaction((tx) => exit(tx, { groupId, personId, actor: actor.id }));
 }
 
+/** @throws NotFound where one is not in it, whether or not there is such a group */
 export async function leave(actor: SignedIn, groupId: string): Promise<void> {
-	requireSeesGroup(actor, asId(groupId));
-	await database().transaction((tx) => exit(tx, { groupId, personId: actor.id, actor: actor.id }));
+	const exited = { groupId: asId(groupId), personId: actor.id, actor: actor.id };
+	await database().transaction((tx) => exit(tx, exited));
 }
 
 async function exit(

@@ -16,7 +16,7 @@ export const load: PageServerLoad = async ({ url, setHeaders }) => {
 };
 
 export const actions: Actions = {
-	default: async ({ request, cookies, getClientAddress }) => {
+	default: async ({ request, cookies, getClientAddress, setHeaders }) => {
 		const form = await request.formData();
 		const code = field(form, 'code');
 		const name = field(form, 'name');
@@ -30,7 +30,10 @@ export const actions: Actions = {
 				client: getClientAddress()
 			});
 		});
-		if (begun.failed) return fail(begun.status, { ...begun.refused, name });
+		if (begun.failed) {
+			setHeaders(begun.headers);
+			return fail(begun.status, { ...begun.refused, name });
+		}
 		setSessionCookie(cookies, begun.value);
 		redirect(303, '/account');
 	}

@@ -36,7 +36,7 @@ export const load: PageServerLoad = ({ locals, url }) => {
 };
 
 export const actions: Actions = {
-	link: async ({ request, cookies, getClientAddress }) => {
+	link: async ({ request, cookies, getClientAddress, setHeaders }) => {
 		const form = await request.formData();
 		const email = field(form, 'email');
 		const asked = await attempt(async () => {
@@ -48,7 +48,10 @@ export const actions: Actions = {
 			});
 			return address;
 		});
-		if (asked.failed) return fail(asked.status, { ...asked.refused, email });
+		if (asked.failed) {
+			setHeaders(asked.headers);
+			return fail(asked.status, { ...asked.refused, email });
+		}
 		return { sentTo: asked.value };
 	},
 

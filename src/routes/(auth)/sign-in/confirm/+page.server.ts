@@ -17,7 +17,7 @@ export const load: PageServerLoad = async ({ url, cookies, setHeaders }) => {
 };
 
 export const actions: Actions = {
-	default: async ({ request, cookies, getClientAddress }) => {
+	default: async ({ request, cookies, getClientAddress, setHeaders }) => {
 		const form = await request.formData();
 		const used = await attempt(() =>
 			use({
@@ -28,7 +28,10 @@ export const actions: Actions = {
 				client: getClientAddress()
 			})
 		);
-		if (used.failed) return fail(used.status, { message: used.refused.message });
+		if (used.failed) {
+			setHeaders(used.headers);
+			return fail(used.status, { message: used.refused.message });
+		}
 		if (used.value.kind === 'unusable') return fail(400, { message: UNUSABLE });
 		if (used.value.kind === 'confirm') {
 			return fail(400, { message: 'Say first that you asked for this link yourself, in another browser.' });
