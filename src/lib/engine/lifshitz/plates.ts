@@ -67,10 +67,12 @@ function forces(tally: Tally, scale: [number, number, number]): PlateForces {
 	const values = [0, 1, 2].map((q) => valueOf(tally, q));
 	const bound = (q: number): number =>
 		Math.abs(scale[q]) * (tally.lattice[q] + tally.blocks[q] + tally.tail[q] + tally.rounding[q]);
+	// Adding zero turns -0 into 0: nothing has no sign.
+	const inUnits = (sum: number, q: number): number => scale[q] * sum + 0;
 	return {
-		value: [scale[0] * values[0], scale[1] * values[1], scale[2] * values[2]],
+		value: [inUnits(values[0], 0), inUnits(values[1], 1), inUnits(values[2], 2)],
 		bound: [bound(0), bound(1), bound(2)],
-		parts: tally.parts.map((part, i) => part * scale[Math.floor(i / 4)]),
+		parts: tally.parts.map((part, i) => inUnits(part, Math.floor(i / 4))),
 		cancellation: [0, 1, 2].map((q) =>
 			tally.magnitude[q] === 0 ? 1 : tally.magnitude[q] / Math.abs(values[q])
 		) as [number, number, number],
