@@ -75,7 +75,7 @@ const guards = [
 	{ file: 'auth/access.ts', from: 'scope !== null && principal.scopes.includes(scope) &&', to: '' },
 	{ file: 'auth/access.ts', from: "signedOut === 'public' && publicReading", to: "signedOut === 'public'" },
 	{ file: 'auth/link-intent.ts', from: '|| Number(until) < now().getTime()', to: '' },
-	{ file: 'auth/return-to.ts', from: "|| text.startsWith('//')", to: '' },
+	{ file: 'auth/return-to.ts', from: 'origin === here ? text : otherwise', to: 'origin ? text : otherwise' },
 	{ file: 'hooks/same-origin.ts', from: 'if (origin !== null) return !isOwn(origin, ownOrigin);', to: '' },
 	{
 		file: '../../hooks.server.ts',
