@@ -6,6 +6,12 @@ const RULE = gaussRule(16, Infinity);
 /** Panels no longer than this in ln omega. */
 const WIDEST_PANEL = 0.35;
 
+/**
+ * A law continued beyond its panel is subtracted only while it stays of the size that it has there: beside a band edge
+ * eps'' grows like omega^100, and that law continued by a third would be 1e12 times too large.
+ */
+const FARTHEST_CONTINUATION = 1;
+
 /** omega is moved off a knot by this relative amount: the logarithms of both neighbours would be infinite there. */
 const OFF_KNOT = 1e-9;
 
@@ -20,7 +26,9 @@ export function principalValue(segments: readonly Segment[], omega: number): num
 	let total = 0;
 	for (const segment of segments) {
 		const { from, to } = segment;
-		const panels = Math.max(1, Math.ceil(Math.log(to / from) / WIDEST_PANEL));
+		const widest =
+			segment.kind === 'power' ? Math.min(WIDEST_PANEL, 2 / Math.abs(segment.growth)) : WIDEST_PANEL;
+		const panels = Math.max(1, Math.ceil(Math.log(to / from) / widest));
 		const ratio = Math.pow(to / from, 1 / panels);
 		for (let j = 0; j < panels; j++) {
 			const a = j === 0 ? from : from * Math.pow(ratio, j);
@@ -32,7 +40,10 @@ export function principalValue(segments: readonly Segment[], omega: number): num
 }
 
 function panelValue(segment: Segment, a: number, b: number, omega: number): number {
-	const near = omega > a / 1.5 && omega < b * 1.5;
+	const outside = Math.log(Math.max(a / omega, omega / b, 1));
+	const near =
+		outside < Math.log(1.5) &&
+		(segment.kind === 'linear' || outside * Math.abs(segment.growth) < FARTHEST_CONTINUATION);
 	const w =
 		near && (Math.abs(omega / a - 1) < OFF_KNOT || Math.abs(omega / b - 1) < OFF_KNOT)
 			? omega * (1 + 2 * OFF_KNOT)
