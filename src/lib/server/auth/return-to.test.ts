@@ -10,6 +10,8 @@ describe('returnTo', () => {
 		null,
 		'',
 		'library',
+		'//',
+		'//:99999',
 		'//evil.example',
 		'/\\evil.example',
 		'https://evil.example',

@@ -2,5 +2,5 @@
 export function returnTo(text: string | null, otherwise = '/'): string {
 	if (!text || !text.startsWith('/') || /[\\\p{Cc}]/u.test(text)) return otherwise;
 	const here = 'http://here.invalid';
-	return new URL(text, here).origin === here ? text : otherwise;
+	return URL.canParse(text, here) && new URL(text, here).origin === here ? text : otherwise;
 }
