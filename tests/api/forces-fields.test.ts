@@ -133,8 +133,8 @@ describe('each field wrong in turn', () => {
 		expect(answer.status).toBe(422);
 		expect(error.issues).toEqual([
 			{
-				path: expect.stringContaining('arrangement.right.substrate'),
-				message: expect.stringContaining('colour')
+				path: 'arrangement.right.substrate.colour',
+				message: expect.stringContaining('not a field')
 			}
 		]);
 	});
