@@ -2,7 +2,7 @@ import { roundTripTime, type System } from '../system.ts';
 import type { FrequencyBlock } from './frequency-blocks.ts';
 import { frequencyTerms } from './frequency-terms.ts';
 import type { Level } from './level.ts';
-import type { Tally } from './tally.ts';
+import { newTally, valueOf, type Tally } from './tally.ts';
 
 /**
  * The error of an m-node Gauss rule over an octave: terms are analytic for Re xi > 0, so the coefficients c_j of a
@@ -46,21 +46,21 @@ export interface BlockSum {
 	last: Float64Array;
 	/** y0 at the first frequency of a block. */
 	startPhase(block: FrequencyBlock, separation: number): number;
-	/** Error estimates of the block just added. */
-	error: Float64Array;
+	/** Magnitudes that a block would add, into `out`; nothing is summed. */
+	look(block: FrequencyBlock, separation: number, out: Float64Array): void;
+	/** Values that a block would add, TE and TM together, into `out`. */
+	values(block: FrequencyBlock, separation: number, out: Float64Array): void;
 }
 
 /** Adds up blocks of frequencies of one system at one level. */
 export function blockSum(system: System, level: Level): BlockSum {
 	const { terms, at, phaseOf } = frequencyTerms(system, level);
 	const last = new Float64Array(3);
-	const error = new Float64Array(3);
 	const projected = new Float64Array(18);
 	const phases: [number, number] = [0, 0];
 	const add = (block: FrequencyBlock, separation: number, tally: Tally, extrapolate: boolean): void => {
 		const time = roundTripTime(separation);
 		last.fill(0);
-		error.fill(0);
 		projected.fill(0);
 		for (let i = 0; i < block.xi.length; i++) {
 			at(block, i, separation, time);
@@ -89,11 +89,19 @@ export function blockSum(system: System, level: Level): BlockSum {
 			tally.magnitude[q] += last[q];
 			if (block.exact) continue;
 			const size = lastCoefficients(projected, 6 * q) + lastCoefficients(projected, 6 * q + 3);
-			error[q] = extrapolate ? BLOCK_SAFETY * size * beyond : REMAINDER_SAFETY * size;
-			tally.blocks[q] += error[q];
+			tally.blocks[q] += extrapolate ? BLOCK_SAFETY * size * beyond : REMAINDER_SAFETY * size;
 		}
 	};
 	const startPhase = (block: FrequencyBlock, separation: number): number =>
 		phaseOf(block, 0, roundTripTime(separation));
-	return { add, startPhase, last, error };
+	const look = (block: FrequencyBlock, separation: number, out: Float64Array): void => {
+		add(block, separation, newTally(), true);
+		out.set(last);
+	};
+	const values = (block: FrequencyBlock, separation: number, out: Float64Array): void => {
+		const aside = newTally();
+		add(block, separation, aside, true);
+		for (let q = 0; q < 3; q++) out[q] = valueOf(aside, q);
+	};
+	return { add, startPhase, look, values, last };
 }

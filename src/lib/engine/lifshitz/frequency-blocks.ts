@@ -123,6 +123,11 @@ export function matsubaraBlocks(
 	};
 }
 
+/** One frequency that stands for a stretch of the axis: to see how large terms are there, not to be summed. */
+export function probeBlock(xi: number, weight: number): FrequencyBlock {
+	return block(ruleFor(1, 1), weight, () => xi, true);
+}
+
 /** At T = 0: blocks of the octave [2^k, 2^(k+1)) rad/s, and the block [0, 2^k) below it. */
 export interface ZeroTemperatureBlocks {
 	octave(k: number): FrequencyBlock[];

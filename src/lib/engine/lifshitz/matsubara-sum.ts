@@ -1,7 +1,8 @@
 import { roundTripTime, type System } from '../system.ts';
 import { blockSum } from './block-sum.ts';
-import { matsubaraBlocks } from './frequency-blocks.ts';
+import { matsubaraBlocks, probeBlock, type FrequencyBlock } from './frequency-blocks.ts';
 import type { Level } from './level.ts';
+import { matsubaraFrequency } from './matsubara.ts';
 import { LARGEST_PHASE, tailJudge } from './tail.ts';
 import type { Tally } from './tally.ts';
 
@@ -17,20 +18,34 @@ export function matsubaraSum(
 	const blockAt = matsubaraBlocks(level, system.temperature, system.knots);
 	const sum = blockSum(system, level);
 	const octave = new Float64Array(3);
+	const [first, second] = [new Float64Array(3), new Float64Array(3)];
+	const probes = new Map<number, FrequencyBlock>();
+	/** The term n, weighing as much as the octave that it begins. */
+	const probeAt = (n: number): FrequencyBlock => {
+		const known = probes.get(n) ?? probeBlock(matsubaraFrequency(n, system.temperature), n);
+		probes.set(n, known);
+		return known;
+	};
 	return (separation, accuracy, tally) => {
 		const time = roundTripTime(separation);
 		const judge = tailJudge();
 		octave.fill(0);
+		let next = 1;
 		let start = sum.startPhase(blockAt(0), separation);
 		for (let index = 0; blockAt(index).xi[0] * time < LARGEST_PHASE; index++) {
 			const block = blockAt(index);
 			sum.add(block, separation, tally, true);
 			for (let q = 0; q < 3; q++) octave[q] += sum.last[q];
 			if (!block.closesOctave) continue;
-			const next = sum.startPhase(blockAt(index + 1), separation);
-			judge.octave(octave, start, next);
+			next *= 2;
+			const following = sum.startPhase(blockAt(index + 1), separation);
+			judge.octave(octave, start, following);
 			octave.fill(0);
-			start = next;
+			start = following;
+			if (!judge.smallEnough(tally, accuracy)) continue;
+			sum.look(probeAt(next), separation, first);
+			sum.look(probeAt(2 * next), separation, second);
+			judge.probe(first, second);
 			if (!judge.smallEnough(tally, accuracy)) continue;
 			for (let q = 0; q < 3; q++) tally.tail[q] += judge.tail(q);
 			return;

@@ -10,7 +10,8 @@ export const LARGEST_PHASE = 745;
 /** Tails are judged by the fall of magnitude from octave to octave, never trusted to fall faster than this. */
 const FASTEST_FALL = 0.02;
 const SLOWEST_FALL = 0.9;
-const TAIL_SAFETY = 6;
+const TAIL_SAFETY = 4;
+const PROBE_SAFETY = 1.5;
 
 /** Judges what follows the octaves of frequencies summed so far. */
 export interface TailJudge {
@@ -24,19 +25,24 @@ export interface TailJudge {
 	tail(quantity: number): number;
 	/** Whether later octaves may be left out at the accuracy asked for. */
 	smallEnough(tally: Tally, accuracy: number): boolean;
+	/** Looks at the terms where the next two octaves begin, each as large as if all its octave were; raises the tail. */
+	probe(first: Float64Array, second: Float64Array): void;
 }
 
 /**
  * Magnitudes fall from octave to octave by a factor that itself falls: powers of xi steepen towards xi^-4 and
  * exponentials e^-y0 double their steps. Two things can hide a slower fall and are allowed for: a change of sign inside
- * the last octave, and a medium whose permittivity drops, so that y0 grows less than before.
+ * the last octave, and a medium whose permittivity drops, so that y0 grows less than before. Before a tail is believed,
+ * two terms inside it are looked at.
  */
 export function tailJudge(): TailJudge {
 	const sizes = [new Float64Array(3), new Float64Array(3), new Float64Array(3)];
 	const starts = [0, 0];
+	const probed = new Float64Array(3);
 	let next = 0;
 	let seen = 0;
-	const tail = (q: number): number => {
+	const tail = (q: number): number => Math.max(geometric(q), probed[q]);
+	const geometric = (q: number): number => {
 		const [now, before, earlier] = sizes.map((size) => size[q]);
 		if (now === 0 && before === 0) return seen >= 2 ? 0 : Infinity;
 		if (seen < 3) return Infinity;
@@ -52,9 +58,16 @@ export function tailJudge(): TailJudge {
 			starts[1] = starts[0];
 			starts[0] = start;
 			next = following;
+			probed.fill(0);
 			seen++;
 		},
 		tail,
+		probe(first, second) {
+			for (let q = 0; q < 3; q++) {
+				const fall = Math.min(SLOWEST_FALL, first[q] === 0 ? SLOWEST_FALL : second[q] / first[q]);
+				probed[q] = PROBE_SAFETY * (first[q] + second[q] / (1 - fall));
+			}
+		},
 		smallEnough: (tally, accuracy) =>
 			[0, 1, 2].every((q) => {
 				const wanted = TAIL_SHARE * accuracy * Math.abs(valueOf(tally, q));

@@ -1,7 +1,7 @@
 import { SPEED_OF_LIGHT } from '../constants.ts';
 import { roundTripTime, type System } from '../system.ts';
 import { blockSum } from './block-sum.ts';
-import { zeroTemperatureBlocks } from './frequency-blocks.ts';
+import { probeBlock, zeroTemperatureBlocks, type FrequencyBlock } from './frequency-blocks.ts';
 import type { Level } from './level.ts';
 import { LARGEST_PHASE, tailJudge } from './tail.ts';
 import { copyTally, restoreTally, UNIT_ROUNDOFF, valueOf, type Tally } from './tally.ts';
@@ -11,6 +11,9 @@ const MOST_OCTAVES = 60;
 
 /** A remainder next to xi = 0 is tried once the octave above it holds less than this many times the accuracy. */
 const REMAINDER_TRIAL = 1e5;
+
+/** A frequency this much below the lowest node stands for xi = 0. */
+const AS_GOOD_AS_ZERO = 2 ** -50;
 
 /** Error that the remainder may have, as a share of the accuracy asked for. */
 const REMAINDER_SHARE = 0.1;
@@ -28,6 +31,14 @@ export function zeroTemperatureIntegral(
 	const blocks = zeroTemperatureBlocks(level, system.knots);
 	const sum = blockSum(system, level);
 	const octave = new Float64Array(3);
+	const [first, second] = [new Float64Array(3), new Float64Array(3)];
+	const probes = new Map<string, FrequencyBlock>();
+	const probeAt = (xi: number, weight: number): FrequencyBlock => {
+		const key = `${xi}/${weight}`;
+		const known = probes.get(key) ?? probeBlock(xi, weight);
+		probes.set(key, known);
+		return known;
+	};
 	const addOctave = (k: number, separation: number, tally: Tally): void => {
 		octave.fill(0);
 		for (const block of blocks.octave(k)) {
@@ -40,6 +51,11 @@ export function zeroTemperatureIntegral(
 	const addRemainder = (k: number, separation: number, accuracy: number, tally: Tally): boolean => {
 		const before = copyTally(tally);
 		for (const block of blocks.below(k)) sum.add(block, separation, tally, false);
+		// Relaxations far below the lowest node would pass unseen: what xi = 0 differs by may fill all the way to it.
+		const lowest = blocks.below(k)[0].xi[0];
+		sum.values(probeAt(lowest, 2 * lowest), separation, first);
+		sum.values(probeAt(lowest * AS_GOOD_AS_ZERO, 2 * lowest), separation, second);
+		for (let q = 0; q < 3; q++) tally.blocks[q] += Math.abs(first[q] - second[q]);
 		const good = [0, 1, 2].every((q) => {
 			const error = tally.blocks[q] - before.blocks[q];
 			const wanted = REMAINDER_SHARE * accuracy * Math.abs(valueOf(tally, q));
@@ -58,6 +74,10 @@ export function zeroTemperatureIntegral(
 			const next = sum.startPhase(blocks.octave(k + 1)[0], separation);
 			judge.octave(octave, start, next);
 			start = next;
+			if (!judge.smallEnough(tally, accuracy)) continue;
+			sum.look(probeAt(2 ** (k + 1), 2 ** (k + 1)), separation, first);
+			sum.look(probeAt(2 ** (k + 2), 2 ** (k + 2)), separation, second);
+			judge.probe(first, second);
 			if (!judge.smallEnough(tally, accuracy)) continue;
 			for (let q = 0; q < 3; q++) tally.tail[q] += judge.tail(q);
 			return;
