@@ -99,12 +99,15 @@ export async function computeForces(
 	});
 	if (!response.ok || !response.body) throw await refusal(response);
 
+	// Read to the very end: a body left unread counts as broken off, here and on the server.
+	let end: StreamEnd | undefined;
 	for await (const text of linesOf(chunksOf(response.body))) {
 		const line = JSON.parse(text) as Line;
 		if (line.type === 'start') listener.start(line);
 		else if (line.type === 'points') listener.points(line.indices, line.points);
-		else if (line.type === 'end') return { ...line, receivedAt: new Date().toISOString() };
+		else if (line.type === 'end') end = { ...line, receivedAt: new Date().toISOString() };
 		else throw new ForcesRefused(line.error.code, line.error.message, line.error.issues);
 	}
+	if (end) return end;
 	throw new ForcesRefused('cut-off', 'The answer broke off before its end; what came so far is shown.');
 }
