@@ -34,7 +34,10 @@ function aServer() {
 		const body = new ReadableStream<Uint8Array>({ start: (controller) => void (inner = controller) });
 		signal.addEventListener('abort', () => inner.error(new Error('aborted')));
 		calls.push({
-			send: (line) => inner.enqueue(new TextEncoder().encode(`${line}\n`)),
+			send: (line) => {
+				inner.enqueue(new TextEncoder().encode(`${line}\n`));
+				if (line === END) inner.close();
+			},
 			close: () => inner.close(),
 			signal
 		});
