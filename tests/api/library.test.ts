@@ -21,7 +21,8 @@ async function ask(
 	headers: HeadersInit = {}
 ) {
 	const url = new URL(path, 'http://localhost:4173');
-	return handler({ request: new Request(url, { headers }), url, params } as never);
+	const locals = { principal: { kind: 'nobody' } };
+	return handler({ request: new Request(url, { headers }), url, params, locals } as never);
 }
 
 const VERSION = { slug: 'gold-johnson-christy', number: '1.0' };

@@ -1,4 +1,6 @@
 import { z } from 'zod';
+import { materialSlug } from './material.ts';
+import { line } from './plain-text.ts';
 import { versionSummary } from './version.ts';
 
 /** One line of permittivity data for one material. */
@@ -10,8 +12,8 @@ export const datasetSlug = z
 
 export const datasetFields = z.strictObject({
 	slug: datasetSlug,
-	title: z.string().min(1).max(200),
-	material: z.string()
+	title: line(200),
+	material: materialSlug
 });
 
 /** Versions newest first; `latest` is the number of the newest published one. */

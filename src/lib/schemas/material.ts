@@ -1,4 +1,5 @@
 import { z } from 'zod';
+import { line, lines } from './plain-text.ts';
 
 /** A substance or sample class of the library, and how its list is asked for. */
 
@@ -12,33 +13,33 @@ export const materialSlug = z
 /** GHS words; `caution` is always shown with them. */
 export const hazards = z
 	.object({
-		statements: z.array(z.object({ code: z.string(), text: z.string() })),
-		pictograms: z.array(z.object({ code: z.string(), name: z.string() })),
+		statements: z.array(z.object({ code: line(40), text: line(300) })).max(40),
+		pictograms: z.array(z.object({ code: line(40), name: line(120) })).max(20),
 		signalWord: z.enum(['Danger', 'Warning']).nullable(),
 		/** Where the statements come from and whether they were compared. */
-		status: z.string(),
+		status: line(500),
 		flashPointC: z.number().nullable(),
-		caution: z.string()
+		caution: line(500)
 	})
 	.meta({ id: 'Hazards' });
 
 export const materialFields = z.strictObject({
 	slug: materialSlug,
-	name: z.string().min(1).max(120),
-	formula: z.string().max(80).nullable(),
+	name: line(120),
+	formula: line(80).nullable().default(null),
 	class: materialClass,
 	densityGPerCm3: z.number().positive().nullable().default(null),
-	aliases: z.array(z.string().min(1).max(80)).max(40).default([]),
+	aliases: z.array(line(80)).max(40).default([]),
 	casNumber: z
 		.string()
 		.regex(/^\d{2,7}-\d{2}-\d$/)
 		.nullable()
 		.default(null),
 	staticPermittivity: z.number().min(1).nullable().default(null),
-	staticPermittivitySource: z.string().max(500).nullable().default(null),
+	staticPermittivitySource: line(500).nullable().default(null),
 	/** Measured index at the sodium D line. */
 	refractiveIndexD: z.number().positive().nullable().default(null),
-	notes: z.string().max(4000).nullable().default(null),
+	notes: lines(4000).nullable().default(null),
 	hazards: hazards.nullable().default(null)
 });
 

@@ -1,6 +1,7 @@
 import { z } from 'zod';
 import { permittivityModel } from './permittivity.ts';
 import { hazards, materialClass } from './material.ts';
+import { line } from './plain-text.ts';
 import { source } from './source.ts';
 
 /** A numbered, immutable state of a dataset, as it leaves the services. */
@@ -32,13 +33,13 @@ export const checkResult = z
 
 export const sample = z
 	.object({
-		form: z.string().nullable().default(null),
-		preparation: z.string().nullable().default(null),
+		form: line(60).nullable().default(null),
+		preparation: line(500).nullable().default(null),
 		thicknessNm: z.number().positive().nullable().default(null),
-		substrate: z.string().nullable().default(null),
-		annealing: z.string().nullable().default(null),
+		substrate: line(200).nullable().default(null),
+		annealing: line(200).nullable().default(null),
 		roughnessNm: z.number().nonnegative().nullable().default(null),
-		method: z.string().nullable().default(null),
+		method: line(300).nullable().default(null),
 		temperatureK: z.number().positive().nullable().default(null),
 		compiled: z.boolean().nullable().default(null)
 	})

@@ -82,13 +82,20 @@ export const POLICY: Readonly<Record<string, Row>> = {
 	'/api/v1/forces': { POST: 'computing' },
 	'/api/v1/health': open,
 	'/api/v1/openapi.json': open,
-	'/api/v1/materials': readable,
+	'/api/v1/materials': { GET: 'readers', POST: 'uploaders' },
+	'/api/v1/sources': { POST: 'uploaders' },
+	'/api/v1/datasets': { POST: 'uploaders' },
+	'/api/v1/datasets/[slug]/versions': { POST: 'uploaders' },
 	'/api/v1/materials/[slug]': readable,
 	'/api/v1/datasets/[slug]/versions/[number]': readable,
 	'/api/v1/datasets/[slug]/versions/[number]/model.json': readable,
 	'/api/v1/datasets/[slug]/versions/[number]/table.csv': readable,
 	'/api/v1/datasets/[slug]/versions/[number]/raw': readable,
-	'/api/v1/datasets/[slug]/versions/[number]/citation.bib': readable
+	'/api/v1/datasets/[slug]/versions/[number]/citation.bib': readable,
+	'/api/v1/datasets/[slug]/versions/[number]/submit': { POST: 'uploaders' },
+	'/api/v1/datasets/[slug]/versions/[number]/approve': { POST: 'reviewers' },
+	'/api/v1/datasets/[slug]/versions/[number]/return': { POST: 'reviewers' },
+	'/api/v1/datasets/[slug]/versions/[number]/withdraw': { POST: 'reviewers' }
 };
 
 /** `/(library)/materials/[slug]` as `/materials/[slug]`: groups order files, not rights. */

@@ -1,4 +1,4 @@
-import { eq } from 'drizzle-orm';
+import { eq, sql } from 'drizzle-orm';
 import type { DatasetFields } from '../../schemas/dataset.ts';
 import type { MaterialFields } from '../../schemas/material.ts';
 import type { SourceFields } from '../../schemas/source.ts';
@@ -24,6 +24,36 @@ const sourceRow = (fields: SourceFields) => ({
 	...fields,
 	searchText: searchable(fields.title, fields.container, fields.doi, String(fields.year), ...fields.authors)
 });
+
+/**
+ * Makes what must not be there yet: somebody who thinks of another thing under the same slug is told, not obeyed.
+ *
+ * @throws Conflict where the slug is taken
+ */
+export async function createMaterial(tx: Transaction, fields: MaterialFields, actor: string): Promise<void> {
+	await requireFree(tx, 'material', fields.slug);
+	await keepMaterial(tx, fields, actor);
+}
+
+export async function createSource(tx: Transaction, fields: SourceFields, actor: string): Promise<void> {
+	await requireFree(tx, 'source', fields.slug);
+	await keepSource(tx, fields, actor);
+}
+
+export async function createDataset(tx: Transaction, fields: DatasetFields, actor: string): Promise<void> {
+	await requireFree(tx, 'dataset', fields.slug);
+	await keepDataset(tx, fields, actor);
+}
+
+const TABLES = { material, source, dataset };
+
+async function requireFree(tx: Transaction, what: keyof typeof TABLES, slug: string): Promise<void> {
+	// Two at once: the second waits here and then finds the first.
+	await tx.execute(sql`select pg_advisory_xact_lock(hashtext(${`${what}/${slug}`}))`);
+	const table = TABLES[what];
+	const [found] = await tx.select({ id: table.id }).from(table).where(eq(table.slug, slug));
+	if (found) throw new Conflict(`There is a ${what} "${slug}" already. Use it, or choose another slug.`);
+}
 
 /** Makes a material, or brings the one of this slug to these fields. */
 export async function keepMaterial(tx: Transaction, fields: MaterialFields, actor: string): Promise<string> {

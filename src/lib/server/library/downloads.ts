@@ -3,6 +3,7 @@ import { database, type Executor } from '../db/client.ts';
 import { NotFound } from '../errors.ts';
 import { sourceText, versionPath } from './citation.ts';
 import { givenTable } from './versions.ts';
+import type { Viewer } from './viewer.ts';
 
 /** Files that leave the library. Numbers are written so that they read back to the same bits. */
 
@@ -32,14 +33,18 @@ const commented = (text: string): string => `# ${text.replace(/\s+/g, ' ').trim(
 export async function tableCsv(
 	version: VersionDetail,
 	origin = '',
-	executor: Executor = database()
+	executor: Executor = database(),
+	viewer: Viewer | null = null
 ): Promise<string> {
-	const table = await givenTable(version.dataset.slug, version.number, executor);
+	const table = await givenTable(version.dataset.slug, version.number, executor, viewer);
 	if (!table)
 		throw new NotFound('This version is a closed form and has no rows. Its model is in model.json.');
-	const names = [table.columns.abscissaUnit, ...table.columns.quantities].map(
-		(name) => HEADINGS[name] ?? [name, '1']
-	);
+	const names: [string, string][] = [
+		...[table.columns.abscissaUnit, ...table.columns.quantities].map(
+			(name): [string, string] => HEADINGS[name] ?? [name, '1']
+		),
+		...table.uncertainties.map(({ quantity }): [string, string] => [`uncertainty of ${quantity}`, '1'])
+	];
 	const provenance = [
 		`${version.material.name}: ${version.dataset.title}, version ${version.number}`,
 		`${version.ref}, ${origin}${versionPath(version)}`,
@@ -49,7 +54,8 @@ export async function tableCsv(
 	];
 	const rows = table.abscissa.map((abscissa, index) => [
 		abscissa,
-		...table.ordinates.map((column) => column[index])
+		...table.ordinates.map((column) => column[index]),
+		...table.uncertainties.map(({ values }) => values[index])
 	]);
 	return [
 		...provenance.map(commented),

@@ -1,9 +1,10 @@
-import { eq, inArray, sql } from 'drizzle-orm';
+import { and, eq, inArray, max, ne, type SQL } from 'drizzle-orm';
 import { runChecks } from '../../engine/checks/all-checks.ts';
 import type { CheckOutcome, CheckSubject } from '../../engine/checks/check.ts';
 import { staticPermittivity } from '../../engine/checks/static-permittivity.ts';
 import type { PermittivityModel } from '../../engine/contract.ts';
 import { Refusal } from '../../engine/refusal.ts';
+import { datasetSlug } from '../../schemas/dataset.ts';
 import type { ModelDescription, TableDescription } from '../../schemas/upload.ts';
 import { appendAudit } from '../audit/append.ts';
 import type { Transaction } from '../db/client.ts';
@@ -16,6 +17,7 @@ import { fingerprint } from './fingerprint.ts';
 import { decode } from './upload/decode.ts';
 import { mapColumns, type MappedTable } from './upload/map-columns.ts';
 import { parseSheet } from './upload/parse.ts';
+import { PUBLIC_STATES } from './viewer.ts';
 
 /** Making a draft, from a file or from a closed form: read, checked and sourced before anything is stored. */
 
@@ -38,13 +40,15 @@ interface Content {
 	description: ModelDescription;
 }
 
-interface Place {
+/** Where a draft goes. A number is given by the seed only; others follow from what has changed. */
+export interface Place {
 	datasetSlug: string;
-	/** Left out: the next major number of the dataset. */
 	number?: { major: number; minor: number };
 	actor: string;
 	/** Code of a warning to the reason why it stands. */
 	answers?: Record<string, string>;
+	/** The draft whose content this takes the place of. */
+	replaces?: string;
 }
 
 /** @throws RefusedFile for a file that is not taken, with the lines; InvalidInput for a description that does not fit */
@@ -72,45 +76,20 @@ async function store(tx: Transaction, place: Place, content: Content): Promise<D
 	const { model, table, raw, description } = content;
 	const home = await findDataset(tx, place.datasetSlug);
 	const sourceIds = await findSources(tx, description.source);
-	const parentId = description.parent ? await findVersion(tx, home.id, description.parent) : null;
-	const number = place.number ?? (await nextMajor(tx, home.id));
+	const parent = description.parent ? await findParent(tx, home.id, description.parent) : null;
 
 	const checks = checkModel({ model, rows: table?.rows ?? null, material: home.material });
-	const atRest = staticPermittivity(model);
-	const measured = table?.measuredRangeEv ?? description.measuredRangeEv;
-	const checksum = sha256(canonicalJson(model));
-	const [{ id }] = await tx
-		.insert(version)
-		.values({
-			datasetId: home.id,
-			...number,
-			quality: description.quality,
-			qualityReason: description.qualityReason,
-			kind: table ? 'table' : 'model',
-			model,
-			checksum,
-			fingerprint: fingerprint(model, table?.rows?.epsilon1 ?? null),
-			conducts: atRest === null,
-			staticPermittivity: atRest,
-			measuredLowEv: measured?.low ?? null,
-			measuredHighEv: measured?.high ?? null,
-			validLowEv: description.validRangeEv?.low ?? null,
-			validHighEv: description.validRangeEv?.high ?? null,
-			temperatureK: description.sample?.temperatureK ?? null,
-			sample: description.sample,
-			note: description.note,
-			parentId,
-			givenColumns: table && { abscissaUnit: table.given.abscissaUnit, quantities: table.given.quantities },
-			givenAbscissa: table?.given.abscissa ?? null,
-			givenFirst: table?.given.ordinates[0] ?? null,
-			givenSecond: table?.given.ordinates[1] ?? null,
-			epsilon1: table?.rows?.epsilon1 ?? null,
-			raw: raw?.bytes ?? null,
-			rawName: raw?.name ?? null,
-			rawSha256: raw ? sha256(raw.bytes) : null,
-			createdBy: place.actor
-		})
-		.returning({ id: version.id });
+	const row = contentRow(content);
+	const number = place.number ?? (await nextNumber(tx, home.id, parent, row, place.replaces));
+	const id = place.replaces
+		? await rewrite(tx, place.replaces, { ...row, ...number, parentId: parent?.id ?? null })
+		: await insert(tx, {
+				...row,
+				...number,
+				datasetId: home.id,
+				parentId: parent?.id ?? null,
+				createdBy: place.actor
+			});
 
 	await tx
 		.insert(versionSource)
@@ -125,31 +104,103 @@ async function store(tx: Transaction, place: Place, content: Content): Promise<D
 	);
 	await appendAudit(tx, {
 		actor: place.actor,
-		action: 'version.create',
+		action: place.replaces ? 'version.rewrite' : 'version.create',
 		objectType: 'version',
 		objectId: id,
 		toState: 'draft',
-		details: { dataset: place.datasetSlug, number: `${number.major}.${number.minor}`, checksum }
+		details: {
+			dataset: place.datasetSlug,
+			number: `${number.major}.${number.minor}`,
+			checksum: row.checksum
+		}
 	});
-	return { id, number: `${number.major}.${number.minor}`, checksum, checks };
+	return { id, number: `${number.major}.${number.minor}`, checksum: row.checksum, checks };
+}
+
+/** What is told where nobody has compared the figures yet. */
+const NOT_COMPARED = 'The figures have not been compared with their source by a second person.';
+
+function contentRow({ model, table, raw, description }: Content) {
+	const atRest = staticPermittivity(model);
+	const measured = table?.measuredRangeEv ?? description.measuredRangeEv;
+	const isProvisional = description.quality === 'provisional';
+	return {
+		quality: description.quality,
+		qualityReason: description.qualityReason ?? (isProvisional ? NOT_COMPARED : null),
+		kind: table ? ('table' as const) : ('model' as const),
+		model,
+		checksum: sha256(canonicalJson(model)),
+		fingerprint: fingerprint(model, table?.rows?.epsilon1 ?? null),
+		conducts: atRest === null,
+		staticPermittivity: atRest,
+		measuredLowEv: measured?.low ?? null,
+		measuredHighEv: measured?.high ?? null,
+		validLowEv: description.validRangeEv?.low ?? null,
+		validHighEv: description.validRangeEv?.high ?? null,
+		temperatureK: description.sample?.temperatureK ?? null,
+		sample: description.sample,
+		note: description.note,
+		givenColumns: table && {
+			abscissaUnit: table.given.abscissaUnit,
+			quantities: table.given.quantities
+		},
+		givenAbscissa: table?.given.abscissa ?? null,
+		givenFirst: table?.given.ordinates[0] ?? null,
+		givenSecond: table?.given.ordinates[1] ?? null,
+		givenUncertainties: table && table.uncertainties.length > 0 ? table.uncertainties : null,
+		epsilon1: table?.rows?.epsilon1 ?? null,
+		raw: raw?.bytes ?? null,
+		rawName: raw?.name ?? null,
+		rawSha256: raw ? sha256(raw.bytes) : null
+	};
+}
+
+type ContentRow = ReturnType<typeof contentRow>;
+type Written = ContentRow & { major: number; minor: number; parentId: string | null };
+
+async function insert(
+	tx: Transaction,
+	row: Written & { datasetId: string; createdBy: string }
+): Promise<string> {
+	const [{ id }] = await tx.insert(version).values(row).returning({ id: version.id });
+	return id;
+}
+
+/** Only a draft: the database refuses to change anything that has left that state. */
+async function rewrite(tx: Transaction, id: string, row: Written): Promise<string> {
+	await tx.delete(versionSource).where(eq(versionSource.versionId, id));
+	await tx.delete(checkResult).where(eq(checkResult.versionId, id));
+	await tx.update(version).set(row).where(eq(version.id, id));
+	return id;
 }
 
 /** What the engine would refuse to compute is refused here already, in the caller's terms. */
 function checkModel(subject: CheckSubject): CheckOutcome[] {
 	try {
-		return runChecks(subject);
+		return runChecks(subject).map(finite);
 	} catch (error) {
 		if (!(error instanceof Refusal)) throw error;
 		throw new InvalidInput('The engine cannot compute with this model.', error.issues);
 	}
 }
 
+/** A figure that ran out of the range of numbers is not one: its sentence says what happened. */
+function finite(check: CheckOutcome): CheckOutcome {
+	const figure = check.figure !== null && Number.isFinite(check.figure) ? check.figure : null;
+	return { ...check, figure };
+}
+
+/** Locked until the draft is there, so that two at once do not take the same number. */
 async function findDataset(tx: Transaction, slug: string) {
-	const [found] = await tx
-		.select({ id: dataset.id, material })
-		.from(dataset)
-		.innerJoin(material, eq(dataset.materialId, material.id))
-		.where(eq(dataset.slug, slug));
+	const parsed = datasetSlug.safeParse(slug);
+	const [found] = parsed.success
+		? await tx
+				.select({ id: dataset.id, material })
+				.from(dataset)
+				.innerJoin(material, eq(dataset.materialId, material.id))
+				.where(eq(dataset.slug, slug))
+				.for('update', { of: dataset })
+		: [];
 	if (!found) throw new NotFound(`There is no dataset "${slug}". Make it first.`);
 	return found;
 }
@@ -170,24 +221,74 @@ async function findSources(tx: Transaction, slugs: string | string[]): Promise<s
 	return wanted.map((slug) => ids.get(slug) ?? '');
 }
 
-async function findVersion(tx: Transaction, datasetId: string, number: string): Promise<string> {
+interface Parent {
+	id: string;
+	major: number;
+	kind: string;
+	checksum: string;
+	givenAbscissa: number[] | null;
+	givenFirst: number[] | null;
+	givenSecond: number[] | null;
+	givenUncertainties: unknown;
+}
+
+/** A new version may start from any that was published, also one that was withdrawn since. */
+async function findParent(tx: Transaction, datasetId: string, number: string): Promise<Parent> {
 	const [major, minor] = number.split('.').map(Number);
 	const [found] = await tx
-		.select({ id: version.id })
+		.select({
+			id: version.id,
+			major: version.major,
+			kind: version.kind,
+			checksum: version.checksum,
+			givenAbscissa: version.givenAbscissa,
+			givenFirst: version.givenFirst,
+			givenSecond: version.givenSecond,
+			givenUncertainties: version.givenUncertainties
+		})
 		.from(version)
 		.where(
-			sql`${version.datasetId} = ${datasetId} and ${version.major} = ${major} and ${version.minor} = ${minor}`
+			and(
+				eq(version.datasetId, datasetId),
+				eq(version.major, major),
+				eq(version.minor, minor),
+				inArray(version.state, PUBLIC_STATES)
+			)
 		);
-	if (found) return found.id;
+	if (found) return found;
 	throw new InvalidInput('The parent is not a version of this dataset.', [
-		{ path: 'description.parent', message: `there is no version ${number} of it` }
+		{ path: 'description.parent', message: `there is no published version ${number} of it` }
 	]);
 }
 
-async function nextMajor(tx: Transaction, datasetId: string): Promise<{ major: number; minor: number }> {
-	const [{ highest }] = await tx
-		.select({ highest: sql<number | null>`max(${version.major})` })
-		.from(version)
-		.where(eq(version.datasetId, datasetId));
-	return { major: (highest ?? 0) + 1, minor: 0 };
+/** The same numbers under another description are a minor step; any other number is a major one. */
+function isSame(row: ContentRow, parent: Parent): boolean {
+	const numbers = ({ kind, checksum, givenAbscissa, givenFirst, givenSecond, givenUncertainties }: Numbers) =>
+		canonicalJson([kind, checksum, givenAbscissa, givenFirst, givenSecond, givenUncertainties]);
+	return numbers(row) === numbers(parent);
+}
+
+type Numbers = Omit<Parent, 'id' | 'major'>;
+
+async function nextNumber(
+	tx: Transaction,
+	datasetId: string,
+	parent: Parent | null,
+	row: ContentRow,
+	replaced: string | undefined
+): Promise<{ major: number; minor: number }> {
+	const others = and(
+		eq(version.datasetId, datasetId),
+		replaced === undefined ? undefined : ne(version.id, replaced)
+	);
+	const highest = async (column: typeof version.major | typeof version.minor, where: SQL | undefined) => {
+		const [{ top }] = await tx
+			.select({ top: max(column) })
+			.from(version)
+			.where(where);
+		return top ?? 0;
+	};
+	if (!parent || !isSame(row, parent)) return { major: (await highest(version.major, others)) + 1, minor: 0 };
+	const { major } = parent;
+	return { major, minor: (await highest(version.minor, and(others, eq(version.major, major)))) + 1 };
 }

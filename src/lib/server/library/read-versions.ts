@@ -1,4 +1,5 @@
 import { and, asc, desc, eq, inArray, sql, type SQL } from 'drizzle-orm';
+import type { AnyPgColumn } from 'drizzle-orm/pg-core';
 import type { Source } from '../../schemas/source.ts';
 import type { VersionSummary } from '../../schemas/version.ts';
 import type { Executor } from '../db/client.ts';
@@ -6,11 +7,15 @@ import { dataset, version, versionSource } from '../db/schema/dataset.ts';
 import { material } from '../db/schema/material.ts';
 import { source } from '../db/schema/source.ts';
 import { shortCitation } from './citation.ts';
+import { visibleTo, type Viewer } from './viewer.ts';
 
 /** Versions with their dataset, material and sources, in a fixed number of queries however many are asked for. */
 
-/** What anybody may see. Withdrawn versions keep their address and say why. */
-export const PUBLIC_STATES = ['published', 'withdrawn'] as const;
+/** Accounts act by their number and are shown by their name, which a deleted one keeps. */
+export const nameOf = (actor: AnyPgColumn) => sql<string | null>`case
+	when ${actor} ~ '^[0-9a-f]{8}-[0-9a-f-]{27}$'
+	then coalesce((select person.name from person where person.id = ${actor}::uuid), ${actor})
+	else ${actor} end`;
 
 const SUMMARY = {
 	id: version.id,
@@ -32,7 +37,7 @@ const SUMMARY = {
 	fingerprint: version.fingerprint,
 	note: version.note,
 	publishedAt: version.publishedAt,
-	publishedBy: version.publishedBy,
+	publishedBy: nameOf(version.publishedBy),
 	datasetSlug: dataset.slug,
 	datasetTitle: dataset.title,
 	materialSlug: material.slug,
@@ -49,13 +54,13 @@ const SUMMARY = {
 };
 
 /** Newest first within each dataset. */
-export function selectVersions(executor: Executor, where: SQL | undefined) {
+export function selectVersions(executor: Executor, where: SQL | undefined, viewer: Viewer | null = null) {
 	return executor
 		.select(SUMMARY)
 		.from(version)
 		.innerJoin(dataset, eq(version.datasetId, dataset.id))
 		.innerJoin(material, eq(dataset.materialId, material.id))
-		.where(and(inArray(version.state, PUBLIC_STATES), where))
+		.where(and(visibleTo(viewer), where))
 		.orderBy(asc(dataset.slug), desc(version.major), desc(version.minor));
 }
 

@@ -4,26 +4,35 @@ import type { ResolvedVersion, VersionDetail } from '../../schemas/version.ts';
 import { database, type Executor } from '../db/client.ts';
 import { checkResult, dataset, version } from '../db/schema/dataset.ts';
 import { NotFound } from '../errors.ts';
-import { PUBLIC_STATES, selectVersions, sourcesOf, toSummary, type VersionRow } from './read-versions.ts';
+import { nameOf, selectVersions, sourcesOf, toSummary, type VersionRow } from './read-versions.ts';
+import { PUBLIC_STATES, type Viewer } from './viewer.ts';
 
-/** Reading published versions; withdrawn ones keep their address. */
+/** Reading versions: published ones, and for a viewer also what has not been published yet. Withdrawn ones keep their address. */
 
 const NUMBER = /^(\d{1,6})\.(\d{1,6})$/;
 
+/** Anything else names nothing, and some of it the database would choke on. */
+const SLUG = /^[a-z0-9]+(-[a-z0-9]+)*$/;
+
 export const refOf = (slug: string, number: string): string => `${slug}@${number}`;
 
-function partsOf(ref: string): { slug: string; major: number; minor: number } | null {
+export function partsOf(ref: string): { slug: string; major: number; minor: number } | null {
 	const [slug, number] = ref.split('@');
 	const match = NUMBER.exec(number ?? '');
-	return match ? { slug, major: Number(match[1]), minor: Number(match[2]) } : null;
+	return match && SLUG.test(slug) ? { slug, major: Number(match[1]), minor: Number(match[2]) } : null;
 }
 
 const matches = ({ slug, major, minor }: { slug: string; major: number; minor: number }) =>
 	and(eq(dataset.slug, slug), eq(version.major, major), eq(version.minor, minor));
 
-async function findRow(executor: Executor, slug: string, number: string): Promise<VersionRow> {
+async function findRow(
+	executor: Executor,
+	slug: string,
+	number: string,
+	viewer: Viewer | null
+): Promise<VersionRow> {
 	const parts = partsOf(refOf(slug, number));
-	const [row] = parts ? await selectVersions(executor, matches(parts)) : [];
+	const [row] = parts ? await selectVersions(executor, matches(parts), viewer) : [];
 	if (!row) throw new NotFound(`There is no version ${number} of a dataset "${slug}".`);
 	return row;
 }
@@ -32,9 +41,10 @@ async function findRow(executor: Executor, slug: string, number: string): Promis
 export async function get(
 	slug: string,
 	number: string,
-	executor: Executor = database()
+	executor: Executor = database(),
+	viewer: Viewer | null = null
 ): Promise<VersionDetail> {
-	const row = await findRow(executor, slug, number);
+	const row = await findRow(executor, slug, number, viewer);
 	const sources = await sourcesOf(executor, [row.id]);
 	const checks = await executor
 		.select()
@@ -48,7 +58,7 @@ export async function get(
 			parentId: version.parentId,
 			createdAt: version.createdAt,
 			withdrawnAt: version.withdrawnAt,
-			withdrawnBy: version.withdrawnBy,
+			withdrawnBy: nameOf(version.withdrawnBy),
 			withdrawnReason: version.withdrawnReason,
 			givenColumns: version.givenColumns,
 			rowCount: sql<number>`coalesce(cardinality(${version.givenAbscissa}), 0)`,
@@ -130,14 +140,15 @@ export const RESOLVE_MAX = 200;
 /** What a computation needs of each pinned version. Refs that name nothing are missing from the answer. */
 export async function resolve(
 	refs: readonly string[],
-	executor: Executor = database()
+	executor: Executor = database(),
+	viewer: Viewer | null = null
 ): Promise<Map<string, ResolvedVersion>> {
 	const wanted = [...new Set(refs)]
 		.slice(0, RESOLVE_MAX)
 		.map(partsOf)
 		.filter((parts) => parts !== null);
 	if (wanted.length === 0) return new Map();
-	const rows = await selectVersions(executor, or(...wanted.map(matches)));
+	const rows = await selectVersions(executor, or(...wanted.map(matches)), viewer);
 	const ids = rows.map(({ id }) => id);
 	const sources = await sourcesOf(executor, ids);
 	const models = await modelsOf(executor, ids);
@@ -178,22 +189,25 @@ export interface GivenTable {
 	abscissa: number[];
 	ordinates: number[][];
 	epsilon1: number[] | null;
+	uncertainties: { quantity: string; values: number[] }[];
 }
 
 /** Rows as given; null for a closed form. */
 export async function givenTable(
 	slug: string,
 	number: string,
-	executor: Executor = database()
+	executor: Executor = database(),
+	viewer: Viewer | null = null
 ): Promise<GivenTable | null> {
-	const { id } = await findRow(executor, slug, number);
+	const { id } = await findRow(executor, slug, number, viewer);
 	const [row] = await executor
 		.select({
 			columns: version.givenColumns,
 			abscissa: version.givenAbscissa,
 			first: version.givenFirst,
 			second: version.givenSecond,
-			epsilon1: version.epsilon1
+			epsilon1: version.epsilon1,
+			uncertainties: version.givenUncertainties
 		})
 		.from(version)
 		.where(eq(version.id, id));
@@ -202,7 +216,8 @@ export async function givenTable(
 		columns: row.columns,
 		abscissa: row.abscissa,
 		ordinates: row.second ? [row.first, row.second] : [row.first],
-		epsilon1: row.epsilon1
+		epsilon1: row.epsilon1,
+		uncertainties: row.uncertainties ?? []
 	};
 }
 
@@ -210,9 +225,10 @@ export async function givenTable(
 export async function rawFile(
 	slug: string,
 	number: string,
-	executor: Executor = database()
+	executor: Executor = database(),
+	viewer: Viewer | null = null
 ): Promise<{ name: string; bytes: Buffer; sha256: string }> {
-	const { id } = await findRow(executor, slug, number);
+	const { id } = await findRow(executor, slug, number, viewer);
 	const [row] = await executor
 		.select({ name: version.rawName, bytes: version.raw, sha256: version.rawSha256 })
 		.from(version)

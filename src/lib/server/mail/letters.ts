@@ -1,9 +1,12 @@
 import { z } from 'zod';
 import type { Role } from '../../schemas/person.ts';
+import { isReviewLetter, writeReviewLetter, type ReviewLetter } from './review-letters.ts';
 
 /** What each mail says: paragraphs, and at most one link that its reader should follow. */
 
-export type Letter =
+export type Letter = AccountLetter | ReviewLetter;
+
+type AccountLetter =
 	| { kind: 'sign-in-link' }
 	| { kind: 'invitation'; inviter: string; role: Role; group: string | null; days: number }
 	| { kind: 'role-changed'; role: Role }
@@ -33,10 +36,11 @@ const shapes = {
 	'institution-linked': z.object({ institution: z.string() }),
 	'account-removed': z.object({}),
 	'account-deleted': z.object({})
-} satisfies Record<Letter['kind'], z.ZodType>;
+} satisfies Record<AccountLetter['kind'], z.ZodType>;
 
 /** @throws Error for a kind that this version of the application does not know */
 export function write(kind: string, data: unknown, origin: string, secretLink: string | null): Written {
+	if (isReviewLetter(kind)) return writeReviewLetter(kind, data, origin);
 	switch (kind) {
 		case 'sign-in-link':
 			return {

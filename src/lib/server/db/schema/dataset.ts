@@ -32,10 +32,17 @@ export const dataset = pgTable(
 		materialId: uuid()
 			.notNull()
 			.references(() => material.id, { onDelete: 'restrict' }),
+		/** What a curator recommends, which need not be the newest; null: no choice was stated. */
+		recommendedMajor: integer(),
+		recommendedMinor: integer(),
 		createdAt: instant().notNull().defaultNow()
 	},
 	(table) => [
 		unique('dataset_slug_key').on(table.slug),
+		check(
+			'dataset_recommended_whole',
+			sql`num_nonnulls(${table.recommendedMajor}, ${table.recommendedMinor}) in (0, 2)`
+		),
 		check('dataset_slug_form', isSlug(table.slug)),
 		index('dataset_material_index').on(table.materialId, table.slug)
 	]
@@ -45,6 +52,12 @@ export const dataset = pgTable(
 export interface GivenColumns {
 	abscissaUnit: string;
 	quantities: string[];
+}
+
+/** Stated uncertainties of a column, row by row as the numbers themselves. */
+export interface GivenUncertainty {
+	quantity: string;
+	values: number[];
 }
 
 export const version = pgTable(
@@ -81,6 +94,7 @@ export const version = pgTable(
 		givenAbscissa: doublePrecision().array(),
 		givenFirst: doublePrecision().array(),
 		givenSecond: doublePrecision().array(),
+		givenUncertainties: jsonb().$type<GivenUncertainty[]>(),
 		/** eps' over the energies of the model, where the table had it. */
 		epsilon1: doublePrecision().array(),
 		raw: bytes(),
@@ -145,6 +159,10 @@ export const version = pgTable(
 		check(
 			'version_published_by_another',
 			sql`${table.publishedBy} is null or ${table.publishedBy} = 'installation' or ${table.publishedBy} <> ${table.submittedBy}`
+		),
+		check(
+			'version_published_by_another_than_made',
+			sql`${table.publishedBy} is null or ${table.publishedBy} = 'installation' or ${table.publishedBy} <> ${table.createdBy}`
 		),
 		check(
 			'version_published_fields',

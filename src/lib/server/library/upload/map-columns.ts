@@ -1,5 +1,5 @@
 import type { PermittivityModel } from '../../../engine/contract.ts';
-import type { Quantity, TableReading } from '../../../schemas/upload.ts';
+import type { Ordinate, Quantity, TableReading } from '../../../schemas/upload.ts';
 import { InvalidInput } from '../../errors.ts';
 import { readNumber } from './number.ts';
 import type { Sheet } from './parse.ts';
@@ -11,6 +11,8 @@ export interface MappedTable {
 	model: PermittivityModel;
 	/** In the order of the file. */
 	given: { abscissaUnit: string; quantities: Quantity[]; abscissa: number[]; ordinates: number[][] };
+	/** Stated uncertainties, row by row as given; empty where the file has none. */
+	uncertainties: { quantity: Quantity; values: number[] }[];
 	/** Over ascending photon energies; eps' only where the table has it. */
 	rows: { energiesEv: number[]; epsilon1: number[] | null; epsilon2: number[] } | null;
 	measuredRangeEv: { low: number; high: number };
@@ -20,14 +22,32 @@ interface Row {
 	line: number;
 	abscissa: number;
 	ordinates: number[];
+	uncertainties: number[];
+}
+
+interface ValueColumn {
+	column: number;
+	quantity: Quantity;
+}
+
+interface UncertaintyColumn {
+	column: number;
+	of: Quantity;
+}
+
+interface Columns {
+	abscissa: number;
+	values: ValueColumn[];
+	uncertain: UncertaintyColumn[];
 }
 
 type MapReading = Pick<TableReading, 'abscissa' | 'ordinates' | 'duplicates' | 'lowEnd' | 'highEnd'>;
 
 export function mapColumns(sheet: Sheet, reading: MapReading): MappedTable {
-	const quantities = reading.ordinates.map(({ quantity }) => quantity);
+	const columns = columnsOf(reading);
+	const quantities = columns.values.map(({ quantity }) => quantity);
 	checkQuantities(quantities);
-	const rows = checkOrder(readRows(sheet, reading), reading.duplicates);
+	const rows = checkOrder(readRows(sheet, columns), reading.duplicates);
 	const { unit } = reading.abscissa;
 	const energyOf = PHOTON_ENERGY_EV[unit];
 	const ascending =
@@ -39,6 +59,10 @@ export function mapColumns(sheet: Sheet, reading: MapReading): MappedTable {
 		abscissa: rows.map((row) => row.abscissa),
 		ordinates: quantities.map((_, index) => rows.map((row) => row.ordinates[index]))
 	};
+	const uncertainties = columns.uncertain.map(({ of }, index) => ({
+		quantity: of,
+		values: rows.map((row) => row.uncertainties[index])
+	}));
 	const measuredRangeEv = { low: energiesEv[0], high: energiesEv[energiesEv.length - 1] };
 
 	if (quantities[0] === 'epsilonImaginary') {
@@ -47,6 +71,7 @@ export function mapColumns(sheet: Sheet, reading: MapReading): MappedTable {
 		return {
 			model: { kind: 'imaginaryTable', frequenciesRadPerS, epsilon },
 			given,
+			uncertainties,
 			rows: null,
 			measuredRangeEv
 		};
@@ -60,6 +85,7 @@ export function mapColumns(sheet: Sheet, reading: MapReading): MappedTable {
 	return {
 		model: { kind: 'table', energiesEv, epsilon2, lowEnd, highEnd },
 		given,
+		uncertainties,
 		rows: { energiesEv, epsilon1, epsilon2 },
 		measuredRangeEv
 	};
@@ -98,16 +124,51 @@ function checkQuantities(quantities: Quantity[]): void {
 	]);
 }
 
-function readRows(sheet: Sheet, reading: MapReading): Row[] {
-	const columns = [reading.abscissa.column, ...reading.ordinates.map(({ column }) => column)];
-	if (new Set(columns).size < columns.length) {
+function columnsOf({ abscissa, ordinates }: MapReading): Columns {
+	const used = [abscissa.column, ...ordinates.map(({ column }) => column)];
+	if (new Set(used).size < used.length) {
 		throw new InvalidInput('One column was given two meanings.', [
 			{ path: 'description.ordinates', message: 'each column of the file may be used once' }
 		]);
 	}
+	const values = ordinates.flatMap(({ column, quantity }) => (quantity ? [{ column, quantity }] : []));
+	const uncertain = ordinates.flatMap((ordinate, index) => uncertaintyOf(ordinate, index, values));
+	if (new Set(uncertain.map(({ of }) => of)).size < uncertain.length) {
+		throw new InvalidInput('One quantity was given two uncertainties.', [
+			{ path: 'description.ordinates', message: 'a column of values has at most one of uncertainties' }
+		]);
+	}
+	return { abscissa: abscissa.column, values, uncertain };
+}
+
+function uncertaintyOf(
+	{ column, uncertaintyOf: of }: Ordinate,
+	index: number,
+	values: ValueColumn[]
+): UncertaintyColumn[] {
+	if (of === undefined) return [];
+	const owner = values.find((value) => value.column === of);
+	if (owner) return [{ column, of: owner.quantity }];
+	throw new InvalidInput('A column of uncertainties belongs to no column of values.', [
+		{
+			path: `description.ordinates[${index}].uncertaintyOf`,
+			message: `column ${of} is not one of the columns that hold a quantity`
+		}
+	]);
+}
+
+function readRows(sheet: Sheet, { abscissa, values, uncertain }: Columns): Row[] {
+	const faults = [
+		{ column: abscissa, of: abscissaFault },
+		...values.map(({ column, quantity }) => ({
+			column,
+			of: (value: number) => ordinateFault(quantity, value)
+		})),
+		...uncertain.map(({ column }) => ({ column, of: uncertaintyFault }))
+	];
 	const issues: FileIssue[] = [];
 	const rows = sheet.rows.map(({ line, cells }) => {
-		const numbers = columns.map((column, index) => {
+		const numbers = faults.map(({ column, of: faultOf }) => {
 			const text = cells[column - 1];
 			const report = (rule: string, message: string) => {
 				issues.push({ line, column, rule, message, text: text ?? '' });
@@ -116,13 +177,15 @@ function readRows(sheet: Sheet, reading: MapReading): Row[] {
 			if (text === undefined) return report('width', `the line has no column ${column}`);
 			const read = readNumber(text, sheet.decimal);
 			if (!('value' in read)) return report(read.rule, read.message);
-			const fault =
-				index === 0
-					? abscissaFault(read.value)
-					: ordinateFault(reading.ordinates[index - 1].quantity, read.value);
+			const fault = faultOf(read.value);
 			return fault ? report(...fault) : read.value;
 		});
-		return { line, abscissa: numbers[0], ordinates: numbers.slice(1) };
+		return {
+			line,
+			abscissa: numbers[0],
+			ordinates: numbers.slice(1, 1 + values.length),
+			uncertainties: numbers.slice(1 + values.length)
+		};
 	});
 	if (issues.length > 0) throw new RefusedFile(issues);
 	if (rows.length < 2) {
@@ -134,6 +197,9 @@ function readRows(sheet: Sheet, reading: MapReading): Row[] {
 
 const abscissaFault = (value: number): [string, string] | undefined =>
 	value > 0 ? undefined : ['abscissa', 'the abscissa must be above zero'];
+
+const uncertaintyFault = (value: number): [string, string] | undefined =>
+	value >= 0 ? undefined : ['uncertainty', 'an uncertainty is not negative'];
 
 function ordinateFault(quantity: Quantity, value: number): [string, string] | undefined {
 	switch (quantity) {

@@ -55,8 +55,8 @@ describe('parseSheet', () => {
 	it('keeps line numbers across comments, blank lines, headings and skipped rows', () => {
 		const text = 'junk that is skipped\n# a comment\n\nenergy,n\neV,1\n1.5,2\n% another\n2.5,3\n';
 		const sheet = parseSheet(text, { skipRows: 1 });
-		expect(sheet.headings.map(({ line }) => line)).toEqual([4]);
-		expect(sheet.rows.map(({ line }) => line)).toEqual([5, 6, 8]);
+		expect(sheet.headings.map(({ line }) => line)).toEqual([4, 5]);
+		expect(sheet.rows.map(({ line }) => line)).toEqual([6, 8]);
 		expect(sheet.comments).toEqual(['# a comment', '% another']);
 	});
 
@@ -66,6 +66,19 @@ describe('parseSheet', () => {
 			['energy', 'n'],
 			['eV', '(none)']
 		]);
+	});
+
+	it('takes a units row in which some units are one for a heading', () => {
+		const sheet = parseSheet('wavelength;n;k\nnm;1;1\n600,5;0,2;3\n550;0,3;2\n');
+		expect(sheet).toMatchObject({ delimiter: ';', decimal: ',' });
+		expect(sheet.headings.map(({ line }) => line)).toEqual([1, 2]);
+		expect(parseSheet('eV,1\n1.5,2\n2,3\n').rows).toHaveLength(2);
+	});
+
+	it('reads a file with a slip in it as what most of its lines are', () => {
+		const sheet = parseSheet('600;0,2;3\n550;x;2,7\n500;0,8;1\n');
+		expect(sheet).toMatchObject({ delimiter: ';', decimal: ',' });
+		expect(sheet.rows).toHaveLength(3);
 	});
 
 	it('honours quotes and refuses one left open', () => {

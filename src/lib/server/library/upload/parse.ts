@@ -26,6 +26,11 @@ export interface SheetOptions {
 	skipRows?: number;
 }
 
+interface Layout {
+	delimiter: Delimiter;
+	decimal: '.' | ',';
+}
+
 const COMMENT = /^\s*(#|%|\/\/|!)/;
 const ROWS_MAX = 20_000;
 const HEADINGS_MAX = 10;
@@ -46,7 +51,8 @@ export function parseSheet(text: string, { skipRows = 0, ...given }: SheetOption
 	const headings: SheetRow[] = [];
 	for (const { line, text: content } of lines) {
 		const row = { line, cells: split(content, line) };
-		if (rows.length === 0 && !row.cells.some((cell) => isNumber(cell, decimal))) headings.push(row);
+		const isHeading = !row.cells.some((cell) => isNumber(cell, decimal)) || isUnitsRow(row.cells);
+		if (rows.length === 0 && isHeading) headings.push(row);
 		else rows.push(row);
 	}
 	if (rows.length === 0) refuse('empty', 'no line begins with a number', lines[0].line, lines[0].text);
@@ -65,6 +71,13 @@ export function parseSheet(text: string, { skipRows = 0, ...given }: SheetOption
 
 const isNumber = (cell: string, decimal: '.' | ',') => 'value' in readNumber(cell, decimal);
 
+const UNIT = /^[([]?(ev|nm|um|µm|μm|cm\^?-1|1\/cm|hz|thz|rad\/s|s\^?-1|none|-|)[)\]]?$/i;
+
+/** "nm;1;1": units of which some are one. A first row of numbers with a slip in it is not taken for that. */
+const isUnitsRow = (cells: string[]): boolean =>
+	cells.some((cell) => UNIT.test(cell) && cell !== '') &&
+	cells.every((cell) => cell === '1' || UNIT.test(cell));
+
 /** Which delimiter and decimal sign: as told, or the only pair under which every numeric line has the same width. */
 function settle(
 	lines: { line: number; text: string }[],
@@ -74,20 +87,36 @@ function settle(
 	const delimiters: Delimiter[] = given.delimiter ? [given.delimiter] : [';', '\t', ',', ' '];
 	const decimals: ('.' | ',')[] = given.decimal ? [given.decimal] : ['.', ','];
 	const sampled = lines.slice(-50);
-	const fitting = delimiters.flatMap((delimiter) =>
-		decimals
-			.filter((decimal) => delimiter !== ',' || decimal !== ',')
-			.filter((decimal) => fits(sampled, delimiter, decimal))
-			.map((decimal) => ({ delimiter, decimal }))
-	);
+	const candidates = delimiters
+		.flatMap((delimiter) => decimals.map((decimal) => ({ delimiter, decimal })))
+		.filter(({ delimiter, decimal }) => delimiter !== ',' || decimal !== ',');
+	const fitting = candidates.filter(({ delimiter, decimal }) => fits(sampled, delimiter, decimal));
 	const [first, ...others] = fitting;
-	if (!first) return { delimiter: given.delimiter ?? ',', decimal: given.decimal ?? '.' };
+	if (!first) {
+		const { delimiter, decimal } = nearest(sampled, candidates) ?? { delimiter: ',', decimal: '.' };
+		return { delimiter: given.delimiter ?? delimiter, decimal: given.decimal ?? decimal };
+	}
 	// Whole numbers read the same with either decimal sign, and a tab is also a blank: neither is a doubt.
 	const rival = others.find((other) => reading(sampled, other) !== reading(sampled, first));
 	if (rival) ask(sampled[0], `split by "${first.delimiter}" or by "${rival.delimiter}"`);
 	if (first.delimiter === ',' && !given.delimiter && sampled.every(({ text }) => mayBePairs(text)))
 		ask(sampled[0], 'of whole numbers or as half as many numbers with decimal commas');
 	return first;
+}
+
+/** Some line is wrong whichever way it is read: the way that leaves fewest wrong, so that the problems told are the real ones. */
+function nearest(lines: { text: string }[], candidates: Layout[]): Layout | undefined {
+	const scored = candidates.map((layout) => {
+		const widths = new Map<number, number>();
+		for (const { text } of lines) {
+			const cells = plainSplit(text, layout.delimiter);
+			if (cells.length < 2 || !cells.every((cell) => isNumber(cell, layout.decimal))) continue;
+			widths.set(cells.length, (widths.get(cells.length) ?? 0) + 1);
+		}
+		return { layout, score: Math.max(0, ...widths.values()) };
+	});
+	const best = Math.max(...scored.map(({ score }) => score));
+	return best > 0 ? scored.find(({ score }) => score === best)?.layout : undefined;
 }
 
 function ask({ line, text }: { line: number; text: string }, between: string): never {
@@ -111,6 +140,7 @@ function fits(lines: { line: number; text: string }[], delimiter: Delimiter, dec
 	for (const { text } of lines) {
 		const cells = plainSplit(text, delimiter);
 		if (cells.length < 2) return false;
+		if (isUnitsRow(cells)) continue;
 		const numbers = cells.filter((cell) => isNumber(cell, decimal)).length;
 		if (numbers === 0) continue;
 		if (numbers < cells.length) return false;

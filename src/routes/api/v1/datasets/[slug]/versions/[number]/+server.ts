@@ -1,10 +1,15 @@
 import { answering } from '$lib/server/api/problem.ts';
 import { taggedJson } from '$lib/server/api/serialize/tagged.ts';
 import { serializeVersion } from '$lib/server/api/serialize/version.ts';
+import { viewerOf } from '$lib/server/library/viewer.ts';
 import * as versions from '$lib/server/library/versions.ts';
 import type { RequestHandler } from './$types';
 
-export const GET: RequestHandler = ({ request, params }) =>
+export const GET: RequestHandler = ({ request, params, locals }) =>
 	answering(async () =>
-		taggedJson(request, { version: serializeVersion(await versions.get(params.slug, params.number)) })
+		taggedJson(request, {
+			version: serializeVersion(
+				await versions.get(params.slug, params.number, undefined, viewerOf(locals.principal))
+			)
+		})
 	);

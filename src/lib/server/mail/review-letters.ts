@@ -1,0 +1,79 @@
+import { z } from 'zod';
+import type { Written } from './letters.ts';
+
+/** What is told about the life of a version; by mail and, in the same words, inside the application. */
+
+const base = {
+	/** slug@major.minor */
+	ref: z.string(),
+	/** Material and dataset, as "Gold: Johnson-Christy table". */
+	title: z.string(),
+	/** Name of who took the step. */
+	by: z.string()
+};
+
+const shapes = {
+	'review-wanted': z.object({ ...base, note: z.string().nullable() }),
+	'version-returned': z.object({ ...base, reason: z.string() }),
+	'version-published': z.object({ ...base, reason: z.string().nullable() }),
+	'version-withdrawn': z.object({ ...base, reason: z.string() })
+};
+
+export type ReviewLetterKind = keyof typeof shapes;
+
+export type ReviewLetter = {
+	[Kind in ReviewLetterKind]: { kind: Kind } & z.infer<(typeof shapes)[Kind]>;
+}[ReviewLetterKind];
+
+export const isReviewLetter = (kind: string): kind is ReviewLetterKind => Object.hasOwn(shapes, kind);
+
+/** `/reviews/gold-drude/2.0`: the pages of a version by what one does there. */
+const pathOf = (folder: string, ref: string) => `${folder}/${ref.replace('@', '/')}`;
+const versionPath = (ref: string) => `/datasets/${ref.replace('@', '/versions/')}`;
+
+export function writeReviewLetter(kind: ReviewLetterKind, data: unknown, origin: string): Written {
+	switch (kind) {
+		case 'review-wanted': {
+			const { ref, title, by, note } = shapes[kind].parse(data);
+			return {
+				subject: `${ref} waits for a review`,
+				paragraphs: [
+					`${by} submitted ${ref} (${title}). It is published once somebody else has looked at it.`,
+					...(note === null ? [] : [note])
+				],
+				link: { text: 'Review it', href: `${origin}${pathOf('/reviews', ref)}` }
+			};
+		}
+		case 'version-returned': {
+			const { ref, title, by, reason } = shapes[kind].parse(data);
+			return {
+				subject: `${ref} came back from review`,
+				paragraphs: [`${by} returned your ${ref} (${title}). The reason:`, reason],
+				link: { text: 'Correct it', href: `${origin}${pathOf('/drafts', ref)}` }
+			};
+		}
+		case 'version-published': {
+			const { ref, title, by, reason } = shapes[kind].parse(data);
+			return {
+				subject: `${ref} is published`,
+				paragraphs: [
+					`${by} approved ${ref} (${title}), and it is published.`,
+					...(reason === null ? [] : [reason])
+				],
+				link: { text: 'See the version', href: `${origin}${versionPath(ref)}` }
+			};
+		}
+		case 'version-withdrawn': {
+			const { ref, title, by, reason } = shapes[kind].parse(data);
+			return {
+				subject: `${ref} is withdrawn`,
+				paragraphs: [
+					`${by} withdrew ${ref} (${title}). The reason:`,
+					reason,
+					'Its address stays, says so, and what used it can be recomputed. New work should not use it.'
+				],
+				link: { text: 'See the version', href: `${origin}${versionPath(ref)}` }
+			};
+		}
+	}
+}

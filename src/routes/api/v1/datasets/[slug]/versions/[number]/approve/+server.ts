@@ -1,0 +1,11 @@
+import { approval } from '$lib/schemas/upload.ts';
+import { steppedJson } from '$lib/server/library/created.ts';
+import { approve } from '$lib/server/library/curation.ts';
+import { serializedVersion } from '$lib/server/library/stepped-version.ts';
+import type { RequestHandler } from './$types';
+
+export const POST: RequestHandler = (event) =>
+	steppedJson(event, approval, async (actor, fields) => {
+		await approve(actor, event.params.slug, event.params.number, fields);
+		return serializedVersion(event.params, actor);
+	});

@@ -1,0 +1,11 @@
+import { refusal } from '$lib/schemas/upload.ts';
+import { steppedJson } from '$lib/server/library/created.ts';
+import { giveBack } from '$lib/server/library/curation.ts';
+import { serializedVersion } from '$lib/server/library/stepped-version.ts';
+import type { RequestHandler } from './$types';
+
+export const POST: RequestHandler = (event) =>
+	steppedJson(event, refusal, async (actor, fields) => {
+		await giveBack(actor, event.params.slug, event.params.number, fields);
+		return serializedVersion(event.params, actor);
+	});
