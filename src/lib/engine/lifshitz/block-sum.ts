@@ -11,31 +11,63 @@ import { newTally, valueOf, type Tally } from './tally.ts';
  */
 const COEFFICIENT_FALL = 1 / (3 + Math.sqrt(8));
 
-/**
- * c_2m over c_{m-1}. Where e^-y0 falls steeply across a block, y0 changing by z a unit of x, its own expansion sets the
- * pace until it has caught up: modified Bessel functions, I_{j+1/2}/I_{j-1/2} ~ z/(j + 1/2 + sqrt((j + 1/2)^2 + z^2)).
- */
-function fallBeyond(block: FrequencyBlock, [first, last]: [number, number]): number {
-	const nodes = block.xi.length;
-	const z = (STEEPNESS * (last - first)) / block.reach;
-	let product = 1;
-	for (let j = nodes; j <= 2 * nodes; j++) {
-		product *= Math.max(COEFFICIENT_FALL, z / (j + 0.5 + Math.hypot(j + 0.5, z)));
-	}
-	return product;
+/** How coefficients fall: the last one seen over the two before it, and c_2m over the last one. */
+interface Falls {
+	one: number;
+	two: number;
+	beyond: number;
 }
+
+/** Degree of a double zero, where equal bodies match the medium at some frequency of the block. */
+const DOUBLE_ZERO = 2;
+
+/**
+ * Falls for a function of the class above times a steep exponential e^-zx. Until the exponential has caught up with the
+ * class its own expansion sets the pace: modified Bessel functions, I_{j+1/2}/I_{j-1/2} ~ z/(j + 1/2 + sqrt((j + 1/2)^2 + z^2)).
+ *
+ * @param z      fall of the logarithm of the terms across the block, a unit of x on (-1, 1)
+ * @param early  degrees that a polynomial factor takes away from the exponential
+ */
+function fallsOf(nodes: number, z: number, early: number): Falls {
+	const rate = (degree: number): number => {
+		const j = Math.max(1, degree - early) + 0.5;
+		return Math.max(COEFFICIENT_FALL, z / (j + Math.hypot(j, z)));
+	};
+	let beyond = 1;
+	for (let j = nodes; j <= 2 * nodes; j++) beyond *= rate(j);
+	const one = rate(nodes - 1);
+	return { one, two: one * rate(nodes - 2), beyond };
+}
+
+/** How steeply terms fall: by their phases, or by themselves, where layers decay faster than the gap. */
+function steepness(block: FrequencyBlock, phases: readonly number[], sizes: readonly number[]): number {
+	const byPhase = phases[1] - phases[0];
+	const bySize = sizes[1] > 0 ? Math.log(sizes[0] / sizes[1]) - POWER_FALL : STEEPEST;
+	return Math.min(STEEPEST, Math.max(byPhase, bySize)) / block.reach;
+}
+
+/** A last coefficient this much below what those before it promise is passing through zero. */
+const PASSING_ZERO = 0.2;
+
+/** Beside a double zero coefficients come back this much larger from their own zero. */
+const AFTER_ZERO = 8;
 
 /** The last coefficient, or what the two before it promise: one alone may be small by chance. */
-function lastCoefficients(projected: Float64Array, at: number): number {
-	const [c1, c2, c3] = [projected[at], projected[at + 1], projected[at + 2]];
-	return Math.max(Math.abs(c1), COEFFICIENT_FALL * Math.abs(c2), COEFFICIENT_FALL ** 2 * Math.abs(c3));
+function lastCoefficient(projected: Float64Array, at: number, { one, two }: Falls, rising: boolean): number {
+	const last = Math.abs(projected[at]);
+	const promised = Math.max(one * Math.abs(projected[at + 1]), two * Math.abs(projected[at + 2]));
+	if (rising && last < PASSING_ZERO * promised) return AFTER_ZERO * promised;
+	return Math.max(last, promised);
 }
 
-/** The powers of y0 beside e^-y0, and layers that decay faster, make a block a little steeper than its phase says. */
-const STEEPNESS = 1.2;
+/** Beyond this a block holds nothing but its first terms. */
+const STEEPEST = 80;
+
+/** An octave of xi^-4: falls like a power, which the class above holds already. */
+const POWER_FALL = 4 * Math.LN2;
 
 /** What polynomials beyond the last measured one may add together, over the geometric estimate. */
-const BLOCK_SAFETY = 16;
+const BLOCK_SAFETY = 11;
 
 /** Next to xi = 0 the last coefficients themselves stand for the error: the rule is far better than that. */
 const REMAINDER_SAFETY = 2;
@@ -57,15 +89,24 @@ export function blockSum(system: System, level: Level): BlockSum {
 	const { terms, at, phaseOf } = frequencyTerms(system, level);
 	const last = new Float64Array(3);
 	const projected = new Float64Array(18);
-	const phases: [number, number] = [0, 0];
+	const phases = [0, 0];
+	const sizes = [0, 0];
 	const add = (block: FrequencyBlock, separation: number, tally: Tally, extrapolate: boolean): void => {
 		const time = roundTripTime(separation);
 		last.fill(0);
 		projected.fill(0);
+		// Terms that grow inside a block have passed a zero, or will not be steep.
+		let rising = false;
 		for (let i = 0; i < block.xi.length; i++) {
 			at(block, i, separation, time);
-			if (i === 0) phases[0] = terms.phase;
 			phases[1] = terms.phase;
+			const size = Math.abs(terms.te[0]) + Math.abs(terms.tm[0]);
+			rising ||= i > 0 && size > sizes[1];
+			sizes[1] = size;
+			if (i === 0) {
+				phases[0] = phases[1];
+				sizes[0] = sizes[1];
+			}
 			const w = block.weight[i];
 			for (let q = 0; q < 3; q++) {
 				const te = terms.te[q];
@@ -84,12 +125,15 @@ export function blockSum(system: System, level: Level): BlockSum {
 		}
 		tally.evaluations += terms.evaluations;
 		terms.evaluations = 0;
-		const beyond = block.exact ? 0 : fallBeyond(block, phases);
+		for (let q = 0; q < 3; q++) tally.magnitude[q] += last[q];
+		if (block.exact) return;
+		const early = rising ? DOUBLE_ZERO : 0;
+		const falls = fallsOf(block.xi.length, steepness(block, phases, sizes), early);
+		const safety = extrapolate ? BLOCK_SAFETY * falls.beyond : REMAINDER_SAFETY;
 		for (let q = 0; q < 3; q++) {
-			tally.magnitude[q] += last[q];
-			if (block.exact) continue;
-			const size = lastCoefficients(projected, 6 * q) + lastCoefficients(projected, 6 * q + 3);
-			tally.blocks[q] += extrapolate ? BLOCK_SAFETY * size * beyond : REMAINDER_SAFETY * size;
+			const te = lastCoefficient(projected, 6 * q, falls, rising);
+			const tm = lastCoefficient(projected, 6 * q + 3, falls, rising);
+			tally.blocks[q] += safety * (te + tm);
 		}
 	};
 	const startPhase = (block: FrequencyBlock, separation: number): number =>

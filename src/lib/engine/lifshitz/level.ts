@@ -15,8 +15,8 @@ export interface Level {
 }
 
 export const LEVELS: readonly Level[] = [
-	{ step: 0.37, cut: 1e-13, nodes: 6, direct: 8, reach: 1e-6 },
-	{ step: 0.32, cut: 1e-15, nodes: 8, direct: 8, reach: 1e-8 },
+	{ step: 0.35, cut: 1e-13, nodes: 6, direct: 8, reach: 1e-6 },
+	{ step: 0.29, cut: 1e-15, nodes: 7, direct: 8, reach: 1e-8 },
 	{ step: 0.25, cut: 1e-17, nodes: 11, direct: 16, reach: 0 }
 ];
 
