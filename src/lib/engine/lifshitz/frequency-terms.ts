@@ -25,6 +25,9 @@ const SMALLEST_SCALE = 60;
 /** Roundoff of one frequency term beside that of permittivities: sums, roots, exponentials of y. */
 const ROUNDING = 16;
 
+/** Roundoff of y0 itself: frequency, travel time, their product and the root. */
+const PHASE_ROUNDING = 8;
+
 interface BodyNoise {
 	/** Relative error of the coefficient of a half-space. */
 	relative: number;
@@ -65,6 +68,8 @@ export function frequencyTerms(system: System, level: Level): FrequencyEvaluator
 	const single = singleFall(level);
 	const doubled = doubledFall(level);
 	const mediumUlps = substances[0].chi?.ulps ?? 0;
+	// e^-y0 turns the relative error of y0, half of it from that of eps_m, into y0 times as much.
+	const phaseUlps = PHASE_ROUNDING + mediumUlps / 2;
 
 	/** Permittivities of a block, computed when first asked for. */
 	const fill = (block: FrequencyBlock): void => {
@@ -162,7 +167,7 @@ export function frequencyTerms(system: System, level: Level): FrequencyEvaluator
 			noiseRight = noise2;
 		}
 		terms.evaluations += 2 * lattice.count;
-		const relative = UNIT_ROUNDOFF * (ROUNDING + 2 * y0 + 2 * (noise.relative + noiseRight.relative));
+		const relative = UNIT_ROUNDOFF * (ROUNDING + phaseUlps * y0 + 2 * (noise.relative + noiseRight.relative));
 		rounding.fill(0);
 		if (noise.absolute > 0 || noiseRight.absolute > 0) {
 			addPolarizationNoise(lattice, y0, te1, teRight, noise.absolute, noiseRight.absolute, rounding);

@@ -73,7 +73,7 @@ export function zeroTerm(system: System, level: Level): (separation: number, tal
 				const even = sums[2 * q];
 				const odd = sums[2 * q + 1];
 				// Half weight of the primed sum, and half of each of the two lattices.
-				add(tally, polarisation, q, (even + odd) / 4, UNIT_ROUNDOFF * (ROUNDING + 2 * y0));
+				add(tally, polarisation, q, (even + odd) / 4, UNIT_ROUNDOFF * (ROUNDING + 8 * y0));
 				open[q] = Math.hypot(open[q], even - odd);
 				tally.lattice[q] += level.cut * Math.abs(even + odd);
 				tally.rounding[q] += smallness(lattice, y0, q, rLeft, rRight) / 4;
