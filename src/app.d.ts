@@ -1,3 +1,4 @@
+import type { AccountSummary } from '$lib/schemas/person.ts';
 import type { Principal } from '$lib/server/auth/principal.ts';
 
 declare global {
@@ -6,6 +7,11 @@ declare global {
 			message: string;
 			/** Written in the log beside what really happened; shown to the person so that it can be quoted. */
 			id?: string;
+		}
+
+		interface PageData {
+			/** Who is signed in, for the header and the units that pages begin with. */
+			account?: AccountSummary | null;
 		}
 
 		interface Locals {

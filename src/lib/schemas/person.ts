@@ -26,15 +26,15 @@ export const personName = z
 	.regex(/^[^\p{Cc}]*$/u, 'a name has no control characters');
 
 export const UNIT_CHOICES = {
-	separation: ['nm', 'um'],
-	pressure: ['Pa', 'mPa', 'kPa'],
-	energy: ['eV', 'rad/s', 'cm^-1', 'um']
+	separation: ['auto', 'nm', 'um'],
+	pressure: ['auto', 'Pa', 'mPa', 'kPa'],
+	energy: ['eV', 'um']
 } as const;
 
 /** Everything a person may set about how the application behaves towards them; nothing else is accepted. */
 export const preferences = z.strictObject({
-	separationUnit: z.enum(UNIT_CHOICES.separation).default('nm'),
-	pressureUnit: z.enum(UNIT_CHOICES.pressure).default('Pa'),
+	separationUnit: z.enum(UNIT_CHOICES.separation).default('auto'),
+	pressureUnit: z.enum(UNIT_CHOICES.pressure).default('auto'),
 	energyUnit: z.enum(UNIT_CHOICES.energy).default('eV'),
 	/** Mail about reviews, new versions of what one's studies use, and comments. */
 	mailAboutReviews: z.boolean().default(true),
@@ -43,6 +43,14 @@ export const preferences = z.strictObject({
 export type Preferences = z.infer<typeof preferences>;
 
 export const PREFERENCES_BY_DEFAULT: Preferences = preferences.parse({});
+
+/** What every page is told about who is signed in. */
+export interface AccountSummary {
+	name: string;
+	role: Role;
+	/** Units that pages begin with; what was left to each number is not named. */
+	units: { length?: string; pressure?: string; photon: 'eV' | 'um' };
+}
 
 export const profileChange = z.strictObject({ name: personName, preferences });
 export type ProfileChange = z.infer<typeof profileChange>;

@@ -7,10 +7,11 @@ const KEY = 'hairsbreadth.units';
 export class UnitMemory {
 	choices = $state.raw<UnitChoices>({});
 
-	/** In the browser only: the server knows nobody's units, and the first picture must be the same on both. */
-	recall(): void {
+	/** In the browser only, where the memory is; what was never fixed there is as the account begins with. */
+	recall(ofAccount: UnitChoices = {}): void {
+		this.choices = ofAccount;
 		try {
-			this.choices = readUnitChoices(localStorage.getItem(KEY));
+			this.choices = { ...ofAccount, ...readUnitChoices(localStorage.getItem(KEY)) };
 		} catch {
 			// A browser that forbids storage still shows units; they are only not remembered.
 		}
