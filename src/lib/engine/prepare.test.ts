@@ -77,6 +77,18 @@ describe('an answer', () => {
 		).toEqual(Array(5).fill([0, 0, true]));
 	});
 
+	it.each([0, 300])('sees bodies through thick coatings that match the medium at %d K', (temperatureK) => {
+		const hidden = { layers: [{ of: bromobenzene, thicknessNm: 90 }], substrate: metal };
+		const close = evaluate(aRequest({ left: hidden, right: hidden, temperatureK }, { separationsNm: [1] }))
+			.points[0];
+		const bare = { layers: [], substrate: metal };
+		const far = evaluate(aRequest({ left: bare, right: bare, temperatureK }, { separationsNm: [181] }))
+			.points[0];
+		// The coatings are the medium: the same plates, 180 nm farther apart.
+		expect(close.met).toBe(true);
+		expect(close.pressurePa / far.pressurePa).toBeCloseTo(1, 6);
+	});
+
 	it('has parts that add up to the whole', () => {
 		for (const point of evaluate(aRequest({}, { include: ['breakdown'] })).points) {
 			const { zeroTe, zeroTm, te, tm } = point.breakdown!.pressurePa;

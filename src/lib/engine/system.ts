@@ -19,6 +19,8 @@ export interface Body {
 	places: number[];
 	/** m, one a layer. */
 	thickness: number[];
+	/** m; outer layers of the medium's own substance: they only put the body farther away. */
+	silent: number;
 	/** The last place is an ideal conductor. */
 	ideal: boolean;
 	/** Medium, layers, substrate at n = 0. */
@@ -70,9 +72,13 @@ export function systemOf(request: ForceRequest): System {
 		const materials = [...layers.map((layer) => layer.of), substrate];
 		const end = materials.findIndex(({ permittivity }) => permittivity.kind === 'idealConductor');
 		const seen = end < 0 ? materials : materials.slice(0, end + 1);
+		const places = seen.map(indexOf);
+		const thickness = layers.slice(0, seen.length - 1).map((layer) => metresFromNm(layer.thicknessNm));
+		const firstOther = places.findIndex((place) => place !== 0);
 		return {
-			places: seen.map(indexOf),
-			thickness: layers.slice(0, seen.length - 1).map((layer) => metresFromNm(layer.thicknessNm)),
+			places,
+			thickness,
+			silent: thickness.slice(0, Math.max(0, firstOther)).reduce((sum, t) => sum + t, 0),
 			ideal: end >= 0,
 			zero: [mediumAtZero, ...seen.map(atZero)]
 		};

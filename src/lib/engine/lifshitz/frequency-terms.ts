@@ -168,10 +168,32 @@ export function frequencyTerms(system: System, level: Level): FrequencyEvaluator
 		}
 		terms.evaluations += 2 * lattice.count;
 		const relative = UNIT_ROUNDOFF * (ROUNDING + phaseUlps * y0 + 2 * (noise.relative + noiseRight.relative));
+		const silentLeft = left.silent / separation;
+		const silentRight = right.silent / separation;
 		rounding.fill(0);
 		if (noise.absolute > 0 || noiseRight.absolute > 0) {
-			addPolarizationNoise(lattice, y0, te1, teRight, noise.absolute, noiseRight.absolute, rounding);
-			addPolarizationNoise(lattice, y0, tm1, tmRight, noise.absolute, noiseRight.absolute, rounding);
+			addPolarizationNoise(
+				lattice,
+				y0,
+				te1,
+				teRight,
+				noise.absolute,
+				noiseRight.absolute,
+				silentLeft,
+				silentRight,
+				rounding
+			);
+			addPolarizationNoise(
+				lattice,
+				y0,
+				tm1,
+				tmRight,
+				noise.absolute,
+				noiseRight.absolute,
+				silentLeft,
+				silentRight,
+				rounding
+			);
 		}
 		polarizationSum(lattice, y0, te1, teRight, sums);
 		for (let q = 0; q < 3; q++) {

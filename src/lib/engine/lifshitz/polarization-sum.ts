@@ -61,7 +61,7 @@ export function polarizationSum(
  * The same integrals with R replaced by what rounding may do to it, noise2 |r1| + noise1 |r2|: for stacks, whose
  * coefficient may be a small difference of larger ones.
  *
- * @param noise1, noise2  absolute errors of r1 and r2
+ * @param noise1, noise2  absolute errors of r1 and r2, fading like e^{-y silent} behind matched layers
  * @param out             F, P, G; added to
  */
 export function addPolarizationNoise(
@@ -71,6 +71,8 @@ export function addPolarizationNoise(
 	r2: Float64Array,
 	noise1: number,
 	noise2: number,
+	silent1: number,
+	silent2: number,
 	out: Float64Array
 ): void {
 	const { count, s, weight, decay } = lattice;
@@ -79,7 +81,9 @@ export function addPolarizationNoise(
 		const y = y0 + s[i];
 		const e = decay0 * decay[i];
 		const d = 1 / (1 - r1[i] * r2[i] * e);
-		const f = weight[i] * y * e * d * (noise2 * Math.abs(r1[i]) + noise1 * Math.abs(r2[i]) + noise1 * noise2);
+		const n1 = silent1 > 0 ? noise1 * Math.exp(-y * silent1) : noise1;
+		const n2 = silent2 > 0 ? noise2 * Math.exp(-y * silent2) : noise2;
+		const f = weight[i] * y * e * d * (n2 * Math.abs(r1[i]) + n1 * Math.abs(r2[i]) + n1 * n2);
 		out[0] += f;
 		out[1] += f * y;
 		out[2] += f * y * y * d;

@@ -88,7 +88,8 @@ export function zeroTemperatureIntegral(
 		const lowest = middle - MOST_OCTAVES;
 		for (let k = middle - 1; k > lowest; k--) {
 			addOctave(k, separation, tally);
-			if (octave.every((size) => size === 0)) return;
+			// Nothing yet: coatings that match the medium may hide the bodies down to much lower frequencies.
+			if (tally.magnitude.every((size) => size === 0)) continue;
 			const late = [0, 1, 2].every(
 				(q) => octave[q] <= REMAINDER_TRIAL * accuracy * Math.abs(valueOf(tally, q))
 			);

@@ -9,7 +9,7 @@ import {
 } from '../reflection/zero-frequency.ts';
 import type { Body, System } from '../system.ts';
 import { doubledFall, LATTICE_CONSTANTS, type Level } from './level.ts';
-import { polarizationSum } from './polarization-sum.ts';
+import { addPolarizationNoise, polarizationSum } from './polarization-sum.ts';
 import { UNIT_ROUNDOFF, type Tally } from './tally.ts';
 
 /** Reflection that does not depend on the wave number has a closed form: F -Li_3, P 2 Li_3, G 6 Li_3 of R. */
@@ -37,6 +37,7 @@ export function zeroTerm(system: System, level: Level): (separation: number, tal
 	let rRight = new Float64Array(0);
 	const sums = new Float64Array(6);
 	const open = new Float64Array(3);
+	const noise = new Float64Array(3);
 	const bare = left.zero.length === 2 && right.zero.length === 2;
 	const carriers = [left, right].some(({ zero }) => zero.some(({ square }) => square > 0));
 	const silent =
@@ -47,6 +48,7 @@ export function zeroTerm(system: System, level: Level): (separation: number, tal
 		const screened = polarisation === 'tm' && screening !== null;
 		const y0 = screened ? 2 * separation * screening : X * Math.sqrt(medium.square * medium.mu);
 		open.fill(0);
+		noise.fill(0);
 		// With y0 > 0 they need not vanish, and may live on a small part of the axis.
 		const lattices = y0 === 0 ? unscreened : latticesTo(level.cut * SMALL_PART * Math.min(1, y0));
 		for (const lattice of lattices) {
@@ -69,6 +71,18 @@ export function zeroTerm(system: System, level: Level): (separation: number, tal
 			reflect(right, rRight);
 			polarizationSum(lattice, y0, rLeft, rRight, sums);
 			tally.evaluations += lattice.count;
+			const [noiseLeft, noiseRight] = [noiseOf(rLeft, lattice.count), noiseOf(rRight, lattice.count)];
+			addPolarizationNoise(
+				lattice,
+				y0,
+				rLeft,
+				rRight,
+				noiseLeft,
+				noiseRight,
+				left.silent / separation,
+				right.silent / separation,
+				noise
+			);
 			for (let q = 0; q < 3; q++) {
 				const even = sums[2 * q];
 				const odd = sums[2 * q + 1];
@@ -76,10 +90,12 @@ export function zeroTerm(system: System, level: Level): (separation: number, tal
 				add(tally, polarisation, q, (even + odd) / 4, UNIT_ROUNDOFF * (ROUNDING + 8 * y0));
 				open[q] = Math.hypot(open[q], even - odd);
 				tally.lattice[q] += level.cut * Math.abs(even + odd);
-				tally.rounding[q] += smallness(lattice, y0, q, rLeft, rRight) / 4;
 			}
 		}
-		for (let q = 0; q < 3; q++) tally.lattice[q] += (fall * LATTICE_CONSTANTS[q] * open[q]) / 2;
+		for (let q = 0; q < 3; q++) {
+			tally.lattice[q] += (fall * LATTICE_CONSTANTS[q] * open[q]) / 2;
+			tally.rounding[q] += noise[q] / 4;
+		}
 	};
 
 	const closed = (polarisation: 'te' | 'tm', tally: Tally): void => {
@@ -130,25 +146,8 @@ function closedRounding(
 	return of(left) + of(right);
 }
 
-/** Absolute roundoff of both coefficients carried into the integral over y. */
-function smallness(
-	lattice: LogLattice,
-	y0: number,
-	quantity: number,
-	r1: Float64Array,
-	r2: Float64Array
-): number {
-	const decay0 = Math.exp(-y0);
-	let first = 0;
-	let second = 0;
-	for (let i = 0; i < lattice.count; i++) {
-		const y = y0 + lattice.s[i];
-		const e = decay0 * lattice.decay[i];
-		const d = 1 / (1 - r1[i] * r2[i] * e);
-		const weight = lattice.weight[i] * e * d * y * (quantity > 0 ? y : 1) * (quantity > 1 ? y * d : 1);
-		first += weight * Math.abs(r1[i]);
-		second += weight * Math.abs(r2[i]);
-	}
-	// A body that equals the medium reflects nothing, exactly.
-	return first === 0 || second === 0 ? 0 : 4 * UNIT_ROUNDOFF * (first + second);
+/** Absolute roundoff of a coefficient; a body that equals the medium reflects nothing, exactly. */
+function noiseOf(r: Float64Array, count: number): number {
+	for (let i = 0; i < count; i++) if (r[i] !== 0) return 4 * UNIT_ROUNDOFF;
+	return 0;
 }
