@@ -67,7 +67,7 @@ const STEEPEST = 80;
 const POWER_FALL = 4 * Math.LN2;
 
 /** What polynomials beyond the last measured one may add together, over the geometric estimate. */
-const BLOCK_SAFETY = 11;
+const BLOCK_SAFETY = 20;
 
 /** Next to xi = 0 the last coefficients themselves stand for the error: the rule is far better than that. */
 const REMAINDER_SAFETY = 2;
