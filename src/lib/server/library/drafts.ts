@@ -73,7 +73,7 @@ export function draftFromModel(
 }
 
 async function store(tx: Transaction, place: Place, content: Content): Promise<Draft> {
-	const { model, table, raw, description } = content;
+	const { model, table, description } = content;
 	const home = await findDataset(tx, place.datasetSlug);
 	const sourceIds = await findSources(tx, description.source);
 	const parent = description.parent ? await findParent(tx, home.id, description.parent) : null;
