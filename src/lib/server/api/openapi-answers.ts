@@ -21,6 +21,7 @@ export const problems = {
 	state: problem('The state of the thing does not allow this now.'),
 	absent: problem('There is no such thing, or it is hidden from you.'),
 	tooLarge: problem('The body is larger than accepted.'),
+	notText: problem('The file is not text.'),
 	wrongType: problem('The body is not sent as JSON.'),
 	invalid: problem('The content is wrong; each issue names a field and says what would be right.'),
 	limited: {

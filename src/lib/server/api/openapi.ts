@@ -2,6 +2,7 @@ import { z } from 'zod';
 import { createDocument, type CreateDocumentOptions, type ZodOpenApiPathsObject } from 'zod-openapi';
 import { ENGINE_VERSION } from '../../engine/version.ts';
 import { materialChoiceDescribed } from '../../schemas/force.ts';
+import { withCuration } from './openapi-curation.ts';
 import { forcePaths } from './openapi-forces.ts';
 import { libraryPaths } from './openapi-library.ts';
 import { peoplePaths } from './openapi-people.ts';
@@ -10,7 +11,7 @@ import { peoplePaths } from './openapi-people.ts';
 
 export const API_BASE = '/api/v1';
 
-const paths: ZodOpenApiPathsObject = { ...forcePaths, ...libraryPaths, ...peoplePaths };
+const paths: ZodOpenApiPathsObject = { ...forcePaths, ...withCuration(libraryPaths), ...peoplePaths };
 
 const [pinned, inPlace] = materialChoiceDescribed.options;
 
