@@ -88,3 +88,21 @@ test('a drag of five curves of 400 points keeps up with the screen', async ({ pa
 	// The test machine may be busy: the median tells what the page costs, a single late frame what else ran.
 	expect(median).toBeLessThan(20);
 });
+
+test('the first view, without what is plotted, weighs under 200 KB', async ({ page }) => {
+	const network = await page.context().newCDPSession(page);
+	await network.send('Network.enable');
+	const requests = new Map<string, string>();
+	const weights = new Map<string, number>();
+	network.on('Network.responseReceived', ({ requestId, response }) => requests.set(requestId, response.url));
+	network.on('Network.loadingFinished', ({ requestId, encodedDataLength }) =>
+		weights.set(requests.get(requestId) ?? requestId, encodedDataLength)
+	);
+	await openStudy(page);
+	await page.waitForLoadState('networkidle');
+
+	const carried = [...weights].filter(([url]) => !url.includes('/api/v1/forces'));
+	expect(carried.filter(([url]) => url.includes('.woff2')).length).toBeGreaterThan(0);
+	// The page itself comes uncompressed from this server and counts as such.
+	expect(carried.reduce((sum, [, weight]) => sum + weight, 0)).toBeLessThan(200_000);
+});
