@@ -10,7 +10,7 @@ import { isForeign } from '$lib/server/hooks/same-origin.ts';
 import { identify, permit, personal, unauthenticated } from '$lib/server/hooks/session.ts';
 import { withSecurityHeaders } from '$lib/server/hooks/security-headers.ts';
 import { checkStart } from '$lib/server/hooks/start.ts';
-import { Forbidden, NotFound } from '$lib/server/errors.ts';
+import { FORBIDDEN, Forbidden, NotFound } from '$lib/server/errors.ts';
 import { BadRequest } from '$lib/server/limits/refusals.ts';
 import { startPeople, stopPeople } from '$lib/server/people/start.ts';
 import { callOf, whoMay } from '$lib/server/policy.ts';
@@ -59,6 +59,8 @@ const identified: Handle = async ({ event, resolve }) => {
 	return personal(await resolve(event), event.locals.principal);
 };
 
+const accepts = (request: Request, type: string) => (request.headers.get('accept') ?? '').includes(type);
+
 /** Only what the policy table names is answered, and to whom it says; under /api every answer is JSON. */
 const permitted: Handle = async ({ event, resolve }) => {
 	const { id } = event.route;
@@ -78,9 +80,10 @@ const permitted: Handle = async ({ event, resolve }) => {
 	const verdict = await permit(who, event.locals.principal);
 	if (verdict === 'yes') return resolve(event);
 	if (verdict === 'forbidden') {
-		const message = 'Your role, or the scope of the token, does not allow this. Ask an administrator.';
-		if (isApi) return problemResponse(new Forbidden(message));
-		error(403, message);
+		if (isApi) return problemResponse(new Forbidden(FORBIDDEN));
+		const wantsPage = method === 'GET' && !event.isDataRequest && accepts(event.request, 'text/html');
+		if (wantsPage) return event.fetch('/refused', { headers: { accept: 'text/html' } });
+		error(403, FORBIDDEN);
 	}
 	if (isApi || event.locals.principal.kind === 'unknown') {
 		return unauthenticated();

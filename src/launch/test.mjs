@@ -49,9 +49,13 @@ async function build({ onStop }) {
 
 /** @param {Stack} stack */
 async function database({ onStop }) {
+	const chromium = await findChromium();
 	const cluster = await startCluster({ throwaway: true });
 	onStop(cluster.stop);
-	return vitest('database', ['--project', 'database'], { HAIRSBREADTH_TEST_SERVER: cluster.url });
+	return vitest('database', ['--project', 'database'], {
+		HAIRSBREADTH_TEST_SERVER: cluster.url,
+		HAIRSBREADTH_CHROMIUM: chromium
+	});
 }
 
 /** @param {Stack} stack */

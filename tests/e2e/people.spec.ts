@@ -79,6 +79,8 @@ test('tells a reader that administration is not theirs', async ({ page }) => {
 	await enter(page, 'Larkmoor reader');
 	const answer = await page.goto('/administration');
 	expect(answer?.status()).toBe(403);
+	await expect(page.getByRole('heading', { name: 'This page is not yours to see' })).toBeVisible();
+	await expect(page.getByRole('link', { name: 'Larkmoor reader', exact: true })).toBeVisible();
 	await expect(page.getByText('Your role, or the scope of the token, does not allow this.')).toBeVisible();
 	await expectAccessible(page);
 });

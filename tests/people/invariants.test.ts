@@ -42,6 +42,10 @@ describe('without its row of the audit trail in the same transaction', () => {
 			'an invitation is not sent',
 			`insert into invitation (secret_hash, email, role, invited_by, created_at, expires_at)
 				select 'a', 'y@larkmoor.example', 'reader', id, now(), now() from person`
+		],
+		[
+			'nothing is decided for everybody',
+			`insert into setting (key, value, updated_by) values ('installation', '{"publicReading": false}', 'x')`
 		]
 	])('%s', async (_what, statement) => {
 		await expect(database.applicationSql.unsafe(statement)).rejects.toMatchObject({

@@ -15,6 +15,9 @@ export class Forbidden extends Error {
 	override readonly name = 'Forbidden';
 }
 
+/** Told wherever role or scope do not reach. */
+export const FORBIDDEN = 'Your role, or the scope of the token, does not allow this. Ask an administrator.';
+
 export class Conflict extends Error {
 	override readonly name = 'Conflict';
 }

@@ -28,6 +28,7 @@ export const POLICY: Readonly<Record<string, Row>> = {
 	'/datasets/[slug]/versions/[number]/spectrum.json': readable,
 	'/sign-in': { GET: 'everyone', '?/link': 'everyone', '?/institution': 'everyone', '?/demo': 'everyone' },
 	'/sign-in/confirm': { GET: 'everyone', POST: 'everyone' },
+	'/refused': open,
 	'/sign-out': { POST: 'everyone' },
 	'/invitation': { GET: 'everyone', POST: 'everyone' },
 	'/auth/callback/institution': open,

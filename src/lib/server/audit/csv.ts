@@ -10,6 +10,7 @@ const HEADS = [
 	'action',
 	'objectType',
 	'objectId',
+	'objectName',
 	'fromState',
 	'toState',
 	'details',

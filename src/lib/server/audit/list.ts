@@ -5,6 +5,7 @@ import { database } from '../db/client.ts';
 import { auditEntry } from '../db/schema/audit.ts';
 import { person } from '../db/schema/people.ts';
 import { namesOf } from '../people/names.ts';
+import { objectNames } from './object-names.ts';
 
 /** Reading the trail: newest first, by who, what, on which object and when. */
 
@@ -20,6 +21,7 @@ export const auditFilter = z.object({
 		.max(60)
 		.regex(/^[a-z.-]*$/, 'an action reads version.publish')
 		.default(''),
+	/** Its number, as the trail has it. */
 	objectId: z.string().trim().max(200).default(''),
 	from: z.union([z.literal(''), day]).default(''),
 	to: z.union([z.literal(''), day]).default('')
@@ -34,6 +36,8 @@ export interface AuditLine {
 	action: string;
 	objectType: string;
 	objectId: string;
+	/** What the object is called today; null where it has no name or is gone. */
+	objectName: string | null;
 	fromState: string | null;
 	toState: string | null;
 	details: Record<string, unknown>;
@@ -57,7 +61,10 @@ export async function list(
 		.orderBy(desc(auditEntry.id))
 		.limit(limit + 1);
 	const shown = page(rows, limit, (row) => row.id);
-	const names = await namesOf(shown.rows.map(({ actor }) => actor));
+	const [names, objects] = await Promise.all([
+		namesOf(shown.rows.map(({ actor }) => actor)),
+		objectNames(shown.rows)
+	]);
 	return {
 		entries: shown.rows.map((row) => ({
 			id: row.id,
@@ -67,6 +74,7 @@ export async function list(
 			action: row.action,
 			objectType: row.objectType,
 			objectId: row.objectId,
+			objectName: objects.get(row.objectId) ?? null,
 			fromState: row.fromState,
 			toState: row.toState,
 			details: row.details,
