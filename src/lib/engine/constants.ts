@@ -14,6 +14,8 @@ export const BOLTZMANN = 1.380649e-23;
 export const SPEED_OF_LIGHT = 299792458;
 /** C, exact. */
 export const ELEMENTARY_CHARGE = 1.602176634e-19;
+/** 1/mol, exact. */
+export const AVOGADRO = 6.02214076e23;
 /** F/m, CODATA 2022: 8.8541878188(14)e-12. Enters dc conductivities and electrostatics only. */
 export const VACUUM_PERMITTIVITY = 8.8541878188e-12;
 /** Riemann zeta(3). */

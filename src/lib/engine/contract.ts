@@ -53,8 +53,11 @@ export type PermeabilityModel =
 	| { kind: 'staticOnly'; value: number }
 	| { kind: 'debye'; value: number; relaxationTimePs: number };
 
-/** How the n = 0 term of a conductor is taken; touches no other term. */
-export type ZeroFrequencyRule = 'drude' | 'plasma' | 'ideal';
+/**
+ * How the n = 0 term of a material is taken; touches no other term. `dcCounted` lets a dielectric conduct at zero
+ * frequency, `dcIgnored` leaves out the dc conductivity that a model states.
+ */
+export type ZeroFrequencyRule = 'drude' | 'plasma' | 'ideal' | 'dcCounted' | 'dcIgnored';
 
 export interface MaterialModel {
 	permittivity: PermittivityModel;
@@ -76,6 +79,25 @@ export type Shape =
 	| { kind: 'cylinderPlate'; radiusUm: number }
 	| { kind: 'parallelCylinders'; leftRadiusUm: number; rightRadiusUm: number };
 
+/** A z:z electrolyte in the medium; without `staticPermittivity` that of the medium's own model counts. */
+export interface Salt {
+	molPerL: number;
+	valence: number;
+	staticPermittivity?: number;
+}
+
+/** What mobile ions of the medium do to the n = 0 TM term: nothing, screen it, or take it away altogether. */
+export type IonTreatment = 'full' | 'screened' | 'off';
+
+/** Heights of one surface about its mean plane, positive into the gap. */
+export type Heights =
+	{ kind: 'rms'; rmsNm: number } | { kind: 'histogram'; heightsNm: number[]; weights: number[] };
+
+export interface Roughness {
+	left?: Heights;
+	right?: Heights;
+}
+
 export interface ArrangementOf<M> {
 	left: BodyOf<M>;
 	medium: M;
@@ -83,11 +105,16 @@ export interface ArrangementOf<M> {
 	shape: Shape;
 	temperatureK: number;
 	debyeLengthNm?: number;
+	/** Instead of `debyeLengthNm`. */
+	salt?: Salt;
+	/** Where it is left out: `screened` with a Debye length or a salt, else `full`. */
+	ions?: IonTreatment;
+	roughness?: Roughness;
 }
 
 export type Separations = number[] | { from: number; to: number; count: number; spacing: 'log' | 'linear' };
 
-export type Extra = 'breakdown';
+export type Extra = 'breakdown' | 'analysis';
 
 export interface ForceRequestOf<M> {
 	arrangement: ArrangementOf<M>;
@@ -131,6 +158,27 @@ export interface ForcePoint {
 	met: boolean;
 	why?: string;
 	breakdown?: Breakdown;
+	analysis?: PointAnalysis;
+}
+
+/** A figure with a bound on its own error, relative to its magnitude. */
+export interface BoundedFigure {
+	value: number;
+	errorBound: number;
+}
+
+/** What is read off free energy, pressure and gradient of the plates at one separation; nothing is fitted. */
+export interface PointAnalysis {
+	/** Effective Hamaker coefficients in J: -12 pi d^2 F and -6 pi d^3 P; they part where retardation sets in. */
+	hamakerFromFreeEnergyJ: BoundedFigure;
+	hamakerFromPressureJ: BoundedFigure;
+	/** d ln|F|/d ln d = -d P/F and d ln|P|/d ln d = d G/P; absent where the divisor is not known from zero. */
+	freeEnergyExponent?: BoundedFigure;
+	pressureExponent?: BoundedFigure;
+	/** To two ideal conductors across vacuum at T = 0. */
+	ratioToIdeal: { freeEnergy: BoundedFigure; pressure: BoundedFigure; pressureGradient: BoundedFigure };
+	/** To the same bodies with smooth surfaces; only where roughness is stated. */
+	roughnessFactor?: { freeEnergy: BoundedFigure; pressure: BoundedFigure; pressureGradient: BoundedFigure };
 }
 
 export interface Equilibrium {
@@ -145,7 +193,18 @@ export interface Warning {
 	text: string;
 }
 
-export interface ForceAnswer {
+/** The Hamaker coefficient that the arrangement tends to at short separations, or why there is none. */
+export interface NonRetardedLimit {
+	hamakerJ?: BoundedFigure;
+	why?: string;
+}
+
+/** What belongs to the arrangement and to no single separation; present where it was asked for. */
+export interface WholeAnalysis {
+	nonRetarded?: NonRetardedLimit;
+}
+
+export interface ForceAnswer extends WholeAnalysis {
 	engine: string;
 	points: ForcePoint[];
 	equilibria: Equilibrium[];

@@ -2,6 +2,7 @@ import type { ForceRequest, PermittivityModel } from './contract.ts';
 import { LEVELS } from './lifshitz/level.ts';
 import { matsubaraFrequency } from './lifshitz/matsubara.ts';
 import { SPEED_OF_LIGHT } from './constants.ts';
+import { roughnessNodes } from './shapes/roughness.ts';
 import { metresFromNm } from './units.ts';
 
 /** Seconds for one integrand of two half-spaces, for one layer more, and for one row of a table at one frequency. */
@@ -62,8 +63,9 @@ export function estimateCost(request: ForceRequest): Cost {
 			: OCTAVES_ABOVE + OCTAVES_BELOW[index];
 	const knots = materials.reduce((sum, { permittivity }) => sum + knotsOf(permittivity), 0);
 	const frequencies = level.direct + level.nodes * (octaves + knots);
+	const rough = roughnessNodes(arrangement.roughness);
 	const line = arrangement.shape.kind === 'cylinderPlate' || arrangement.shape.kind === 'parallelCylinders';
-	const evaluations = count * (line ? LINE_NODES : 1) * frequencies * NODES[index];
+	const evaluations = count * (line ? LINE_NODES : 1) * rough * frequencies * NODES[index];
 	const rows = materials.reduce((sum, { permittivity }) => sum + rowsOf(permittivity), 0);
 	const seconds =
 		evaluations * (SECONDS_AN_EVALUATION + SECONDS_A_LAYER * layers) + frequencies * rows * SECONDS_A_ROW;

@@ -6,6 +6,8 @@ export { Refusal, type Issue } from './refusal.ts';
 export { evaluate, prepare, type Preparation } from './prepare.ts';
 export { estimateCost, type Cost } from './cost.ts';
 export { separationsOf } from './validate.ts';
+export { debyeLength } from './ions.ts';
+export { closestSeparationNm } from './shapes/roughness.ts';
 export { matsubaraFrequency } from './lifshitz/matsubara.ts';
 export { permittivityOnImaginaryAxis, permittivityOnRealAxis } from './permittivity/evaluator.ts';
 export { permittivityIssues } from './validate-permittivity.ts';

@@ -6,11 +6,15 @@ import type {
 	ForcePoint,
 	ForceRequest,
 	Parts,
-	Warning
+	Warning,
+	WholeAnalysis
 } from './contract.ts';
 import { plates, type PlateForces } from './lifshitz/plates.ts';
+import { nonRetardedLimit } from './analysis/non-retarded.ts';
+import { pointAnalysis } from './analysis/point-analysis.ts';
 import { lineForces } from './shapes/cylinder.ts';
 import { shapeError, shapeRule, type ShapeRule } from './shapes/proximity.ts';
+import { ROUGHNESS_SHARE, roughPlates } from './shapes/roughness.ts';
 import { systemOf } from './system.ts';
 import { metresFromNm } from './units.ts';
 import { checkRequest, separationsOf } from './validate.ts';
@@ -25,6 +29,8 @@ export interface Preparation {
 	/** Separations where the pressure of the plates vanishes, between the given points. */
 	equilibria(points: readonly ForcePoint[]): Equilibrium[];
 	warnings(points: readonly ForcePoint[]): Warning[];
+	/** What was asked for about the arrangement as a whole. */
+	whole(): WholeAnalysis;
 }
 
 /** Plates below a curved shape are computed finer, so that their bound leaves room for the shape's own integral. */
@@ -41,11 +47,12 @@ export function prepare(request: ForceRequest): Preparation {
 	const { relativeAccuracy, include, arrangement } = request;
 	const system = systemOf(request);
 	const rule = shapeRule(arrangement.shape);
-	const evaluatePlates = plates(
-		system,
-		rule.kind === 'line' ? LINE_SHARE * relativeAccuracy : relativeAccuracy
-	);
+	const { roughness } = arrangement;
+	const platesAccuracy = rule.kind === 'line' ? LINE_SHARE * relativeAccuracy : relativeAccuracy;
+	const smooth = plates(system, roughness ? ROUGHNESS_SHARE * platesAccuracy : platesAccuracy);
+	const evaluatePlates = roughness ? roughPlates(smooth, roughness, platesAccuracy) : smooth;
 	const breakdown = include.includes('breakdown');
+	const analysis = include.includes('analysis');
 	return {
 		separationsNm,
 		point: (index) => {
@@ -82,10 +89,14 @@ export function prepare(request: ForceRequest): Preparation {
 				...(estimate === undefined ? {} : { shapeError: estimate }),
 				met,
 				...(met ? {} : { why: whyNot(forces, relativeAccuracy, lineError) }),
-				...(breakdown ? { breakdown: breakdownOf(forces) } : {})
+				...(breakdown ? { breakdown: breakdownOf(forces) } : {}),
+				...(analysis
+					? { analysis: pointAnalysis(separation, forces, roughness ? smooth(separation) : null) }
+					: {})
 			};
 		},
 		equilibria: (points) => equilibriaBetween(points, evaluatePlates),
+		whole: () => (analysis ? { nonRetarded: nonRetardedLimit(system) } : {}),
 		warnings: (points) => warningsFor(request, points)
 	};
 }
@@ -103,7 +114,8 @@ export function evaluate(request: ForceRequest): ForceAnswer {
 		engine: ENGINE_VERSION,
 		points,
 		equilibria: preparation.equilibria(points),
-		warnings: preparation.warnings(points)
+		warnings: preparation.warnings(points),
+		...preparation.whole()
 	};
 }
 

@@ -1,9 +1,10 @@
 import { SPEED_OF_LIGHT } from './constants.ts';
-import type { ForceRequest, MaterialModel } from './contract.ts';
+import type { ForceRequest, IonTreatment, MaterialModel } from './contract.ts';
 import { susceptibility } from './permittivity/evaluator.ts';
 import { NO_STATIC_LIMIT, type Susceptibility } from './permittivity/susceptibility.ts';
 import { permeability, type Permeability } from './permeability.ts';
 import { zeroFrequencyMaterial, type ZeroFrequencyMaterial } from './reflection/zero-frequency.ts';
+import { debyeLength } from './ions.ts';
 import { metresFromNm } from './units.ts';
 
 /** A substance at n >= 1: what is shared by all places where it occurs. */
@@ -37,7 +38,8 @@ export interface System {
 	magnetic: boolean;
 	/** K. */
 	temperature: number;
-	/** 1/m; null without mobile ions. */
+	ions: IonTreatment;
+	/** 1/m; null where no ions screen. */
 	screening: number | null;
 	/** rad/s, where some permittivity is not analytic. */
 	knots: number[];
@@ -46,7 +48,7 @@ export interface System {
 /** `system` of a checked request: conversion of the contract to SI happens here and nowhere else. */
 export function systemOf(request: ForceRequest): System {
 	const { arrangement } = request;
-	const { medium, temperatureK, debyeLengthNm } = arrangement;
+	const { medium, temperatureK } = arrangement;
 	const substances: Substance[] = [];
 	const known = new Map<string, number>();
 	const indexOf = ({ permittivity, permeability: magnetic }: MaterialModel): number => {
@@ -66,8 +68,9 @@ export function systemOf(request: ForceRequest): System {
 		);
 	};
 	indexOf(medium);
-	const screening = debyeLengthNm === undefined ? null : 1 / metresFromNm(debyeLengthNm);
-	const mediumAtZero = screening === null ? atZero(medium) : withoutCarriers(substances[0]);
+	const ions = ionTreatment(arrangement);
+	const screening = ions === 'screened' ? 1 / screeningLength(arrangement, substances[0]) : null;
+	const mediumAtZero = ionsStated(arrangement) ? withoutCarriers(substances[0]) : atZero(medium);
 	const bodyOf = ({ layers, substrate }: ForceRequest['arrangement']['left']): Body => {
 		const materials = [...layers.map((layer) => layer.of), substrate];
 		const end = materials.findIndex(({ permittivity }) => permittivity.kind === 'idealConductor');
@@ -92,9 +95,32 @@ export function systemOf(request: ForceRequest): System {
 		twins: JSON.stringify([left.places, left.thickness]) === JSON.stringify([right.places, right.thickness]),
 		magnetic: substances.some(({ mu }) => !mu.one),
 		temperature: temperatureK,
+		ions,
 		screening,
 		knots: [...new Set(substances.flatMap(({ chi }) => chi?.knots ?? []))].sort((a, b) => a - b)
 	};
+}
+
+/** A length, a salt or a treatment says that ions are what conducts in the medium. */
+export const ionsStated = ({ debyeLengthNm, salt, ions }: ForceRequest['arrangement']): boolean =>
+	debyeLengthNm !== undefined || salt !== undefined || ions !== undefined;
+
+export const ionTreatment = ({ debyeLengthNm, salt, ions }: ForceRequest['arrangement']): IonTreatment =>
+	ions ?? (debyeLengthNm === undefined && salt === undefined ? 'full' : 'screened');
+
+/** Debye length in m, given or from the salt. */
+function screeningLength(
+	{ debyeLengthNm, salt, temperatureK }: ForceRequest['arrangement'],
+	{ chi }: Substance
+): number {
+	if (debyeLengthNm !== undefined) return metresFromNm(debyeLengthNm);
+	if (salt === undefined) throw new RangeError('screened by ions of unknown concentration');
+	return debyeLength(
+		salt.molPerL,
+		salt.valence,
+		temperatureK,
+		salt.staticPermittivity ?? 1 + (chi?.atZero.finite ?? 0)
+	);
 }
 
 /** Ions are stated by their Debye length: what conducts in the model of the medium is those same ions. */

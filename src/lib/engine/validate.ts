@@ -3,7 +3,10 @@ import { ENGINE_LIMITS as limits } from './limits.ts';
 import { susceptibility } from './permittivity/evaluator.ts';
 import { conducts } from './permittivity/susceptibility.ts';
 import { Refusal, type Issue } from './refusal.ts';
+import { ionsStated } from './system.ts';
 import { checkRange } from './validate-number.ts';
+import { checkIons } from './validate-ions.ts';
+import { checkRoughness } from './validate-roughness.ts';
 import { permittivityIssues } from './validate-permittivity.ts';
 
 /**
@@ -39,6 +42,7 @@ export function checkRequest(request: ForceRequest): void {
 		checkRange(issues, 'arrangement.temperatureK', arrangement.temperatureK, limits.temperatureK, 'K (or 0)');
 	}
 	checkMedium(issues, request);
+	checkRoughness(issues, request, separationsOf);
 	if (issues.length > 0) throw new Refusal(issues);
 }
 
@@ -99,6 +103,22 @@ function checkMaterial(issues: Issue[], path: string, material: MaterialModel): 
 		return null;
 	}
 	const { atZero } = susceptibility(material.permittivity);
+	if (rule === 'dcCounted') {
+		if (conducts(atZero))
+			issues.push({
+				path: `${path}.zeroFrequency`,
+				message: 'is "dcCounted" on a material that conducts already: leave it out'
+			});
+		return true;
+	}
+	if (rule === 'dcIgnored') {
+		if (atZero.slope > 0 && atZero.plasmaSquared === 0) return false;
+		issues.push({
+			path: `${path}.zeroFrequency`,
+			message: 'is "dcIgnored" on a material without a dc conductivity of its own: leave it out'
+		});
+		return conducts(atZero);
+	}
 	if (rule !== undefined && !conducts(atZero)) {
 		issues.push({
 			path: `${path}.zeroFrequency`,
@@ -131,17 +151,9 @@ function checkPermeability(
 }
 
 function checkMedium(issues: Issue[], { arrangement }: ForceRequest): void {
-	const { medium, debyeLengthNm, temperatureK } = arrangement;
+	const { medium, temperatureK } = arrangement;
 	const path = 'arrangement.medium';
-	if (debyeLengthNm !== undefined) {
-		checkRange(issues, 'arrangement.debyeLengthNm', debyeLengthNm, limits.debyeLengthNm, 'nm');
-		if (temperatureK === 0) {
-			issues.push({
-				path: 'arrangement.debyeLengthNm',
-				message: 'mobile ions need a temperature above 0 K: leave it out'
-			});
-		}
-	}
+	checkIons(issues, arrangement);
 	if (medium.permittivity.kind === 'idealConductor') {
 		issues.push({
 			path: `${path}.permittivity`,
@@ -150,17 +162,41 @@ function checkMedium(issues: Issue[], { arrangement }: ForceRequest): void {
 		return;
 	}
 	const conducting = checkMaterial(issues, path, medium);
+	if (conducting && !ionsStated(arrangement)) checkCountedBodies(issues, arrangement);
+	if (medium.zeroFrequency === 'dcCounted') {
+		issues.push({
+			path: `${path}.zeroFrequency`,
+			message: 'what conducts in a medium are ions: state debyeLengthNm, salt or ions instead'
+		});
+	}
 	if (medium.zeroFrequency === 'ideal') {
 		issues.push({
 			path: `${path}.zeroFrequency`,
 			message: 'an ideally conducting medium carries no waves: use "drude" or "plasma"'
 		});
 	}
-	if (conducting && temperatureK > 0 && medium.zeroFrequency === undefined && debyeLengthNm === undefined) {
+	if (conducting && temperatureK > 0 && medium.zeroFrequency === undefined && !ionsStated(arrangement)) {
 		issues.push({
 			path: `${path}.zeroFrequency`,
-			message: 'the medium conducts: state zeroFrequency for it, or debyeLengthNm if ions conduct'
+			message:
+				'the medium conducts: state zeroFrequency for it, or debyeLengthNm, salt or ions if ions conduct'
 		});
+	}
+}
+
+/** How well a counted dielectric conducts is not stated: against a conducting medium its reflection is not known. */
+function checkCountedBodies(issues: Issue[], arrangement: ForceRequest['arrangement']): void {
+	for (const side of ['left', 'right'] as const) {
+		const { layers, substrate } = arrangement[side];
+		const path = `arrangement.${side}`;
+		const places = [...layers.map(({ of }, i) => ({ of, at: `${path}.layers[${i}].of` }))];
+		for (const { of, at } of [...places, { of: substrate, at: `${path}.substrate` }])
+			if (of.zeroFrequency === 'dcCounted')
+				issues.push({
+					path: `${at}.zeroFrequency`,
+					message:
+						'is "dcCounted" in a medium that conducts too: give its model a dcConductivity part instead'
+				});
 	}
 }
 

@@ -2,6 +2,7 @@ import type {
 	BodyOf,
 	ForcePoint,
 	ForceRequest,
+	Heights,
 	MaterialModel,
 	PermittivityModel,
 	Warning
@@ -10,6 +11,8 @@ import { matsubaraFrequency } from './lifshitz/matsubara.ts';
 import { ENGINE_LIMITS } from './limits.ts';
 import { susceptibility } from './permittivity/evaluator.ts';
 import { conducts } from './permittivity/susceptibility.ts';
+import { closestSeparationNm } from './shapes/roughness.ts';
+import { ionsStated, ionTreatment } from './system.ts';
 import { epsilonShares, type TableModel } from './permittivity/table.ts';
 
 /** d/R above which the proximity approximation is worse than the percent level, and where it stops being one. */
@@ -37,6 +40,7 @@ export function warningsFor(request: ForceRequest, points: readonly ForcePoint[]
 	return [
 		...belowContinuum(points),
 		...curvature(request, points),
+		...roughness(request),
 		...notMet(points),
 		...reliance(places, arrangement.temperatureK),
 		...imaginaryReach(places, arrangement.temperatureK),
@@ -77,6 +81,19 @@ function curvature({ arrangement: { shape } }: ForceRequest, points: readonly Fo
 			? `d/R reaches ${largest.toPrecision(2)}: beyond ${TOO_CURVED} the proximity approximation is no prediction.`
 			: `d/R reaches ${largest.toPrecision(2)}: the proximity approximation is off by more than a percent there.`;
 	return [{ code: 'curvature', text }];
+}
+
+function roughness({ arrangement }: ForceRequest): Warning[] {
+	if (arrangement.roughness === undefined) return [];
+	const cut = Object.values(arrangement.roughness).some((heights: Heights) => heights.kind === 'rms')
+		? ' An rms stands for a normal distribution cut at six standard deviations: 2e-9 of it is left out.'
+		: '';
+	return [
+		{
+			code: 'roughness',
+			text: `Averaged over heights, which holds for roughness that is long beside the separation; shorter correlation raises the correction. Refused below ${closestSeparationNm(arrangement.roughness).toPrecision(3)} nm.${cut}`
+		}
+	];
 }
 
 function notMet(points: readonly ForcePoint[]): Warning[] {
@@ -148,8 +165,10 @@ function neverFalling(places: Place[]): Warning[] {
 
 function zeroFrequency({ arrangement }: ForceRequest, places: Place[]): Warning[] {
 	const warnings: Warning[] = [];
-	const conducting = places.filter(({ material: { permittivity } }) =>
-		permittivity.kind === 'idealConductor' ? false : conducts(susceptibility(permittivity).atZero)
+	const conducting = places.filter(({ material: { permittivity, zeroFrequency } }) =>
+		permittivity.kind === 'idealConductor' || zeroFrequency === 'dcIgnored'
+			? false
+			: zeroFrequency === 'dcCounted' || conducts(susceptibility(permittivity).atZero)
 	);
 	const bodies = conducting.filter(({ name }) => name !== 'medium');
 	const unstated = bodies.filter(({ material }) => material.zeroFrequency === undefined);
@@ -162,6 +181,7 @@ function zeroFrequency({ arrangement }: ForceRequest, places: Place[]): Warning[
 	}
 	const films = bodies.filter(
 		({ material, thicknessNm }) =>
+			material.zeroFrequency !== 'dcCounted' &&
 			thicknessNm !== undefined &&
 			thicknessNm < FILM_NM &&
 			susceptibilityOf(material).square === 0 &&
@@ -182,12 +202,18 @@ function zeroFrequency({ arrangement }: ForceRequest, places: Place[]): Warning[
 			text: `The dc conductivity of ${names} makes its n = 0 reflection that of a metal; whether to include it is a physical decision.`
 		});
 	}
-	if (arrangement.debyeLengthNm !== undefined) {
+	const ions = ionTreatment(arrangement);
+	if (ions === 'off') {
+		warnings.push({
+			code: 'ionic-screening',
+			text: 'The n = 0 TM term is left out, as if ions screened it at every separation.'
+		});
+	} else if (ions === 'screened') {
 		warnings.push({
 			code: 'ionic-screening',
 			text: 'Ions screen the n = 0 TM term in a local description; a non-local one predicts an additional part that is not screened.'
 		});
-	} else if (conducting.some(({ name }) => name === 'medium')) {
+	} else if (!ionsStated(arrangement) && conducting.some(({ name }) => name === 'medium')) {
 		warnings.push({
 			code: 'conducting-medium',
 			text: 'The medium conducts: its n = 0 term follows the stated rule without screening by ions.'

@@ -6,6 +6,31 @@ const parts = z
 	.object({ zeroTe: z.number(), zeroTm: z.number(), te: z.number(), tm: z.number() })
 	.meta({ id: 'Parts', description: 'Add up to the total; te and tm are all terms n >= 1' });
 
+const bounded = z
+	.object({ value: z.number(), errorBound: z.number() })
+	.meta({ id: 'BoundedFigure', description: 'errorBound is relative to the magnitude of the value' });
+
+const ofEach = z.object({ freeEnergy: bounded, pressure: bounded, pressureGradient: bounded });
+
+const pointAnalysis = z
+	.object({
+		hamakerFromFreeEnergyJ: bounded.meta({ description: '-12 pi d^2 F' }),
+		hamakerFromPressureJ: bounded.meta({ description: '-6 pi d^3 P' }),
+		freeEnergyExponent: bounded.optional().meta({ description: 'd ln|F|/d ln d' }),
+		pressureExponent: bounded.optional().meta({ description: 'd ln|P|/d ln d' }),
+		ratioToIdeal: ofEach.meta({ description: 'to ideal conductors across vacuum at T = 0' }),
+		roughnessFactor: ofEach.optional().meta({ description: 'to the same bodies with smooth surfaces' })
+	})
+	.meta({ id: 'PointAnalysis' });
+
+/** What belongs to the arrangement as a whole. */
+export const wholeAnalysis = z.object({
+	nonRetarded: z
+		.object({ hamakerJ: bounded.optional(), why: z.string().optional() })
+		.optional()
+		.meta({ description: 'non-retarded Hamaker coefficient, or why there is none' })
+});
+
 export const forcePoint = z
 	.object({
 		separationNm: z.number(),
@@ -25,7 +50,8 @@ export const forcePoint = z
 		why: z.string().optional(),
 		breakdown: z
 			.object({ freeEnergyJPerM2: parts, pressurePa: parts, pressureGradientPaPerM: parts })
-			.optional()
+			.optional(),
+		analysis: pointAnalysis.optional()
 	})
 	.meta({ id: 'ForcePoint' });
 
@@ -44,7 +70,8 @@ export const forceAnswer = z
 		inputChecksum: z.string().regex(/^sha256:[0-9a-f]{64}$/),
 		points: z.array(forcePoint),
 		equilibria: z.array(equilibrium),
-		warnings: z.array(warning)
+		warnings: z.array(warning),
+		...wholeAnalysis.shape
 	})
 	.meta({ id: 'ForceAnswer' });
 

@@ -9,6 +9,9 @@ export const FORCE_DEFAULTS = { relativeAccuracy: 1e-6, temperatureK: 300 } as c
 
 export const SEPARATIONS_MAX = 2000;
 export const LAYERS_MAX = 40;
+export const HEIGHT_BINS_MAX = 200;
+/** Optional parts of an answer. */
+export const EXTRAS = ['breakdown', 'analysis'] as const;
 
 export const versionRef = z
 	.string()
@@ -16,7 +19,9 @@ export const versionRef = z
 	.regex(/^[a-z0-9]+(-[a-z0-9]+)*@\d+\.\d+$/, 'a version is named slug@major.minor, as gold-drude@1.0')
 	.meta({ id: 'VersionRef', example: 'gold-drude@1.0' });
 
-export const zeroFrequencyRule = z.enum(['drude', 'plasma', 'ideal']).meta({ id: 'ZeroFrequencyRule' });
+export const zeroFrequencyRule = z
+	.enum(['drude', 'plasma', 'ideal', 'dcCounted', 'dcIgnored'])
+	.meta({ id: 'ZeroFrequencyRule' });
 
 const pinned = z.strictObject({ version: versionRef, zeroFrequency: zeroFrequencyRule.optional() });
 const inPlace = z.strictObject({
@@ -75,13 +80,40 @@ export const shape = z
 	])
 	.meta({ id: 'Shape' });
 
+export const salt = z
+	.strictObject({
+		molPerL: z.number().positive(),
+		valence: z.int().positive(),
+		staticPermittivity: z.number().min(1).optional()
+	})
+	.meta({ id: 'Salt', description: 'z:z electrolyte in the medium, instead of debyeLengthNm' });
+
+export const ionTreatment = z.enum(['full', 'screened', 'off']).meta({
+	id: 'IonTreatment',
+	description: 'what mobile ions do to the n = 0 TM term: nothing, screen it, take it away'
+});
+
+export const heights = z
+	.discriminatedUnion('kind', [
+		z.strictObject({ kind: z.literal('rms'), rmsNm: z.number().nonnegative() }),
+		z.strictObject({
+			kind: z.literal('histogram'),
+			heightsNm: z.array(z.number()).min(1).max(HEIGHT_BINS_MAX),
+			weights: z.array(z.number().nonnegative()).min(1).max(HEIGHT_BINS_MAX)
+		})
+	])
+	.meta({ id: 'Heights', description: 'about the mean plane, positive into the gap' });
+
 export const arrangement = z.strictObject({
 	left: body,
 	medium: materialChoice,
 	right: body,
 	shape: shape.default({ kind: 'plates' }),
 	temperatureK: z.number().nonnegative().default(FORCE_DEFAULTS.temperatureK),
-	debyeLengthNm: lengthNm.optional()
+	debyeLengthNm: lengthNm.optional(),
+	salt: salt.optional(),
+	ions: ionTreatment.optional(),
+	roughness: z.strictObject({ left: heights.optional(), right: heights.optional() }).optional()
 });
 
 export const separations = z.union([
@@ -98,10 +130,7 @@ export const forceRequest = z.strictObject({
 	arrangement,
 	separationsNm: separations,
 	relativeAccuracy: z.number().min(1e-11).max(1e-3).default(FORCE_DEFAULTS.relativeAccuracy),
-	include: z
-		.array(z.enum(['breakdown']))
-		.max(1)
-		.default([])
+	include: z.array(z.enum(EXTRAS)).max(EXTRAS.length).default([])
 });
 
 /** As it comes in, defaults still open. */

@@ -58,7 +58,7 @@ function decodeMaterial(text: string): SlotMaterial | string {
 	const parsed = zeroFrequencyRule.safeParse(ruleText);
 	return parsed.success
 		? { version, zeroFrequency: parsed.data }
-		: `"${ruleText}" is not drude, plasma or ideal`;
+		: `"${ruleText}" is not drude, plasma, ideal, dcCounted or dcIgnored`;
 }
 
 function decodeThickness(text: string): number | undefined {

@@ -1,7 +1,7 @@
 import type { PermittivityModel, ZeroFrequencyRule } from '../../engine/contract.ts';
 
 /** What the static term of a material is where the arrangement says nothing: the limit of its model as written. */
-export type StaticLimit = ZeroFrequencyRule | 'finite';
+export type StaticLimit = Exclude<ZeroFrequencyRule, 'dcCounted' | 'dcIgnored'> | 'finite';
 
 const RANK: readonly StaticLimit[] = ['finite', 'plasma', 'drude', 'ideal'];
 
@@ -35,8 +35,17 @@ export function staticLimit(model: PermittivityModel): StaticLimit {
 	}
 }
 
+/**
+ * Rules that may stand at a place: a conductor's prescriptions, or for a dielectric whether its dc conductivity counts. In the
+ * medium ions are what conducts, and those are stated with the conditions.
+ */
+export function rulesFor(limit: StaticLimit, slot: string): ZeroFrequencyRule[] {
+	if (limit !== 'finite') return ['drude', 'plasma', 'ideal'];
+	return slot === 'medium' ? [] : ['dcCounted'];
+}
+
 /** The rule in words; "as written" is never left unsaid. */
-export function ruleWords(limit: StaticLimit): string {
+export function ruleWords(limit: StaticLimit | ZeroFrequencyRule): string {
 	switch (limit) {
 		case 'drude':
 			return 'Drude';
@@ -46,5 +55,9 @@ export function ruleWords(limit: StaticLimit): string {
 			return 'ideal conductor';
 		case 'finite':
 			return 'finite';
+		case 'dcCounted':
+			return 'dc conductivity counted';
+		case 'dcIgnored':
+			return 'dc conductivity left out';
 	}
 }

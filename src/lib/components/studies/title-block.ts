@@ -50,7 +50,7 @@ export function conductionWords(
 	const words = slotsOf(study).flatMap((slot) => {
 		const material = materialIn(study, choice, slot);
 		const known = material && facts[material.version];
-		if (!material || !known || known.staticLimit === 'finite') return [];
+		if (!material || !known || (known.staticLimit === 'finite' && !material.zeroFrequency)) return [];
 		const rule = material.zeroFrequency;
 		return [
 			`${known.material.name}: ${ruleWords(rule ?? known.staticLimit)}${rule ? ', chosen' : ', as the model is written'}`

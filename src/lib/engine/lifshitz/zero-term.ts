@@ -26,7 +26,7 @@ const ROUNDING = 24;
 
 /** The n = 0 term of a system (methods.md section 2), with the half weight of the primed sum. */
 export function zeroTerm(system: System, level: Level): (separation: number, tally: Tally) => void {
-	const { left, right, screening } = system;
+	const { left, right, screening, ions } = system;
 	const medium = left.zero[0];
 	const latticesTo = (floor: number): LogLattice[] =>
 		[0, 1 / 2].map((shift) => logLattice(level.step, NO_DISC, level.cut, floor, shift));
@@ -107,7 +107,9 @@ export function zeroTerm(system: System, level: Level): (separation: number, tal
 	};
 
 	return (separation, tally) => {
-		if (bare && !carriers && screening === null) closed('tm', tally);
+		if (ions === 'off') {
+			// Screened away altogether: the electric term has no static part left.
+		} else if (bare && !carriers && screening === null) closed('tm', tally);
 		else numeric('tm', separation, tally);
 		if (silent) return;
 		if (bare && !carriers) closed('te', tally);

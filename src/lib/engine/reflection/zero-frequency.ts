@@ -19,7 +19,8 @@ export interface ZeroFrequencyMaterial {
 
 /**
  * The zero-frequency rule of one material: the limit of the model as written, or what is stated instead. `drude` drops
- * the TE reflection, `plasma` the dampings, `ideal` makes an ideal conductor.
+ * the TE reflection, `plasma` the dampings, `ideal` makes an ideal conductor; `dcCounted` makes a dielectric conduct (how well
+ * does not matter: against matter that does not conduct TM reflects wholly), `dcIgnored` keeps a conducting model from it.
  */
 export function zeroFrequencyMaterial(
 	limit: StaticLimit,
@@ -30,6 +31,8 @@ export function zeroFrequencyMaterial(
 	if (rule === 'ideal') return { order: 0, amplitude: 0, square: 0, mu: 1, ideal: true };
 	if (rule === 'plasma')
 		return { order: 2, amplitude: plasmaSquared, square: plasmaSquared, mu, ideal: false };
+	if (rule === 'dcCounted') return { order: 1, amplitude: 1, square: 0, mu, ideal: false };
+	if (rule === 'dcIgnored') return { order: 0, amplitude: finite, square: 0, mu, ideal: false };
 	if (rule === 'drude')
 		return { order: 1, amplitude: slope > 0 ? slope : square, square: 0, mu, ideal: false };
 	if (square > 0) return { order: 2, amplitude: square, square, mu, ideal: false };

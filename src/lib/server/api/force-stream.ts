@@ -57,7 +57,8 @@ export async function streamLines(head: Head, run: Run, gone: AbortSignal): Prom
 			},
 			signal
 		).then(
-			({ equilibria, warnings }) => tell({ type: 'end', equilibria, warnings }),
+			({ equilibria, warnings, nonRetarded }) =>
+				tell({ type: 'end', equilibria, warnings, ...(nonRetarded ? { nonRetarded } : {}) }),
 			(error: unknown) => {
 				if (!started) refused(error);
 				else if (!signal.aborted) tell({ type: 'error', error: problemOf(error).error });

@@ -1,6 +1,13 @@
 import { z } from 'zod';
 import type { ZodOpenApiPathsObject } from 'zod-openapi';
-import { equilibrium, errorAnswer, forceAnswer, forcePoint, warning } from '../../schemas/force-answer.ts';
+import {
+	equilibrium,
+	errorAnswer,
+	forceAnswer,
+	forcePoint,
+	warning,
+	wholeAnalysis
+} from '../../schemas/force-answer.ts';
 import { forceRequest } from '../../schemas/force.ts';
 import { resolvedVersion } from '../../schemas/version.ts';
 import { json, problems } from './openapi-answers.ts';
@@ -34,7 +41,12 @@ export const forceLine = z
 			indices: z.array(z.int()).meta({ description: 'into separationsNm; coarse to fine' }),
 			points: z.array(forcePoint)
 		}),
-		z.object({ type: z.literal('end'), equilibria: z.array(equilibrium), warnings: z.array(warning) }),
+		z.object({
+			type: z.literal('end'),
+			equilibria: z.array(equilibrium),
+			warnings: z.array(warning),
+			...wholeAnalysis.shape
+		}),
 		errorAnswer.extend({ type: z.literal('error') })
 	])
 	.meta({ id: 'ForceLine' });

@@ -101,12 +101,12 @@ export async function runForces(
 	progress: Progress,
 	signal: AbortSignal
 ): Promise<ForceResult> {
-	const { separationsNm, points, equilibria, warnings } = await cache.get(
+	const { separationsNm, points, ...end } = await cache.get(
 		cacheKey(plan),
 		(inner, innerSignal) => enginePool().run(plan.request, inner, innerSignal),
 		progress,
 		signal
 	);
 	const { engine, runtime, inputChecksum, versions } = plan;
-	return { engine, runtime, inputChecksum, versions, separationsNm, points, equilibria, warnings };
+	return { engine, runtime, inputChecksum, versions, separationsNm, points, ...end };
 }

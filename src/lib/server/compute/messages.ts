@@ -1,5 +1,5 @@
 import type { MessagePort } from 'node:worker_threads';
-import type { Equilibrium, ForcePoint, ForceRequest, Warning } from '../../engine/contract.ts';
+import type { Equilibrium, ForcePoint, ForceRequest, Warning, WholeAnalysis } from '../../engine/contract.ts';
 import type { Issue } from '../errors.ts';
 
 /** What travels between the pool and a thread. */
@@ -23,7 +23,7 @@ export interface Chunk {
 	points: ForcePoint[];
 }
 
-export interface End {
+export interface End extends WholeAnalysis {
 	equilibria: Equilibrium[];
 	warnings: Warning[];
 }

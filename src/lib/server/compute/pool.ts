@@ -101,7 +101,8 @@ export class EnginePool {
 				else if (message.type === 'points') {
 					progress.onPoints({ indices: message.indices, points: message.points });
 				} else if (message.type === 'end') {
-					fulfil({ equilibria: message.equilibria, warnings: message.warnings });
+					const { type: _, ...end } = message;
+					fulfil(end);
 				} else if (message.type === 'refused') {
 					reject(new InvalidInput('The engine cannot compute this request.', message.issues, 'refused'));
 				}

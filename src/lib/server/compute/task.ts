@@ -43,5 +43,10 @@ function compute(request: Task['request'], tell: (message: Message) => void, mus
 		}
 	}
 	flush();
-	tell({ type: 'end', equilibria: preparation.equilibria(all), warnings: preparation.warnings(all) });
+	tell({
+		type: 'end',
+		equilibria: preparation.equilibria(all),
+		warnings: preparation.warnings(all),
+		...preparation.whole()
+	});
 }
