@@ -114,7 +114,7 @@ export interface ArrangementOf<M> {
 
 export type Separations = number[] | { from: number; to: number; count: number; spacing: 'log' | 'linear' };
 
-export type Extra = 'breakdown' | 'analysis';
+export type Extra = 'breakdown' | 'analysis' | 'terms' | 'sensitivity';
 
 export interface ForceRequestOf<M> {
 	arrangement: ArrangementOf<M>;
@@ -159,6 +159,8 @@ export interface ForcePoint {
 	why?: string;
 	breakdown?: Breakdown;
 	analysis?: PointAnalysis;
+	terms?: Terms;
+	sensitivity?: Sensitivity;
 }
 
 /** A figure with a bound on its own error, relative to its magnitude. */
@@ -191,6 +193,73 @@ export interface Equilibrium {
 export interface Warning {
 	code: string;
 	text: string;
+}
+
+/** Terms n = 0..29 of a sum, n = 0 with its half weight, and all the others; `errorBound` is absolute, for each of them. */
+export interface TermSeries {
+	first: number[];
+	rest: number;
+	errorBound: number;
+}
+
+/** Of the plates with smooth surfaces; the thermal shares are (value - value at T = 0)/value, the models held fixed. */
+export interface Terms {
+	/** Absent at T = 0, where there is an integral and no terms. */
+	freeEnergyJPerM2?: TermSeries;
+	pressurePa?: TermSeries;
+	thermalShare: { freeEnergy?: BoundedFigure; pressure?: BoundedFigure };
+}
+
+/** Free energy in J/m^2 and pressure in Pa, or what they change by. */
+export interface EnergyAndPressure {
+	freeEnergyJPerM2: number;
+	pressurePa: number;
+}
+
+/** Relative change of a result per relative change of what it depends on. */
+export interface Elasticity {
+	freeEnergy?: BoundedFigure;
+	pressure?: BoundedFigure;
+}
+
+/**
+ * How much the result depends on eps'' at real frequencies: delta P = int kernel delta eps'' d(hbar omega). `weight` is the
+ * relative change of the result per unit of ln(hbar omega) where eps'' there changes by its own size; null where the model
+ * says nothing about the real axis.
+ */
+export interface Kernel {
+	energiesEv: number[];
+	freeEnergyJPerM2PerEv: number[];
+	pressurePaPerEv: number[];
+	freeEnergyWeight: (number | null)[];
+	pressureWeight: (number | null)[];
+	/** Absolute, the same for every energy, relative to the largest magnitude of each row. */
+	errorBound: number;
+}
+
+export interface PlaceSensitivity {
+	/** Path in the arrangement: `left.substrate`, `left.layers[0].of`, `medium`. */
+	place: string;
+	/** Derivatives to eps(i xi) of one term n, at the frequencies of the answer (at T = 0 per rad/s of xi). */
+	freeEnergyJPerM2: number[];
+	pressurePa: number[];
+	/** To eps(0), half weight included; absent where the static term does not depend on it. */
+	static?: EnergyAndPressure;
+	/** What integration over wave number leaves open, relative to the largest derivative of all places and frequencies. */
+	errorBound: number;
+	/** Of eps - 1 as a whole. */
+	elasticity: Elasticity;
+	kernel: Kernel;
+	/** Tables: elasticity of what lies below, inside and above the measured points. */
+	reliance?: { below: Elasticity; inside: Elasticity; above: Elasticity };
+}
+
+/** Of the plates with smooth surfaces. */
+export interface Sensitivity {
+	/** Sums over all n >= 1 are sums of weight times the value at these frequencies. */
+	xiRadPerS: number[];
+	weight: number[];
+	places: PlaceSensitivity[];
 }
 
 /** The Hamaker coefficient that the arrangement tends to at short separations, or why there is none. */

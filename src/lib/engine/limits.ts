@@ -18,6 +18,8 @@ export const ENGINE_LIMITS = {
 	valence: { min: 1, max: 4 },
 	roughnessRmsNm: { min: 0, max: 1e5 },
 	heightBins: 200,
+	/** Sensitivities are for a few separations: each answers some ten thousand numbers. */
+	sensitivitySeparations: 20,
 	tableRows: 20_000,
 	terms: 200,
 	nesting: 4,

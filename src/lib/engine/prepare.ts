@@ -12,6 +12,8 @@ import type {
 import { plates, type PlateForces } from './lifshitz/plates.ts';
 import { nonRetardedLimit } from './analysis/non-retarded.ts';
 import { pointAnalysis } from './analysis/point-analysis.ts';
+import { sensitivity } from './analysis/sensitivity.ts';
+import { terms } from './analysis/terms.ts';
 import { lineForces } from './shapes/cylinder.ts';
 import { shapeError, shapeRule, type ShapeRule } from './shapes/proximity.ts';
 import { ROUGHNESS_SHARE, roughPlates } from './shapes/roughness.ts';
@@ -53,6 +55,12 @@ export function prepare(request: ForceRequest): Preparation {
 	const evaluatePlates = roughness ? roughPlates(smooth, roughness, platesAccuracy) : smooth;
 	const breakdown = include.includes('breakdown');
 	const analysis = include.includes('analysis');
+	const wantsTerms = include.includes('terms');
+	const wantsSensitivity = include.includes('sensitivity');
+	const cold =
+		wantsTerms && system.temperature > 0
+			? plates(systemOf(atZeroTemperature(request)), relativeAccuracy)
+			: null;
 	return {
 		separationsNm,
 		point: (index) => {
@@ -92,6 +100,12 @@ export function prepare(request: ForceRequest): Preparation {
 				...(breakdown ? { breakdown: breakdownOf(forces) } : {}),
 				...(analysis
 					? { analysis: pointAnalysis(separation, forces, roughness ? smooth(separation) : null) }
+					: {}),
+				...(wantsTerms
+					? { terms: terms(system, separation, smooth(separation), cold?.(separation) ?? null) }
+					: {}),
+				...(wantsSensitivity
+					? { sensitivity: sensitivity(system, request, separation, smooth(separation)) }
 					: {})
 			};
 		},
@@ -117,6 +131,12 @@ export function evaluate(request: ForceRequest): ForceAnswer {
 		warnings: preparation.warnings(points),
 		...preparation.whole()
 	};
+}
+
+/** The same models without warmth: ions, which need it, do not move then. */
+function atZeroTemperature(request: ForceRequest): ForceRequest {
+	const { debyeLengthNm: _length, salt: _salt, ions: _ions, ...rest } = request.arrangement;
+	return { ...request, arrangement: { ...rest, temperatureK: 0 } };
 }
 
 /** A bound relative to its value; finite always, because the answer is sent as JSON. */

@@ -42,6 +42,7 @@ export function checkRequest(request: ForceRequest): void {
 		checkRange(issues, 'arrangement.temperatureK', arrangement.temperatureK, limits.temperatureK, 'K (or 0)');
 	}
 	checkMedium(issues, request);
+	checkExtras(issues, request);
 	checkRoughness(issues, request, separationsOf);
 	if (issues.length > 0) throw new Refusal(issues);
 }
@@ -68,6 +69,16 @@ function checkSeparations(issues: Issue[], separations: ForceRequest['separation
 	if (whole && !Number.isInteger(separations.count)) {
 		issues.push({ path: `${path}.count`, message: 'must be a whole number' });
 	}
+}
+
+/** Sensitivities answer a long list a separation: a few at a time. */
+function checkExtras(issues: Issue[], { include, separationsNm }: ForceRequest): void {
+	const count = Array.isArray(separationsNm) ? separationsNm.length : separationsNm.count;
+	if (include.includes('sensitivity') && count > limits.sensitivitySeparations)
+		issues.push({
+			path: 'include',
+			message: `asks for sensitivity at ${count} separations; the engine gives it for up to ${limits.sensitivitySeparations} at once`
+		});
 }
 
 function checkBody(issues: Issue[], path: string, body: BodyOf<MaterialModel>): void {

@@ -23,6 +23,59 @@ const pointAnalysis = z
 	})
 	.meta({ id: 'PointAnalysis' });
 
+const termSeries = z
+	.object({ first: z.array(z.number()), rest: z.number(), errorBound: z.number() })
+	.meta({ id: 'TermSeries', description: 'n = 0 with its half weight, then n = 1..29, then all others' });
+
+const terms = z
+	.object({
+		freeEnergyJPerM2: termSeries.optional(),
+		pressurePa: termSeries.optional(),
+		thermalShare: z
+			.object({ freeEnergy: bounded.optional(), pressure: bounded.optional() })
+			.meta({ description: '(value - value at T = 0)/value, the models held fixed' })
+	})
+	.meta({ id: 'Terms', description: 'of smooth plates' });
+
+const elasticity = z
+	.object({ freeEnergy: bounded.optional(), pressure: bounded.optional() })
+	.meta({ id: 'Elasticity', description: 'relative change of the result per relative change of the input' });
+
+const kernel = z
+	.object({
+		energiesEv: z.array(z.number()),
+		freeEnergyJPerM2PerEv: z.array(z.number()),
+		pressurePaPerEv: z.array(z.number()),
+		freeEnergyWeight: z.array(z.number().nullable()),
+		pressureWeight: z.array(z.number().nullable()),
+		errorBound: z.number()
+	})
+	.meta({ id: 'Kernel', description: "delta P = int kernel delta eps'' d(hbar omega)" });
+
+const placeSensitivity = z
+	.object({
+		place: z.string(),
+		freeEnergyJPerM2: z.array(z.number()),
+		pressurePa: z.array(z.number()),
+		static: z.object({ freeEnergyJPerM2: z.number(), pressurePa: z.number() }).optional(),
+		errorBound: z.number(),
+		elasticity,
+		kernel,
+		reliance: z
+			.object({ below: elasticity, inside: elasticity, above: elasticity })
+			.optional()
+			.meta({ description: 'of what a table has below, inside and above its measured points' })
+	})
+	.meta({ id: 'PlaceSensitivity' });
+
+const sensitivity = z
+	.object({
+		xiRadPerS: z.array(z.number()),
+		weight: z.array(z.number()),
+		places: z.array(placeSensitivity)
+	})
+	.meta({ id: 'Sensitivity', description: 'derivatives to eps(i xi), of smooth plates' });
+
 /** What belongs to the arrangement as a whole. */
 export const wholeAnalysis = z.object({
 	nonRetarded: z
@@ -51,7 +104,9 @@ export const forcePoint = z
 		breakdown: z
 			.object({ freeEnergyJPerM2: parts, pressurePa: parts, pressureGradientPaPerM: parts })
 			.optional(),
-		analysis: pointAnalysis.optional()
+		analysis: pointAnalysis.optional(),
+		terms: terms.optional(),
+		sensitivity: sensitivity.optional()
 	})
 	.meta({ id: 'ForcePoint' });
 

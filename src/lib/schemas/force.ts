@@ -11,7 +11,7 @@ export const SEPARATIONS_MAX = 2000;
 export const LAYERS_MAX = 40;
 export const HEIGHT_BINS_MAX = 200;
 /** Optional parts of an answer. */
-export const EXTRAS = ['breakdown', 'analysis'] as const;
+export const EXTRAS = ['breakdown', 'analysis', 'terms', 'sensitivity'] as const;
 
 export const versionRef = z
 	.string()

@@ -57,6 +57,25 @@ export function table(model: TableModel): Susceptibility {
 	};
 }
 
+/** eps(i xi) - 1 by where it comes from; at xi = 0 what stays finite. */
+export interface TableShares {
+	below(xi: number): number;
+	inside(xi: number): number;
+	above(xi: number): number;
+	atZero: EpsilonShares;
+}
+
+/** The three parts of a table's eps(i xi) - 1 as functions, prepared once. */
+export function tableShares(model: TableModel): TableShares {
+	const { low, inside, high } = partsOf(model);
+	return {
+		below: low.atXi,
+		inside,
+		above: high.atXi,
+		atZero: { below: low.atZero.finite, inside: inside(0), above: high.atZero.finite }
+	};
+}
+
 /** How much of eps(i xi) - 1 comes from below, inside and above the table. */
 export function epsilonShares(model: TableModel, xi: number): EpsilonShares {
 	const { low, inside, high } = partsOf(model);

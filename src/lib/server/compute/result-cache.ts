@@ -17,6 +17,8 @@ export type Compute = (progress: Progress, signal: AbortSignal) => Promise<End>;
 /** A point is a dozen numbers and their names; with a breakdown thrice that. */
 const POINT_BYTES = 700;
 const ENTRY_BYTES = 500;
+/** A place's derivatives and kernel. */
+const SENSITIVITY_BYTES = 12_000;
 
 export class ResultCache {
 	/** Least recently used first: a Map keeps the order of insertion. */
@@ -75,9 +77,11 @@ export class ResultCache {
 	}
 }
 
-function sizeOf({ points }: Result): number {
-	const parts = points.length > 0 && points[0].breakdown ? 3 : 1;
-	return ENTRY_BYTES + points.length * POINT_BYTES * parts;
+function sizeOf({ points: [first, ...rest] }: Result): number {
+	if (!first) return ENTRY_BYTES;
+	const parts = first.breakdown ? 3 : 1;
+	const more = (first.sensitivity?.places.length ?? 0) * SENSITIVITY_BYTES;
+	return ENTRY_BYTES + (1 + rest.length) * (POINT_BYTES * parts + more);
 }
 
 function tellAll({ separationsNm, points }: Result, progress: Progress): void {
