@@ -59,10 +59,28 @@ export type PermeabilityModel =
  */
 export type ZeroFrequencyRule = 'drude' | 'plasma' | 'ideal' | 'dcCounted' | 'dcIgnored';
 
+/**
+ * Standard uncertainty of a permittivity. `scale`: of eps - 1 at all frequencies in common; `table`: relative, of eps'' at
+ * energies of a table, straight in ln(energy) between them, in common (a calibration) or each point for itself (noise);
+ * `parameters`: covariance of numbers of the model, named by their path in it, as `plasmaEnergyEv` or `terms[0].strength`.
+ */
+export type Uncertainty =
+	| { kind: 'scale'; relative: number }
+	| { kind: 'table'; energiesEv: number[]; relative: number[]; correlation: 'common' | 'independent' }
+	| { kind: 'parameters'; names: string[]; covariance: number[][] };
+
 export interface MaterialModel {
 	permittivity: PermittivityModel;
 	permeability?: PermeabilityModel;
 	zeroFrequency?: ZeroFrequencyRule;
+	uncertainty?: Uncertainty;
+}
+
+/** Another material at some places, for the spread of results over rival data. */
+export interface RivalOf<M> {
+	/** Paths in the arrangement: `left.substrate`, `left.layers[0].of`, `medium`. */
+	places: string[];
+	of: M;
 }
 
 /** Layers run from the gap outwards; the substrate fills the rest. `M` is how a material is named. */
@@ -114,13 +132,14 @@ export interface ArrangementOf<M> {
 
 export type Separations = number[] | { from: number; to: number; count: number; spacing: 'log' | 'linear' };
 
-export type Extra = 'breakdown' | 'analysis' | 'terms' | 'sensitivity';
+export type Extra = 'breakdown' | 'analysis' | 'terms' | 'sensitivity' | 'uncertainty';
 
 export interface ForceRequestOf<M> {
 	arrangement: ArrangementOf<M>;
 	separationsNm: Separations;
 	relativeAccuracy: number;
 	include: Extra[];
+	rivals?: RivalOf<M>[];
 }
 
 /** What the engine computes: every material given in place. */
@@ -161,6 +180,8 @@ export interface ForcePoint {
 	analysis?: PointAnalysis;
 	terms?: Terms;
 	sensitivity?: Sensitivity;
+	uncertainty?: PointUncertainty;
+	spread?: Spread;
 }
 
 /** A figure with a bound on its own error, relative to its magnitude. */
@@ -260,6 +281,32 @@ export interface Sensitivity {
 	xiRadPerS: number[];
 	weight: number[];
 	places: PlaceSensitivity[];
+}
+
+/** What stated uncertainties of the data do to the result, to first order: standard uncertainties, absolute. */
+export interface PointUncertainty {
+	freeEnergyJPerM2: BoundedFigure;
+	pressurePa: BoundedFigure;
+	/** One entry a material with a stated uncertainty; independent of each other, so their squares add up. */
+	contributions: Contribution[];
+}
+
+export interface Contribution extends EnergyAndPressure {
+	places: string[];
+}
+
+/** Lowest and highest result over the arrangement and its rivals; `errorBound` is the largest relative bound among them. */
+export interface Spread {
+	freeEnergyJPerM2: Extent;
+	pressurePa: Extent;
+	/** One entry a rival. */
+	rivals: EnergyAndPressure[];
+}
+
+export interface Extent {
+	low: number;
+	high: number;
+	errorBound: number;
 }
 
 /** The Hamaker coefficient that the arrangement tends to at short separations, or why there is none. */

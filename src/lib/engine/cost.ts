@@ -25,7 +25,8 @@ const SECONDS_AN_EXTRA: Record<Extra, number> = {
 	breakdown: 0,
 	analysis: 0,
 	terms: 4e-3,
-	sensitivity: 8e-3
+	sensitivity: 8e-3,
+	uncertainty: 8e-3
 };
 
 /** Plate evaluations behind one point of a line shape. */
@@ -78,7 +79,10 @@ export function estimateCost(request: ForceRequest): Cost {
 	const seconds =
 		evaluations * (SECONDS_AN_EVALUATION + SECONDS_A_LAYER * layers) + frequencies * rows * SECONDS_A_ROW;
 	const extra = count * (1 + layers) * request.include.reduce((sum, one) => sum + SECONDS_AN_EXTRA[one], 0);
-	return { evaluations: Math.round(evaluations), seconds: seconds + extra };
+	return {
+		evaluations: Math.round(evaluations),
+		seconds: seconds * (1 + (request.rivals?.length ?? 0)) + extra
+	};
 }
 
 function rowsOf(model: PermittivityModel): number {

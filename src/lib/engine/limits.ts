@@ -20,6 +20,10 @@ export const ENGINE_LIMITS = {
 	heightBins: 200,
 	/** Sensitivities are for a few separations: each answers some ten thousand numbers. */
 	sensitivitySeparations: 20,
+	uncertaintySeparations: 200,
+	rivals: 20,
+	uncertainParameters: 60,
+	relativeUncertainty: { min: 0, max: 10 },
 	tableRows: 20_000,
 	terms: 200,
 	nesting: 4,

@@ -12,6 +12,8 @@ import type {
 import { plates, type PlateForces } from './lifshitz/plates.ts';
 import { nonRetardedLimit } from './analysis/non-retarded.ts';
 import { pointAnalysis } from './analysis/point-analysis.ts';
+import { withRival } from './analysis/places.ts';
+import { pointUncertainty, spreadOver } from './analysis/uncertainty.ts';
 import { sensitivity } from './analysis/sensitivity.ts';
 import { terms } from './analysis/terms.ts';
 import { lineForces } from './shapes/cylinder.ts';
@@ -56,6 +58,15 @@ export function prepare(request: ForceRequest): Preparation {
 	const breakdown = include.includes('breakdown');
 	const analysis = include.includes('analysis');
 	const wantsTerms = include.includes('terms');
+	const rivals = (request.rivals ?? []).map((rival) => {
+		const other = { ...request, arrangement: withRival(arrangement, rival) };
+		const evaluateRival = plates(
+			systemOf(other),
+			roughness ? ROUGHNESS_SHARE * platesAccuracy : platesAccuracy
+		);
+		return roughness ? roughPlates(evaluateRival, roughness, platesAccuracy) : evaluateRival;
+	});
+	const wantsUncertainty = include.includes('uncertainty');
 	const wantsSensitivity = include.includes('sensitivity');
 	const cold =
 		wantsTerms && system.temperature > 0
@@ -106,6 +117,15 @@ export function prepare(request: ForceRequest): Preparation {
 					: {}),
 				...(wantsSensitivity
 					? { sensitivity: sensitivity(system, request, separation, smooth(separation)) }
+					: {}),
+				...(wantsUncertainty ? { uncertainty: pointUncertainty(system, request, separation) } : {}),
+				...(rivals.length > 0
+					? {
+							spread: spreadOver(
+								forces,
+								rivals.map((rival) => rival(separation))
+							)
+						}
 					: {})
 			};
 		},

@@ -6,6 +6,7 @@ import { Refusal, type Issue } from './refusal.ts';
 import { ionsStated } from './system.ts';
 import { checkRange } from './validate-number.ts';
 import { checkIons } from './validate-ions.ts';
+import { checkExtras, checkUncertainty } from './validate-uncertainty.ts';
 import { checkRoughness } from './validate-roughness.ts';
 import { permittivityIssues } from './validate-permittivity.ts';
 
@@ -43,6 +44,7 @@ export function checkRequest(request: ForceRequest): void {
 	}
 	checkMedium(issues, request);
 	checkExtras(issues, request);
+	request.rivals?.forEach(({ of }, i) => checkMaterial(issues, `rivals[${i}].of`, of));
 	checkRoughness(issues, request, separationsOf);
 	if (issues.length > 0) throw new Refusal(issues);
 }
@@ -71,16 +73,6 @@ function checkSeparations(issues: Issue[], separations: ForceRequest['separation
 	}
 }
 
-/** Sensitivities answer a long list a separation: a few at a time. */
-function checkExtras(issues: Issue[], { include, separationsNm }: ForceRequest): void {
-	const count = Array.isArray(separationsNm) ? separationsNm.length : separationsNm.count;
-	if (include.includes('sensitivity') && count > limits.sensitivitySeparations)
-		issues.push({
-			path: 'include',
-			message: `asks for sensitivity at ${count} separations; the engine gives it for up to ${limits.sensitivitySeparations} at once`
-		});
-}
-
 function checkBody(issues: Issue[], path: string, body: BodyOf<MaterialModel>): void {
 	if (body.layers.length > limits.layers) {
 		issues.push({
@@ -103,6 +95,7 @@ function checkMaterial(issues: Issue[], path: string, material: MaterialModel): 
 	issues.push(...found);
 	checkPermeability(issues, path, material);
 	if (found.length > 0) return null;
+	checkUncertainty(issues, path, material);
 	const rule = material.zeroFrequency;
 	if (material.permittivity.kind === 'idealConductor') {
 		if (rule !== undefined && rule !== 'ideal') {

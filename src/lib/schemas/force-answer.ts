@@ -76,6 +76,25 @@ const sensitivity = z
 	})
 	.meta({ id: 'Sensitivity', description: 'derivatives to eps(i xi), of smooth plates' });
 
+const energyAndPressure = z.object({ freeEnergyJPerM2: z.number(), pressurePa: z.number() });
+
+const pointUncertainty = z
+	.object({
+		freeEnergyJPerM2: bounded,
+		pressurePa: bounded,
+		contributions: z.array(energyAndPressure.extend({ places: z.array(z.string()) }))
+	})
+	.meta({
+		id: 'PointUncertainty',
+		description: 'standard uncertainties from what is stated about the data, apart from the numerical bound'
+	});
+
+const extent = z.object({ low: z.number(), high: z.number(), errorBound: z.number() });
+
+const spread = z
+	.object({ freeEnergyJPerM2: extent, pressurePa: extent, rivals: z.array(energyAndPressure) })
+	.meta({ id: 'Spread', description: 'over the arrangement and its rivals' });
+
 /** What belongs to the arrangement as a whole. */
 export const wholeAnalysis = z.object({
 	nonRetarded: z
@@ -106,7 +125,9 @@ export const forcePoint = z
 			.optional(),
 		analysis: pointAnalysis.optional(),
 		terms: terms.optional(),
-		sensitivity: sensitivity.optional()
+		sensitivity: sensitivity.optional(),
+		uncertainty: pointUncertainty.optional(),
+		spread: spread.optional()
 	})
 	.meta({ id: 'ForcePoint' });
 

@@ -10,8 +10,11 @@ export const FORCE_DEFAULTS = { relativeAccuracy: 1e-6, temperatureK: 300 } as c
 export const SEPARATIONS_MAX = 2000;
 export const LAYERS_MAX = 40;
 export const HEIGHT_BINS_MAX = 200;
+export const TABLE_ROWS_MAX = 20_000;
+export const PARAMETERS_MAX = 60;
+export const RIVALS_MAX = 20;
 /** Optional parts of an answer. */
-export const EXTRAS = ['breakdown', 'analysis', 'terms', 'sensitivity'] as const;
+export const EXTRAS = ['breakdown', 'analysis', 'terms', 'sensitivity', 'uncertainty'] as const;
 
 export const versionRef = z
 	.string()
@@ -23,11 +26,33 @@ export const zeroFrequencyRule = z
 	.enum(['drude', 'plasma', 'ideal', 'dcCounted', 'dcIgnored'])
 	.meta({ id: 'ZeroFrequencyRule' });
 
-const pinned = z.strictObject({ version: versionRef, zeroFrequency: zeroFrequencyRule.optional() });
+export const uncertainty = z
+	.discriminatedUnion('kind', [
+		z.strictObject({ kind: z.literal('scale'), relative: z.number().nonnegative() }),
+		z.strictObject({
+			kind: z.literal('table'),
+			energiesEv: z.array(z.number().positive()).min(1).max(TABLE_ROWS_MAX),
+			relative: z.array(z.number().nonnegative()).min(1).max(TABLE_ROWS_MAX),
+			correlation: z.enum(['common', 'independent'])
+		}),
+		z.strictObject({
+			kind: z.literal('parameters'),
+			names: z.array(z.string().max(60)).min(1).max(PARAMETERS_MAX),
+			covariance: z.array(z.array(z.number()).max(PARAMETERS_MAX)).max(PARAMETERS_MAX)
+		})
+	])
+	.meta({ id: 'Uncertainty', description: 'standard uncertainty of a permittivity' });
+
+const pinned = z.strictObject({
+	version: versionRef,
+	zeroFrequency: zeroFrequencyRule.optional(),
+	uncertainty: uncertainty.optional()
+});
 const inPlace = z.strictObject({
 	permittivity: permittivityModel,
 	permeability: permeabilityModel.optional(),
-	zeroFrequency: zeroFrequencyRule.optional()
+	zeroFrequency: zeroFrequencyRule.optional(),
+	uncertainty: uncertainty.optional()
 });
 
 export type PinnedMaterial = z.infer<typeof pinned>;
@@ -130,7 +155,12 @@ export const forceRequest = z.strictObject({
 	arrangement,
 	separationsNm: separations,
 	relativeAccuracy: z.number().min(1e-11).max(1e-3).default(FORCE_DEFAULTS.relativeAccuracy),
-	include: z.array(z.enum(EXTRAS)).max(EXTRAS.length).default([])
+	include: z.array(z.enum(EXTRAS)).max(EXTRAS.length).default([]),
+	rivals: z
+		.array(z.strictObject({ places: z.array(z.string().max(40)).min(1).max(82), of: materialChoice }))
+		.max(RIVALS_MAX)
+		.optional()
+		.meta({ description: 'other materials at some places; results are given as a spread' })
 });
 
 /** As it comes in, defaults still open. */

@@ -1,4 +1,5 @@
 import { z } from 'zod';
+import { uncertainty } from './force.ts';
 import { permittivityModel } from './permittivity.ts';
 import { hazards, materialClass } from './material.ts';
 import { line } from './plain-text.ts';
@@ -108,6 +109,8 @@ export const versionDetail = versionSummary
 export const resolvedVersion = z.object({
 	ref: z.string(),
 	model: permittivityModel,
+	/** What came with its table; null where nothing did. */
+	uncertainty: uncertainty.nullish(),
 	checksum: z.string(),
 	quality,
 	qualityReason: z.string().nullable(),

@@ -46,7 +46,11 @@ export interface ForceResult extends ForceAnswer {
 export async function planForces(complete: ForceRequestComplete): Promise<ForcePlan> {
 	const refs = pinnedVersions(complete);
 	const resolved = refs.length > 0 ? await versions.resolve(refs) : new Map<string, ResolvedVersion>();
-	const request = resolveRequest(complete, (ref) => resolved.get(ref)?.model);
+	const request = resolveRequest(
+		complete,
+		(ref) => resolved.get(ref)?.model,
+		(ref) => resolved.get(ref)?.uncertainty
+	);
 	const plan = {
 		request,
 		inputChecksum: inputChecksum(request),

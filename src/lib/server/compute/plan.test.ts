@@ -46,6 +46,29 @@ describe('resolveRequest', () => {
 		expect(arrangement.temperatureK).toBe(300);
 	});
 
+	it('takes the uncertainty of a version only where it is asked for, and after what the request states', () => {
+		const stated = { kind: 'scale', relative: 0.02 } as const;
+		const uncertainty = (rest: object, change: object = {}) =>
+			resolveRequest(request(change, rest), modelOf, () => stated).arrangement.right.substrate.uncertainty;
+		expect(uncertainty({})).toBeUndefined();
+		expect(uncertainty({ include: ['uncertainty'] })).toEqual(stated);
+		const own = { kind: 'scale', relative: 0.1 };
+		const right = { substrate: { version: 'gold-drude@1.0', uncertainty: own } };
+		expect(uncertainty({ include: ['uncertainty'] }, { right })).toEqual(own);
+	});
+
+	it('puts models in the place of versions that rivals name', () => {
+		const rivals = [{ places: ['medium'], of: { version: 'silica-constant@1.0' } }];
+		expect(pinnedVersions(request({}, { rivals }))).toContain('silica-constant@1.0');
+		expect(resolveRequest(request({}, { rivals }), modelOf).rivals).toEqual([
+			{ places: ['medium'], of: { permittivity: silica } }
+		]);
+		const missing = [{ places: ['medium'], of: { version: 'ice@1.0' } }];
+		expect(() => resolveRequest(request({}, { rivals: missing }), modelOf)).toThrow(
+			expect.objectContaining({ issues: [expect.objectContaining({ path: 'rivals[0].of.version' })] })
+		);
+	});
+
 	it('names every place of a version that does not exist', () => {
 		const unknown = request({
 			medium: { version: 'water@9.0' },

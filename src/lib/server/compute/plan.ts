@@ -3,7 +3,8 @@ import type {
 	BodyOf,
 	ForceRequest,
 	MaterialModel,
-	PermittivityModel
+	PermittivityModel,
+	Uncertainty
 } from '../../engine/contract.ts';
 import type { ForceRequestComplete, MaterialChoice } from '../../schemas/force.ts';
 import { InvalidInput, type Issue } from '../errors.ts';
@@ -25,24 +26,30 @@ export function slotsOf({ left, medium, right }: ArrangementOf<MaterialChoice>):
 	return [...body('left', left), { path: 'arrangement.medium', choice: medium }, ...body('right', right)];
 }
 
+/** Rivals name versions too. */
+function everySlot({ arrangement, rivals = [] }: ForceRequestComplete): Slot[] {
+	const others = rivals.map(({ of }, index) => ({ path: `rivals[${index}].of`, choice: of }));
+	return [...slotsOf(arrangement), ...others];
+}
+
 /** The versions that a request names, each once, in the order of their first appearance. */
 export function pinnedVersions(request: ForceRequestComplete): string[] {
 	return [
-		...new Set(
-			slotsOf(request.arrangement).flatMap(({ choice }) => ('version' in choice ? [choice.version] : []))
-		)
+		...new Set(everySlot(request).flatMap(({ choice }) => ('version' in choice ? [choice.version] : [])))
 	];
 }
 
 /**
  * @param modelOf the model of a pinned version; undefined where there is none
+ * @param statedBy the uncertainty that came with a version's table; what the request states goes before it
  * @throws InvalidInput naming every slot whose version does not exist
  */
 export function resolveRequest(
 	request: ForceRequestComplete,
-	modelOf: (version: string) => PermittivityModel | undefined
+	modelOf: (version: string) => PermittivityModel | undefined,
+	statedBy: (version: string) => Uncertainty | null | undefined = () => null
 ): ForceRequest {
-	const missing: Issue[] = slotsOf(request.arrangement).flatMap(({ path, choice }) =>
+	const missing: Issue[] = everySlot(request).flatMap(({ path, choice }) =>
 		'version' in choice && !modelOf(choice.version)
 			? [{ path: `${path}.version`, message: `there is no published version ${choice.version}` }]
 			: []
@@ -57,16 +64,21 @@ export function resolveRequest(
 	const material = (choice: MaterialChoice): MaterialModel => {
 		if (!('version' in choice)) return choice;
 		const permittivity = modelOf(choice.version) as PermittivityModel;
-		return choice.zeroFrequency ? { permittivity, zeroFrequency: choice.zeroFrequency } : { permittivity };
+		const { version: _version, ...said } = choice;
+		// Nothing is looked up that the answer would not show: it would only make equal questions look different.
+		const stated = request.include.includes('uncertainty') ? statedBy(choice.version) : null;
+		return { permittivity, ...(stated ? { uncertainty: stated } : {}), ...said };
 	};
 	const body = ({ layers, substrate }: BodyOf<MaterialChoice>): BodyOf<MaterialModel> => ({
 		layers: layers.map(({ of, thicknessNm }) => ({ of: material(of), thicknessNm })),
 		substrate: material(substrate)
 	});
 	const { left, medium, right, ...rest } = request.arrangement;
+	const { rivals, ...asked } = request;
 	return {
-		...request,
-		arrangement: { ...rest, left: body(left), medium: material(medium), right: body(right) }
+		...asked,
+		arrangement: { ...rest, left: body(left), medium: material(medium), right: body(right) },
+		...(rivals ? { rivals: rivals.map(({ places, of }) => ({ places, of: material(of) })) } : {})
 	};
 }
 

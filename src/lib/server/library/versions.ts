@@ -1,10 +1,10 @@
 import { and, asc, desc, eq, inArray, or, sql } from 'drizzle-orm';
-import type { PermittivityModel } from '../../engine/contract.ts';
 import type { ResolvedVersion, VersionDetail } from '../../schemas/version.ts';
 import { database, type Executor } from '../db/client.ts';
 import { checkResult, dataset, version } from '../db/schema/dataset.ts';
 import { NotFound } from '../errors.ts';
 import { nameOf, selectVersions, sourcesOf, toSummary, type VersionRow } from './read-versions.ts';
+import { statedUncertainty } from './stated-uncertainty.ts';
 import { PUBLIC_STATES, type Viewer } from './viewer.ts';
 
 /** Reading versions: published ones, and for a viewer also what has not been published yet. Withdrawn ones keep their address. */
@@ -158,7 +158,8 @@ export async function resolve(
 				toSummary(row, []);
 			const resolved: ResolvedVersion = {
 				ref,
-				model: models.get(row.id) ?? { kind: 'vacuum' },
+				model: { kind: 'vacuum' },
+				...models.get(row.id),
 				checksum,
 				quality,
 				qualityReason,
@@ -175,13 +176,24 @@ export async function resolve(
 	);
 }
 
-async function modelsOf(executor: Executor, ids: string[]): Promise<Map<string, PermittivityModel>> {
+async function modelsOf(
+	executor: Executor,
+	ids: string[]
+): Promise<Map<string, Pick<ResolvedVersion, 'model' | 'uncertainty'>>> {
 	if (ids.length === 0) return new Map();
 	const rows = await executor
-		.select({ id: version.id, model: version.model })
+		.select({
+			id: version.id,
+			model: version.model,
+			columns: version.givenColumns,
+			abscissa: version.givenAbscissa,
+			first: version.givenFirst,
+			second: version.givenSecond,
+			uncertainties: version.givenUncertainties
+		})
 		.from(version)
 		.where(inArray(version.id, ids));
-	return new Map(rows.map(({ id, model }) => [id, model]));
+	return new Map(rows.map((row) => [row.id, { model: row.model, uncertainty: statedUncertainty(row) }]));
 }
 
 export interface GivenTable {
