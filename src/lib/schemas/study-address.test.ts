@@ -14,7 +14,7 @@ const version = fc.constantFrom(
 	'water-6uv@12.3',
 	'vacuum@1.0'
 );
-const rule = fc.constantFrom('drude', 'plasma', 'ideal');
+const rule = fc.constantFrom('drude', 'plasma', 'ideal', 'dcCounted', 'dcIgnored');
 const material = fc.record({ version, zeroFrequency: rule }, { requiredKeys: ['version'] });
 const thicknessNm = fc.double({ min: 0.1, max: 1e6, noNaN: true });
 const separation = fc.double({ min: 1, max: 9000, noNaN: true });
@@ -29,6 +29,19 @@ const shape = fc.oneof(
 	fc.record({ kind: fc.constant('spheres'), leftRadiusUm: radiusUm, rightRadiusUm: radiusUm })
 );
 
+/** One statement of ions at most. */
+const ions = fc.oneof(
+	fc.constant({}),
+	fc.record({ debyeLengthNm: fc.double({ min: 0.1, max: 1e6, noNaN: true }) }),
+	fc.record({
+		salt: fc.record({
+			molPerL: fc.double({ min: 1e-9, max: 10, noNaN: true }),
+			valence: fc.constantFrom(1 as const, 2 as const, 3 as const)
+		})
+	}),
+	fc.constant({ ions: 'off' as const })
+);
+
 /** Any study, choices included; slots of the choices are picked from those the arrangement has. */
 const anyStudy: fc.Arbitrary<Study> = fc
 	.record(
@@ -38,7 +51,8 @@ const anyStudy: fc.Arbitrary<Study> = fc
 			right: body,
 			shape,
 			temperatureK: fc.oneof(fc.constant(0), fc.double({ min: 0.5, max: 5000, noNaN: true })),
-			debyeLengthNm: fc.double({ min: 0.1, max: 1e6, noNaN: true }),
+			roughness: fc.constantFrom({ leftNm: 1 }, { rightNm: 0.25 }, { leftNm: 3.5, rightNm: 2 }),
+			dataUncertainty: fc.double({ min: 1e-4, max: 1, noNaN: true }),
 			fromNm: fc.constantFrom(1, 0.5, 0.1),
 			toNm: fc.constantFrom(10_000, 1e5, 9001.5),
 			quantity: fc.constantFrom('pressure', 'energy', 'gradient'),
@@ -79,13 +93,17 @@ const anyStudy: fc.Arbitrary<Study> = fc
 			{
 				name: fc.string({ maxLength: 60 }),
 				changes: fc.dictionary(fc.constantFrom(...slots), change, { maxKeys: 3 }),
-				debyeLengthNm: fc.oneof(fc.constant('none'), fc.double({ min: 0.1, max: 1e6, noNaN: true }))
+				debyeLengthNm: fc.oneof(
+					fc.constant('none'),
+					fc.constant('off'),
+					fc.double({ min: 0.1, max: 1e6, noNaN: true })
+				)
 			},
 			{ requiredKeys: ['name', 'changes'] }
 		);
 		return fc
 			.array(choice, { minLength: 1, maxLength: 5 })
-			.map((choices) => studySchema.parse({ ...bare, choices }));
+			.chain((choices) => ions.map((one) => studySchema.parse({ ...bare, ...one, choices })));
 	});
 
 describe('a study in an address', () => {
@@ -142,6 +160,12 @@ describe('a study in an address', () => {
 		['mark=contact', 'mark', 'name with a length'],
 		['mark=:3nm', 'mark', 'name with a length'],
 		['choice=A;debye:wet', 'choice', 'not a Debye length'],
+		['salt=much', 'salt', 'concentration in mol/L and a valence'],
+		['salt=0.1,9', 'salt', 'concentration in mol/L and a valence'],
+		['ions=on', 'ions', 'is not off'],
+		['debye=3&ions=off', 'ions', 'stated twice'],
+		['rough=1', 'rough', 'rms of the left and of the right surface'],
+		['uncertainty=5', 'uncertainty', 'not a relative uncertainty'],
 		['choice=1&choice=2&choice=3&choice=4&choice=5&choice=6', 'choice', 'only the first 5']
 	])('reports %s and goes on', (query, part, words) => {
 		const { study, problems } = decode(query);

@@ -20,6 +20,7 @@ import {
 	type StudyMark,
 	type StudyBody
 } from './study.ts';
+import { decodeConditions } from './study-address-conditions.ts';
 import { decodeShape } from './study-address-shape.ts';
 import { WORKED_STUDY } from './study-worked.ts';
 
@@ -113,7 +114,7 @@ function decodeChoice(text: string, exists: (slot: string) => boolean, report: R
 		const value = part.slice(colon + 1);
 		if (place === 'debye') {
 			const length = decodeNumber(value, 0.1, 1e6);
-			if (value === 'none') choice.debyeLengthNm = 'none';
+			if (value === 'none' || value === 'off') choice.debyeLengthNm = value;
 			else if (length === undefined)
 				report('choice', `"${part}" is not a Debye length in nm; it was left out`);
 			else choice.debyeLengthNm = length;
@@ -202,7 +203,7 @@ export function decodeStudy(query: URLSearchParams, usual: Study = WORKED_STUDY)
 
 	const bare: Study = {
 		...{ left, medium, right, shape, temperatureK, fromNm, toNm, quantity: shown.is },
-		...(debyeLengthNm === undefined ? {} : { debyeLengthNm }),
+		...decodeConditions(query, debyeLengthNm, report),
 		choices: [{ name: '', changes: {} }],
 		atNm: inside(readNumber('at', usual.atNm, min, max, 'nm')),
 		marks: decodeMarks(query.getAll('mark'), report),

@@ -74,6 +74,10 @@ export function encodeStudy(study: Study): `?${string}` {
 	add('shape', encodeShape(study.shape), 'plates');
 	add('T', study.temperatureK);
 	add('debye', study.debyeLengthNm);
+	add('salt', study.salt && `${study.salt.molPerL},${study.salt.valence}`);
+	add('ions', study.ions);
+	add('rough', study.roughness && `${study.roughness.leftNm ?? 0},${study.roughness.rightNm ?? 0}`);
+	add('uncertainty', study.dataUncertainty);
 	for (const choice of study.choices) add('choice', encodeChoice(choice));
 	add('from', study.fromNm, WORKED_STUDY.fromNm);
 	add('to', study.toNm, WORKED_STUDY.toNm);

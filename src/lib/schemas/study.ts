@@ -6,9 +6,13 @@ import {
 	MARK_LABEL_MAX,
 	MARKS_MAX,
 	QUANTITIES,
+	ROUGHNESS_RANGE_NM,
+	SALT_RANGE_MOL_PER_L,
 	SEPARATION_RANGE_NM,
 	TEMPERATURE_RANGE_K,
-	THICKNESS_RANGE_NM
+	THICKNESS_RANGE_NM,
+	UNCERTAINTY_RANGE,
+	VALENCES
 } from './study-limits.ts';
 
 /**
@@ -47,9 +51,17 @@ export const slotChange = z.strictObject({
 export const modelChoice = z.strictObject({
 	name: z.string().max(CHOICE_NAME_MAX),
 	changes: z.record(slotName, slotChange),
-	/** `none` takes the ions out of an arrangement that has them. */
-	debyeLengthNm: z.union([z.number().min(0.1).max(1e6), z.literal('none')]).optional()
+	/** `none` takes the ions out of an arrangement that has them, `off` the static term that they would screen. */
+	debyeLengthNm: z.union([z.number().min(0.1).max(1e6), z.literal('none'), z.literal('off')]).optional()
 });
+
+export const studySalt = z.strictObject({
+	molPerL: z.number().min(SALT_RANGE_MOL_PER_L.min).max(SALT_RANGE_MOL_PER_L.max),
+	valence: z.union(VALENCES.map((valence) => z.literal(valence)))
+});
+
+const rmsNm = z.number().min(ROUGHNESS_RANGE_NM.min).max(ROUGHNESS_RANGE_NM.max).optional();
+export const studyRoughness = z.strictObject({ leftNm: rmsNm, rightNm: rmsNm });
 
 export const quantity = z.enum(QUANTITIES);
 
@@ -65,6 +77,14 @@ export const study = z.strictObject({
 	shape,
 	temperatureK: z.union([z.literal(0), z.number().min(TEMPERATURE_RANGE_K.min).max(TEMPERATURE_RANGE_K.max)]),
 	debyeLengthNm: z.number().min(0.1).max(1e6).optional(),
+	/** Instead of a Debye length; only one of these three stands at a time. */
+	salt: studySalt.optional(),
+	/** The static TM term left out, as behind any amount of salt. */
+	ions: z.literal('off').optional(),
+	/** rms heights; a smooth surface has none. */
+	roughness: studyRoughness.optional(),
+	/** Standard uncertainty assumed of eps - 1 of every material; absent: what comes with the data. */
+	dataUncertainty: z.number().min(UNCERTAINTY_RANGE.min).max(UNCERTAINTY_RANGE.max).optional(),
 	choices: z.array(modelChoice).min(1).max(CHOICES_MAX),
 	fromNm: separationNm,
 	toNm: separationNm,

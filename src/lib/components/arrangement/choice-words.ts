@@ -39,6 +39,7 @@ export function changeWords(
 		return said;
 	});
 	if (choice.debyeLengthNm === 'none') phrases.push('no ions');
+	else if (choice.debyeLengthNm === 'off') phrases.push('static term of the ions left out');
 	else if (choice.debyeLengthNm !== undefined) phrases.push(`Debye length ${choice.debyeLengthNm} nm`);
 	return phrases.map(capital);
 }

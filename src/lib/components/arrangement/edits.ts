@@ -128,15 +128,48 @@ export function swapBodies(): Edit {
 	});
 }
 
+const OPTIONAL = ['debyeLengthNm', 'salt', 'ions', 'roughness', 'dataUncertainty'] as const;
+
+/** The ions of the arrangement, one statement in the place of another. */
+export const setIons = (ions: Pick<Study, 'debyeLengthNm' | 'salt' | 'ions'>): Edit =>
+	setConditions({ debyeLengthNm: undefined, salt: undefined, ions: undefined, ...ions });
+
+/** rms of one surface; a smooth one has none, and two smooth ones no roughness at all. */
+export function setRoughness(side: Side, rmsNm: number | undefined): Edit {
+	return (study) => {
+		const heights = { ...study.roughness, [`${side}Nm`]: rmsNm };
+		const { leftNm, rightNm } = heights;
+		const smooth = leftNm === undefined && rightNm === undefined;
+		const roughness = {
+			...(leftNm === undefined ? {} : { leftNm }),
+			...(rightNm === undefined ? {} : { rightNm })
+		};
+		return setConditions({ roughness: smooth ? undefined : roughness })(study);
+	};
+}
+
 /** Fields of the whole arrangement. A quantity that a new shape does not have falls back to pressure. */
 export function setConditions(
 	fields: Partial<
-		Pick<Study, 'shape' | 'temperatureK' | 'debyeLengthNm' | 'fromNm' | 'toNm' | 'quantity' | 'against'>
+		Pick<
+			Study,
+			| 'shape'
+			| 'temperatureK'
+			| 'debyeLengthNm'
+			| 'salt'
+			| 'ions'
+			| 'roughness'
+			| 'dataUncertainty'
+			| 'fromNm'
+			| 'toNm'
+			| 'quantity'
+			| 'against'
+		>
 	>
 ): Edit {
 	return (study) => {
 		const next = { ...study, ...fields };
-		if (next.debyeLengthNm === undefined) delete next.debyeLengthNm;
+		for (const field of OPTIONAL) if (next[field] === undefined) delete next[field];
 		if (next.shape.kind === 'plates' && next.quantity === 'force') next.quantity = 'pressure';
 		const inside = (value: number) => Math.min(next.toNm, Math.max(next.fromNm, value));
 		next.atNm = inside(next.atNm);

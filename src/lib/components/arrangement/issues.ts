@@ -25,9 +25,17 @@ export function messagesAt(issues: readonly Issue[], path: string): string[] {
 	return [...new Set(own.map(({ message }) => message))];
 }
 
-const FIELDS = ['left', 'medium', 'right', 'shape', 'temperatureK', 'debyeLengthNm'].map(
-	(name) => `arrangement.${name}`
-);
+const FIELDS = [
+	'left',
+	'medium',
+	'right',
+	'shape',
+	'temperatureK',
+	'debyeLengthNm',
+	'salt',
+	'ions',
+	'roughness'
+].map((name) => `arrangement.${name}`);
 
 /** What belongs to no field of the page and is said once for the whole choice. */
 export function otherMessages(issues: readonly Issue[]): string[] {

@@ -1,5 +1,5 @@
 import { encodeStudy } from '../../schemas/study-encode.ts';
-import { choiceRequest } from '../../schemas/study-request.ts';
+import { choiceRequest, closestNm } from '../../schemas/study-request.ts';
 import { CHOICES_MAX } from '../../schemas/study-limits.ts';
 import type { Study } from '../../schemas/study.ts';
 import type { Edit } from '../arrangement/edits.ts';
@@ -122,11 +122,13 @@ export class StudySession {
 	/** Numbers exactly under the hairlines, once these are at rest. */
 	computeExact(): void {
 		const { atNm, parkedNm, choices } = this.study;
-		const separations =
-			parkedNm === undefined || parkedNm === atNm ? [atNm] : [atNm, parkedNm].sort((a, b) => a - b);
+		const nearest = closestNm(this.study);
+		const wanted = parkedNm === undefined || parkedNm === atNm ? [atNm] : [atNm, parkedNm];
+		const separations = wanted.filter((separation) => separation >= nearest).sort((a, b) => a - b);
 		this.exact.forEach((curve, index) => {
 			const choice = choices[index];
-			if (choice) curve.ask(choiceRequest(this.study, choice, separations), { keepPrevious: false });
+			if (choice && separations.length > 0)
+				curve.ask(choiceRequest(this.study, choice, separations), { keepPrevious: false });
 			else curve.clear();
 		});
 	}

@@ -127,8 +127,15 @@ export function conductionOfAll(
 	}));
 }
 
-/** Shape, temperature and ions in one line. */
-export function conditionWords({ shape, temperatureK, debyeLengthNm }: Study, shapeName: string): string {
+function ionWords({ debyeLengthNm, salt, ions }: Study): string {
+	if (debyeLengthNm !== undefined) return `Debye length ${debyeLengthNm} nm`;
+	if (salt) return `salt ${salt.molPerL} mol/L, ${salt.valence}:${salt.valence}`;
+	return ions === 'off' ? 'static TM term left out' : 'no ions';
+}
+
+/** Shape, temperature, ions and roughness in one line. */
+export function conditionWords(study: Study, shapeName: string): string {
+	const { shape, temperatureK, roughness } = study;
 	const radii = Object.entries(shape).flatMap(([field, value]) =>
 		typeof value === 'number'
 			? [
@@ -137,7 +144,11 @@ export function conditionWords({ shape, temperatureK, debyeLengthNm }: Study, sh
 			: []
 	);
 	const parts = [[shapeName, ...radii].join(', '), `${temperatureK} K`];
-	parts.push(debyeLengthNm === undefined ? 'no ions' : `Debye length ${debyeLengthNm} nm`);
+	parts.push(ionWords(study));
+	if (roughness) {
+		const { leftNm, rightNm } = roughness;
+		parts.push(`roughness ${leftNm ?? 0} nm left, ${rightNm ?? 0} nm right (rms)`);
+	}
 	return parts.join('; ');
 }
 
