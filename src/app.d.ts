@@ -17,6 +17,8 @@ declare global {
 		interface Locals {
 			/** Who asks; decided by the hook before any route runs. */
 			principal: Principal;
+			/** The page is of something that was withdrawn. */
+			gone?: boolean;
 		}
 	}
 }

@@ -1,4 +1,11 @@
-import { error, redirect, type Handle, type HandleServerError, type ServerInit } from '@sveltejs/kit';
+import {
+	error,
+	redirect,
+	type Handle,
+	type HandleServerError,
+	type RequestEvent,
+	type ServerInit
+} from '@sveltejs/kit';
 import { sequence } from '@sveltejs/kit/hooks';
 import { building } from '$app/environment';
 import { logUnforeseen, problemResponse } from '$lib/server/api/problem.ts';
@@ -41,7 +48,13 @@ const logged: Handle = async ({ event, resolve }) => {
 };
 
 const secured: Handle = async ({ event, resolve }) =>
-	withSecurityHeaders(await resolve(event), event.url.protocol === 'https:');
+	withSecurityHeaders(asGone(event, await resolve(event)), event.url.protocol === 'https:');
+
+/** What was withdrawn keeps its page and answers that it is gone; data that a page asks for are no page. */
+const asGone = ({ locals, isDataRequest }: RequestEvent, response: Response) =>
+	locals.gone && !isDataRequest && response.status === 200
+		? new Response(response.body, { status: 410, headers: response.headers })
+		: response;
 
 const sameOrigin: Handle = ({ event, resolve }) => {
 	if (!isForeign(event.request, event.url.origin)) return resolve(event);

@@ -41,3 +41,8 @@ export function percent(share: number, { signed = false, digits = 2 } = {}): str
 	const text = numberText(share * 100, digits).mantissa;
 	return `${signed && share > 0 ? '+' : ''}${text} %`;
 }
+
+/** A change given in per cent, with its sign: "+12.3 %". */
+export function signedPercent(change: number, digits = 3): string {
+	return `${change > 0 ? '+' : ''}${numberLine(change, digits)} %`;
+}

@@ -22,6 +22,8 @@ export const datasetWithVersions = z
 		slug: datasetSlug,
 		title: z.string(),
 		latest: z.string().nullable(),
+		/** The one that the curators recommend, which need not be the newest; null: they have not said. */
+		recommended: z.string().nullable(),
 		versions: z.array(versionSummary)
 	})
 	.meta({ id: 'DatasetWithVersions' });

@@ -71,7 +71,17 @@ const submittedAt = z.iso.datetime().optional();
 export const approval = z.strictObject({ checksum, submittedAt, reason: reason.nullish() });
 export const refusal = z.strictObject({ checksum, submittedAt, reason });
 
+/** Why this one and not the newest. */
+export const recommendation = z.strictObject({ reason });
+
+export type Recommendation = z.infer<typeof recommendation>;
 export type Submission = z.infer<typeof submission>;
 export type Approval = z.infer<typeof approval>;
 export type RefusalOfVersion = z.infer<typeof refusal>;
 export type Ordinate = z.infer<typeof ordinate>;
+
+/** The form of an upload as typed, with the count of savings that it began from. */
+export const savedForm = z.strictObject({
+	revision: z.int().min(0),
+	form: z.record(z.string().max(60), z.string().regex(/^[^\p{Cs}\0]*$/u, 'no characters cut in two'))
+});

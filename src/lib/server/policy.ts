@@ -24,8 +24,28 @@ export const POLICY: Readonly<Record<string, Row>> = {
 	'/datasets/[slug]': readable,
 	'/datasets/[slug]/versions/[number]/[file]': readable,
 	'/datasets/[slug]/latest': readable,
-	'/datasets/[slug]/versions/[number]': readable,
+	'/datasets/[slug]/versions/[number]': {
+		GET: 'readers',
+		'?/withdraw': 'reviewers',
+		'?/recommend': 'reviewers'
+	},
 	'/datasets/[slug]/versions/[number]/spectrum.json': readable,
+	'/uploads': {
+		GET: 'uploaders',
+		'?/file': 'uploaders',
+		'?/model': 'uploaders',
+		'?/remove': 'uploaders',
+		'?/from': 'uploaders'
+	},
+	'/uploads/[id]': { GET: 'uploaders', '?/save': 'uploaders', '?/draft': 'uploaders' },
+	'/uploads/[id]/form': { PUT: 'uploaders' },
+	'/uploads/material': { GET: 'uploaders', POST: 'uploaders' },
+	'/uploads/dataset': { GET: 'uploaders', POST: 'uploaders' },
+	'/uploads/source': { GET: 'uploaders', '?/read': 'uploaders', '?/add': 'uploaders' },
+	'/drafts/[slug]/[number]': { GET: 'uploaders', '?/keep': 'uploaders', '?/submit': 'uploaders' },
+	'/reviews': { GET: 'reviewers' },
+	'/reviews/[slug]/[number]': { GET: 'reviewers', '?/approve': 'reviewers', '?/return': 'reviewers' },
+	'/compare': readable,
 	'/sign-in': { GET: 'everyone', '?/link': 'everyone', '?/institution': 'everyone', '?/demo': 'everyone' },
 	'/sign-in/confirm': { GET: 'everyone', POST: 'everyone' },
 	'/refused': open,
@@ -53,6 +73,7 @@ export const POLICY: Readonly<Record<string, Row>> = {
 		'?/lead': 'people',
 		'?/remove': 'people'
 	},
+	'/notifications': { GET: 'people', '?/read': 'people', '?/all': 'people' },
 	'/administration': administered,
 	'/administration/people': administered,
 	'/administration/people/[id]': {

@@ -1,5 +1,5 @@
-import type { Spectrum } from '$lib/schemas/version.ts';
-import { spectrum } from '$lib/server/library/spectrum.ts';
+import type { Spectrum, VersionDetail } from '$lib/schemas/version.ts';
+import { onImaginaryAxis, spectrum } from '$lib/server/library/spectrum.ts';
 
 /**
  * Spectra of versions, kept once sampled: a version never changes, and a table takes a good part of a second because the
@@ -31,18 +31,22 @@ const shortened = (values: readonly number[]) => values.map((value) => Number(va
 /** What a page draws at once: the imaginary axis. The real axis is asked for when its plot comes into view. */
 export async function drawnAtOnce(ref: string) {
 	const { imaginary, measuredRangeEv, real } = await sampled(ref);
-	const { xiRadPerS, epsilon, shares } = imaginary;
+	return { measuredRangeEv, hasRealAxis: real !== null, imaginary: shortenedAxis(imaginary) };
+}
+
+/** Of a version that is not public yet, or may change: sampled anew each time, the imaginary axis alone. */
+export function drawnAsIs({ model, measuredRangeEv }: Pick<VersionDetail, 'model' | 'measuredRangeEv'>) {
+	return { measuredRangeEv, hasRealAxis: false, imaginary: shortenedAxis(onImaginaryAxis(model)) };
+}
+
+function shortenedAxis({ xiRadPerS, epsilon, shares }: Spectrum['imaginary']): Spectrum['imaginary'] {
 	return {
-		measuredRangeEv,
-		hasRealAxis: real !== null,
-		imaginary: {
-			xiRadPerS: shortened(xiRadPerS),
-			epsilon: shortened(epsilon),
-			shares: shares && {
-				below: shortened(shares.below),
-				inside: shortened(shares.inside),
-				above: shortened(shares.above)
-			}
+		xiRadPerS: shortened(xiRadPerS),
+		epsilon: shortened(epsilon),
+		shares: shares && {
+			below: shortened(shares.below),
+			inside: shortened(shares.inside),
+			above: shortened(shares.above)
 		}
 	};
 }

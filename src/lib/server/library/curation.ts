@@ -1,12 +1,13 @@
 import { and, asc, eq } from 'drizzle-orm';
 import type { SignedIn } from '../../schemas/person.ts';
-import type { Approval, RefusalOfVersion, Submission } from '../../schemas/upload.ts';
+import type { Approval, Recommendation, RefusalOfVersion, Submission } from '../../schemas/upload.ts';
+import { appendAudit } from '../audit/append.ts';
 import { now } from '../clock.ts';
 import { database, type Transaction } from '../db/client.ts';
 import { upload } from '../db/schema/curation.ts';
 import { checkResult, dataset, version } from '../db/schema/dataset.ts';
 import { material } from '../db/schema/material.ts';
-import { Conflict, Forbidden, InvalidInput, NotFound } from '../errors.ts';
+import { Conflict, Forbidden, InvalidInput, NotFound, StateError } from '../errors.ts';
 import { takeStep } from './review.ts';
 import { reviewers, tell } from './tell.ts';
 import { visibleTo } from './viewer.ts';
@@ -22,6 +23,7 @@ interface Found {
 	datasetId: string;
 	major: number;
 	minor: number;
+	state: string;
 	createdBy: string;
 	submittedBy: string | null;
 	submittedAt: Date | null;
@@ -46,7 +48,7 @@ async function find(tx: Transaction, actor: SignedIn, slug: string, number: stri
 				)
 		: [];
 	if (!found) throw new NotFound(`There is no version ${number} of a dataset "${slug}".`);
-	const { id, note, datasetId, major, minor, createdBy, submittedBy, submittedAt } = found.row;
+	const { id, note, datasetId, major, minor, state, createdBy, submittedBy, submittedAt } = found.row;
 	return {
 		id,
 		ref: refOf(slug, number),
@@ -55,6 +57,7 @@ async function find(tx: Transaction, actor: SignedIn, slug: string, number: stri
 		datasetId,
 		major,
 		minor,
+		state,
 		createdBy,
 		submittedBy,
 		submittedAt
@@ -226,16 +229,9 @@ export async function withdraw(
 	await database().transaction(async (tx) => {
 		const found = await find(tx, actor, slug, number);
 		await takeStep(tx, 'withdraw', { versionId: found.id, checksum, actor: actor.id, now: now(), reason });
-		await tx
-			.update(dataset)
-			.set({ recommendedMajor: null, recommendedMinor: null })
-			.where(
-				and(
-					eq(dataset.id, found.datasetId),
-					eq(dataset.recommendedMajor, found.major),
-					eq(dataset.recommendedMinor, found.minor)
-				)
-			);
+		if (await isRecommended(tx, found)) {
+			await setRecommended(tx, actor, found.datasetId, null, `${found.ref} is withdrawn.`);
+		}
 		const told = makersOf(found).filter((id) => id !== actor.id);
 		await tell(tx, told.filter(isAccount), {
 			kind: 'version-withdrawn',
@@ -244,6 +240,46 @@ export async function withdraw(
 			by: actor.name,
 			reason
 		});
+	});
+}
+
+/** Says which published version of a dataset the curators recommend, apart from which is the newest. */
+export async function recommend(
+	actor: SignedIn,
+	slug: string,
+	number: string,
+	{ reason }: Recommendation
+): Promise<void> {
+	await database().transaction(async (tx) => {
+		const found = await find(tx, actor, slug, number);
+		if (found.state !== 'published')
+			throw new StateError(`Only a published version is recommended; this one is ${found.state}.`);
+		await setRecommended(tx, actor, found.datasetId, found, reason);
+	});
+}
+
+async function isRecommended(tx: Transaction, { datasetId, major, minor }: Found): Promise<boolean> {
+	const [row] = await tx.select().from(dataset).where(eq(dataset.id, datasetId)).for('update');
+	return row.recommendedMajor === major && row.recommendedMinor === minor;
+}
+
+async function setRecommended(
+	tx: Transaction,
+	actor: SignedIn,
+	datasetId: string,
+	chosen: Pick<Found, 'major' | 'minor' | 'ref'> | null,
+	reason: string
+): Promise<void> {
+	await tx
+		.update(dataset)
+		.set({ recommendedMajor: chosen?.major ?? null, recommendedMinor: chosen?.minor ?? null })
+		.where(eq(dataset.id, datasetId));
+	await appendAudit(tx, {
+		actor: actor.id,
+		action: 'dataset.recommend',
+		objectType: 'dataset',
+		objectId: datasetId,
+		details: { version: chosen?.ref ?? null, reason }
 	});
 }
 

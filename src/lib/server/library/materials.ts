@@ -99,18 +99,24 @@ export async function get(slug: string, executor: Executor = database()): Promis
 		versions.map(({ id }) => id)
 	);
 	const datasets = await executor
-		.select({ slug: dataset.slug, title: dataset.title })
+		.select({
+			slug: dataset.slug,
+			title: dataset.title,
+			major: dataset.recommendedMajor,
+			minor: dataset.recommendedMinor
+		})
 		.from(dataset)
 		.where(eq(dataset.materialId, row.id))
 		.orderBy(asc(dataset.slug));
 	const shown = datasets
-		.map(({ slug: datasetSlug, title }): DatasetWithVersions => {
+		.map(({ slug: datasetSlug, title, major, minor }): DatasetWithVersions => {
 			const own = versions.filter((one) => one.datasetSlug === datasetSlug);
 			const latest = own.find(({ state }) => state === 'published');
 			return {
 				slug: datasetSlug,
 				title,
 				latest: latest ? `${latest.major}.${latest.minor}` : null,
+				recommended: major === null || minor === null ? null : `${major}.${minor}`,
 				versions: own.map((one) => toSummary(one, sources.get(one.id) ?? []))
 			};
 		})

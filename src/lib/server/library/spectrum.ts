@@ -57,7 +57,7 @@ function thinned(model: PermittivityModel): PermittivityModel {
 	};
 }
 
-function onImaginaryAxis(model: PermittivityModel): Spectrum['imaginary'] {
+export function onImaginaryAxis(model: PermittivityModel): Spectrum['imaginary'] {
 	if (model.kind === 'idealConductor') return { xiRadPerS: [], epsilon: [], shares: null };
 	const xiRadPerS = logGrid(XI);
 	const shares = model.kind === 'table' ? xiRadPerS.map((xi) => epsilonShares(model, xi)) : null;

@@ -22,10 +22,11 @@ export const serializeMaterial = (material: MaterialSummary) => ({
 
 export const serializeMaterialDetail = (material: MaterialDetail) => ({
 	...serializeMaterial(material),
-	datasets: material.datasets.map(({ slug, title, latest, versions }) => ({
+	datasets: material.datasets.map(({ slug, title, latest, recommended, versions }) => ({
 		slug,
 		title,
 		latest,
+		recommended,
 		links: { latest: latest ? versionApiPath(slug, latest) : null },
 		versions: versions.map(serializeVersionSummary)
 	}))

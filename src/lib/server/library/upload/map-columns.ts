@@ -1,10 +1,11 @@
 import type { PermittivityModel } from '../../../engine/contract.ts';
+import type { FileIssue } from '../../../schemas/upload-preview.ts';
 import type { Ordinate, Quantity, TableReading } from '../../../schemas/upload.ts';
 import { InvalidInput } from '../../errors.ts';
 import { readNumber } from './number.ts';
 import type { Sheet } from './parse.ts';
 import { PHOTON_ENERGY_EV, angularFrequency } from './photon-energy.ts';
-import { RefusedFile, type FileIssue } from './refused-file.ts';
+import { RefusedFile } from './refused-file.ts';
 
 /** A sheet with its columns understood: the numbers as given, and the model that the engine computes with. */
 export interface MappedTable {

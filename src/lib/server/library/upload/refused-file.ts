@@ -1,15 +1,5 @@
+import type { FileIssue } from '../../../schemas/upload-preview.ts';
 import { InvalidInput, type Issue } from '../../errors.ts';
-
-/** One thing wrong with an uploaded file: where it is, which rule it breaks, and what would be right. */
-export interface FileIssue {
-	line: number;
-	/** Counted from 1; null where the whole line is meant. */
-	column: number | null;
-	rule: string;
-	message: string;
-	/** The text itself, cut short; shown escaped. */
-	text: string;
-}
 
 const ISSUES_MAX = 100;
 const TEXT_MAX = 60;
