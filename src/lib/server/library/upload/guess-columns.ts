@@ -24,7 +24,7 @@ const QUANTITIES: [RegExp, Quantity][] = [
 	[/^(k|kappa|κ)\b/i, 'k']
 ];
 
-const UNCERTAINTY = /^(s|d|u|sigma|σ|delta|Δ|err(or)?|unc(ertainty)?|std|±)[\s_.(]*/i;
+const UNCERTAINTY = /^((sigma|delta|error|err|uncertainty|unc|std|σ|Δ|±)[\s_.(]*|[sdu][\s_.(]+)/i;
 
 export function guessColumns(sheet: Sheet): ColumnGuess {
 	const width = sheet.rows[0].cells.length;
@@ -42,7 +42,7 @@ function quantityIn(texts: string[]): Quantity | undefined {
 	for (const text of texts) {
 		const plain = text.replace(/^["'[(]+/, '');
 		const found = QUANTITIES.find(([pattern]) => pattern.test(plain));
-		if (found && !UNCERTAINTY.test(plain.slice(0, 2) === 'ep' ? '' : plain)) return found[1];
+		if (found && !UNCERTAINTY.test(plain)) return found[1];
 	}
 	return undefined;
 }
