@@ -3,11 +3,15 @@ import { expect, type Page } from '@playwright/test';
 
 /** What every browser test needs: trouble that a page hides in its console, and the accessibility audit. */
 
-/** Collects errors of the page; call the answer at the end of a test. */
-export function watchTrouble(page: Page): () => void {
+/**
+ * Collects errors of the page; call the answer at the end of a test.
+ *
+ * @param meant what the test itself brings about, as an answer that refuses a form
+ */
+export function watchTrouble(page: Page, meant?: RegExp): () => void {
 	const trouble: string[] = [];
 	page.on('console', (message) => {
-		if (message.type() === 'error') trouble.push(message.text());
+		if (message.type() === 'error' && !meant?.test(message.text())) trouble.push(message.text());
 	});
 	page.on('pageerror', (error) => trouble.push(error.message));
 	return () => expect(trouble, 'errors in the console').toEqual([]);
