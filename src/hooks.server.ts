@@ -95,7 +95,10 @@ const permitted: Handle = async ({ event, resolve }) => {
 	if (verdict === 'forbidden') {
 		if (isApi) return problemResponse(new Forbidden(FORBIDDEN));
 		const wantsPage = method === 'GET' && !event.isDataRequest && accepts(event.request, 'text/html');
-		if (wantsPage) return event.fetch('/refused', { headers: { accept: 'text/html' } });
+		if (wantsPage) {
+			const page = await event.fetch('/refused', { headers: { accept: 'text/html' } });
+			return new Response(page.body, { status: 403, headers: page.headers });
+		}
 		error(403, FORBIDDEN);
 	}
 	if (isApi || event.locals.principal.kind === 'unknown') {
