@@ -4,6 +4,12 @@ export { CONSTANTS_RELEASE } from './constants.ts';
 export { ENGINE_LIMITS } from './limits.ts';
 export { Refusal, type Issue } from './refusal.ts';
 export { evaluate, prepare, type Preparation } from './prepare.ts';
+export {
+	screeningKernel,
+	type ScreeningKernel,
+	type ScreeningPressure,
+	type ScreeningTriple
+} from './screening.ts';
 export { estimateCost, type Cost } from './cost.ts';
 export { separationsOf } from './validate.ts';
 export { debyeLength } from './ions.ts';

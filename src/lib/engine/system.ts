@@ -45,19 +45,41 @@ export interface System {
 	knots: number[];
 }
 
-/** `system` of a checked request: conversion of the contract to SI happens here and nowhere else. */
-export function systemOf(request: ForceRequest): System {
+/** Gives the same object for the same substance. */
+export type SubstanceSource = (material: MaterialModel) => Substance;
+
+export const substanceOf = ({ permittivity, permeability: magnetic }: MaterialModel): Substance => ({
+	chi: permittivity.kind === 'idealConductor' ? null : susceptibility(permittivity),
+	mu: permeability(magnetic)
+});
+
+/** Substances by what their models say, whatever object says it. */
+function substancesByModel(): SubstanceSource {
+	const known = new Map<string, Substance>();
+	return (material) => {
+		const key = JSON.stringify([material.permittivity, material.permeability ?? null]);
+		const substance = known.get(key) ?? substanceOf(material);
+		known.set(key, substance);
+		return substance;
+	};
+}
+
+/**
+ * `system` of a checked request: conversion of the contract to SI happens here and nowhere else.
+ *
+ * @param source  where substances come from that are prepared already
+ */
+export function systemOf(
+	request: Pick<ForceRequest, 'arrangement'>,
+	source: SubstanceSource = substancesByModel()
+): System {
 	const { arrangement } = request;
 	const { medium, temperatureK } = arrangement;
 	const substances: Substance[] = [];
-	const known = new Map<string, number>();
-	const indexOf = ({ permittivity, permeability: magnetic }: MaterialModel): number => {
-		const key = JSON.stringify([permittivity, magnetic ?? null]);
-		const found = known.get(key);
-		if (found !== undefined) return found;
-		const chi = permittivity.kind === 'idealConductor' ? null : susceptibility(permittivity);
-		known.set(key, substances.push({ chi, mu: permeability(magnetic) }) - 1);
-		return substances.length - 1;
+	const indexOf = (material: MaterialModel): number => {
+		const substance = source(material);
+		const found = substances.indexOf(substance);
+		return found < 0 ? substances.push(substance) - 1 : found;
 	};
 	const atZero = (material: MaterialModel): ZeroFrequencyMaterial => {
 		const { chi, mu } = substances[indexOf(material)];

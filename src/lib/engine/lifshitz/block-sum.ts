@@ -2,6 +2,7 @@ import { roundTripTime, type System } from '../system.ts';
 import type { FrequencyBlock } from './frequency-blocks.ts';
 import { frequencyTerms } from './frequency-terms.ts';
 import type { Level } from './level.ts';
+import type { Quantities } from './polarization-sum.ts';
 import { newTally, valueOf, type Tally } from './tally.ts';
 
 /**
@@ -85,8 +86,8 @@ export interface BlockSum {
 }
 
 /** Adds up blocks of frequencies of one system at one level. */
-export function blockSum(system: System, level: Level): BlockSum {
-	const { terms, at, phaseOf } = frequencyTerms(system, level);
+export function blockSum(system: System, level: Level, quantities: Quantities): BlockSum {
+	const { terms, at, phaseOf } = frequencyTerms(system, level, quantities);
 	const last = new Float64Array(3);
 	const projected = new Float64Array(18);
 	const phases = [0, 0];

@@ -1,10 +1,11 @@
-import { logLattice, type LogLattice } from '../numerics/log-lattice.ts';
+import type { LogLattice } from '../numerics/log-lattice.ts';
 import { halfSpaceReflection, idealReflection } from '../reflection/half-space.ts';
 import { stackAtFrequency, stackReflection, OPAQUE, type StackAtFrequency } from '../reflection/stack.ts';
 import type { Body, System } from '../system.ts';
 import type { FrequencyBlock } from './frequency-blocks.ts';
+import { frequencyLattice } from './lattices.ts';
 import { doubledFall, LATTICE_CONSTANTS, singleFall, type Level } from './level.ts';
-import { addPolarizationNoise, polarizationSum } from './polarization-sum.ts';
+import { addPolarizationNoise, sumOf, type Quantities } from './polarization-sum.ts';
 import { UNIT_ROUNDOFF } from './tally.ts';
 
 /** Integrals of one frequency: TE and TM of F, P, G, what the lattice leaves open and what rounding may do. */
@@ -44,12 +45,11 @@ export interface FrequencyEvaluator {
 }
 
 /** Evaluator of frequency terms for one system and level. */
-export function frequencyTerms(system: System, level: Level): FrequencyEvaluator {
+export function frequencyTerms(system: System, level: Level, quantities: Quantities): FrequencyEvaluator {
 	const { substances, left, right, twins } = system;
-	const lattices: LogLattice[] = [];
-	const latticeOf = (index: number, odd: number): LogLattice =>
-		(lattices[2 * index + odd] ??= logLattice(level.step, 2 ** -index, level.cut, level.cut, odd / 2));
+	const latticeOf = (index: number, odd: number): LogLattice => frequencyLattice(level, index, odd);
 	const size = latticeOf(SMALLEST_SCALE, 0).count + 4;
+	const polarizationSum = sumOf(quantities);
 	const [tm1, te1, tm2, te2] = [0, 1, 2, 3].map(() => new Float64Array(size));
 	const stacks = [left, right].map(({ thickness }) => stackAtFrequency(thickness.length));
 	const sums = new Float64Array(6);

@@ -3,6 +3,7 @@ import { blockSum } from './block-sum.ts';
 import { matsubaraBlocks, probeBlock, type FrequencyBlock } from './frequency-blocks.ts';
 import type { Level } from './level.ts';
 import { matsubaraFrequency } from './matsubara.ts';
+import type { Quantities } from './polarization-sum.ts';
 import { LARGEST_PHASE, tailJudge } from './tail.ts';
 import type { Tally } from './tally.ts';
 
@@ -13,10 +14,11 @@ import type { Tally } from './tally.ts';
  */
 export function matsubaraSum(
 	system: System,
-	level: Level
+	level: Level,
+	quantities: Quantities
 ): (separation: number, accuracy: number, tally: Tally) => void {
 	const blockAt = matsubaraBlocks(level, system.temperature, system.knots);
-	const sum = blockSum(system, level);
+	const sum = blockSum(system, level, quantities);
 	const octave = new Float64Array(3);
 	const [first, second] = [new Float64Array(3), new Float64Array(3)];
 	const probes = new Map<number, FrequencyBlock>();

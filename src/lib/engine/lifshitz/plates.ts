@@ -2,6 +2,7 @@ import { BOLTZMANN, REDUCED_PLANCK } from '../constants.ts';
 import type { System } from '../system.ts';
 import { matsubaraSum } from './matsubara-sum.ts';
 import { LEVELS, type Level } from './level.ts';
+import type { Quantities } from './polarization-sum.ts';
 import { newTally, valueOf, type Tally } from './tally.ts';
 import { zeroTemperatureIntegral } from './zero-temperature.ts';
 import { zeroTerm } from './zero-term.ts';
@@ -31,30 +32,48 @@ const scales = (system: System, separation: number): [number, number, number] =>
  * Energy, pressure and gradient of two layered bodies at one separation (methods.md sections 1 to 3): one sweep over
  * frequencies and y gives all three. Climbs the levels until the bound meets the accuracy asked for.
  *
+ * @param quantities  `pressure` leaves energy and gradient at zero and asks the accuracy of the pressure alone
  * @returns (separation in m, > 0) => forces; the bound covers integration over y, summation over frequencies, the
  *          tail and rounding, not the optical data
  */
-export function plates(system: System, relativeAccuracy: number): (separation: number) => PlateForces {
+export function plates(
+	system: System,
+	relativeAccuracy: number,
+	quantities: Quantities = 'all'
+): (separation: number) => PlateForces {
 	const first = LEVELS.findIndex(({ reach }) => relativeAccuracy >= reach);
-	const climbs = LEVELS.slice(first).map((level) => atLevel(system, level));
+	const climbs = LEVELS.slice(first).map((level) => once(() => atLevel(system, level, quantities)));
 	return (separation) => {
-		let best = climbs[0](separation, relativeAccuracy);
+		let best = climbs[0]()(separation, relativeAccuracy);
 		for (let i = 1; i < climbs.length && !meets(best, relativeAccuracy); i++) {
 			const spent = best.evaluations;
-			best = climbs[i](separation, relativeAccuracy);
+			best = climbs[i]()(separation, relativeAccuracy);
 			best.evaluations += spent;
 		}
 		return best;
 	};
 }
 
+/** Levels that are never reached are never set up. */
+function once<T>(make: () => T): () => T {
+	let made: T | undefined;
+	return () => (made ??= make());
+}
+
 export const meets = ({ value, bound }: PlateForces, relativeAccuracy: number): boolean =>
 	value.every((one, q) => bound[q] <= relativeAccuracy * Math.abs(one));
 
 /** One separation at one level, whatever its bound turns out to be. */
-export function atLevel(system: System, level: Level): (separation: number, accuracy: number) => PlateForces {
-	const sum = system.temperature > 0 ? matsubaraSum(system, level) : zeroTemperatureIntegral(system, level);
-	const zero = system.temperature > 0 ? zeroTerm(system, level) : null;
+export function atLevel(
+	system: System,
+	level: Level,
+	quantities: Quantities
+): (separation: number, accuracy: number) => PlateForces {
+	const sum =
+		system.temperature > 0
+			? matsubaraSum(system, level, quantities)
+			: zeroTemperatureIntegral(system, level, quantities);
+	const zero = system.temperature > 0 ? zeroTerm(system, level, quantities) : null;
 	return (separation, accuracy) => {
 		const tally = newTally();
 		zero?.(separation, tally);

@@ -57,6 +57,40 @@ export function polarizationSum(
 	out[5] = g1;
 }
 
+/** P alone of the same integrals, no logarithm; F and G are left at zero. */
+export function polarizationPressure(
+	lattice: LogLattice,
+	y0: number,
+	r1: Float64Array,
+	r2: Float64Array,
+	out: Float64Array
+): void {
+	const { count, s, weight, decay } = lattice;
+	const decay0 = Math.exp(-y0);
+	let p0 = 0;
+	let p1 = 0;
+	for (let i = 0; i < count; i += 2) {
+		let y = y0 + s[i];
+		let z = r1[i] * r2[i] * decay0 * decay[i];
+		let d = z < NEAR_ONE ? 1 / (1 - z) : 1 / (y + Math.abs(1 - z));
+		p0 += weight[i] * y * y * z * d;
+		const j = i + 1;
+		y = y0 + s[j];
+		z = r1[j] * r2[j] * decay0 * decay[j];
+		d = z < NEAR_ONE ? 1 / (1 - z) : 1 / (y + Math.abs(1 - z));
+		p1 += weight[j] * y * y * z * d;
+	}
+	out.fill(0);
+	out[2] = p0;
+	out[3] = p1;
+}
+
+/** What is computed of a separation: pressure alone costs no logarithms. */
+export type Quantities = 'all' | 'pressure';
+
+export const sumOf = (quantities: Quantities): typeof polarizationSum =>
+	quantities === 'all' ? polarizationSum : polarizationPressure;
+
 /**
  * The same integrals with R replaced by what rounding may do to it, noise2 |r1| + noise1 |r2|: for stacks, whose
  * coefficient may be a small difference of larger ones.

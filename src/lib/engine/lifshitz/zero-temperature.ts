@@ -3,6 +3,7 @@ import { roundTripTime, type System } from '../system.ts';
 import { blockSum } from './block-sum.ts';
 import { probeBlock, zeroTemperatureBlocks, type FrequencyBlock } from './frequency-blocks.ts';
 import type { Level } from './level.ts';
+import type { Quantities } from './polarization-sum.ts';
 import { LARGEST_PHASE, tailJudge } from './tail.ts';
 import { copyTally, restoreTally, UNIT_ROUNDOFF, valueOf, type Tally } from './tally.ts';
 
@@ -26,10 +27,11 @@ const REMAINDER_SHARE = 0.1;
  */
 export function zeroTemperatureIntegral(
 	system: System,
-	level: Level
+	level: Level,
+	quantities: Quantities
 ): (separation: number, accuracy: number, tally: Tally) => void {
 	const blocks = zeroTemperatureBlocks(level, system.knots);
-	const sum = blockSum(system, level);
+	const sum = blockSum(system, level, quantities);
 	const octave = new Float64Array(3);
 	const [first, second] = [new Float64Array(3), new Float64Array(3)];
 	const probes = new Map<string, FrequencyBlock>();

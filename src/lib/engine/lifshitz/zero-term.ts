@@ -1,5 +1,5 @@
 import { SPEED_OF_LIGHT } from '../constants.ts';
-import { logLattice, type LogLattice } from '../numerics/log-lattice.ts';
+import type { LogLattice } from '../numerics/log-lattice.ts';
 import { trilogarithm } from '../numerics/trilogarithm.ts';
 import {
 	staticTe,
@@ -8,15 +8,13 @@ import {
 	type ZeroFrequencyMaterial
 } from '../reflection/zero-frequency.ts';
 import type { Body, System } from '../system.ts';
+import { zeroLattice } from './lattices.ts';
 import { doubledFall, LATTICE_CONSTANTS, type Level } from './level.ts';
-import { addPolarizationNoise, polarizationSum } from './polarization-sum.ts';
+import { addPolarizationNoise, sumOf, type Quantities } from './polarization-sum.ts';
 import { UNIT_ROUNDOFF, type Tally } from './tally.ts';
 
 /** Reflection that does not depend on the wave number has a closed form: F -Li_3, P 2 Li_3, G 6 Li_3 of R. */
 const CLOSED = [-1, 2, 6];
-
-/** Below the disc of analyticity nothing is known when n = 0: the lattice runs down in ln s to where it may be cut. */
-const NO_DISC = 1e-30;
 
 /** Share of the axis that a screened n = 0 term may live on. */
 const SMALL_PART = 1e-4;
@@ -25,11 +23,16 @@ const SMALL_PART = 1e-4;
 const ROUNDING = 24;
 
 /** The n = 0 term of a system (methods.md section 2), with the half weight of the primed sum. */
-export function zeroTerm(system: System, level: Level): (separation: number, tally: Tally) => void {
+export function zeroTerm(
+	system: System,
+	level: Level,
+	quantities: Quantities
+): (separation: number, tally: Tally) => void {
+	const polarizationSum = sumOf(quantities);
+	const wanted = quantities === 'all' ? [0, 1, 2] : [1];
 	const { left, right, screening, ions } = system;
 	const medium = left.zero[0];
-	const latticesTo = (floor: number): LogLattice[] =>
-		[0, 1 / 2].map((shift) => logLattice(level.step, NO_DISC, level.cut, floor, shift));
+	const latticesTo = (floor: number): LogLattice[] => [0, 1].map((odd) => zeroLattice(level, floor, odd));
 	// With y0 = 0 the integrands vanish at least like y ln y at the foot.
 	const unscreened = latticesTo(Math.sqrt(level.cut) / 200);
 	const fall = doubledFall(level);
@@ -83,7 +86,7 @@ export function zeroTerm(system: System, level: Level): (separation: number, tal
 				right.silent / separation,
 				noise
 			);
-			for (let q = 0; q < 3; q++) {
+			for (const q of wanted) {
 				const even = sums[2 * q];
 				const odd = sums[2 * q + 1];
 				// Half weight of the primed sum, and half of each of the two lattices.
@@ -92,7 +95,7 @@ export function zeroTerm(system: System, level: Level): (separation: number, tal
 				tally.lattice[q] += level.cut * Math.abs(even + odd);
 			}
 		}
-		for (let q = 0; q < 3; q++) {
+		for (const q of wanted) {
 			tally.lattice[q] += (fall * LATTICE_CONSTANTS[q] * open[q]) / 2;
 			tally.rounding[q] += noise[q] / 4;
 		}
@@ -102,7 +105,7 @@ export function zeroTerm(system: System, level: Level): (separation: number, tal
 		const single = polarisation === 'te' ? staticTe : staticTm;
 		const R = single(medium, left.zero[1]) * single(medium, right.zero[1]);
 		const amplified = closedRounding(medium, left.zero[1], right.zero[1], polarisation);
-		for (let q = 0; q < 3; q++)
+		for (const q of wanted)
 			add(tally, polarisation, q, (CLOSED[q] * trilogarithm(R)) / 2, UNIT_ROUNDOFF * (ROUNDING + amplified));
 	};
 
