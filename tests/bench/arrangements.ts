@@ -52,8 +52,8 @@ const magnetic: MaterialModel = {
 	permeability: { kind: 'debye', value: 110, relaxationTimePs: 100 }
 };
 
-/** A measured-looking table: a Drude edge and two broad bands. */
-function tableOf(rows: number): PermittivityModel {
+/** A measured-looking table: two broad bands, and a Drude edge where it conducts. */
+export function tableOf(rows: number, strength = 1, conducts = true): PermittivityModel {
 	const energiesEv = Array.from({ length: rows }, (_, i) => 0.1 * Math.pow(1000, i / (rows - 1)));
 	const band = (energy: number, centre: number, width: number, strength: number): number =>
 		(strength * width * energy) / ((centre ** 2 - energy ** 2) ** 2 + (width * energy) ** 2);
@@ -62,11 +62,13 @@ function tableOf(rows: number): PermittivityModel {
 		energiesEv,
 		epsilon2: energiesEv.map(
 			(energy) =>
-				(81 * 0.035) / (energy * (energy ** 2 + 0.035 ** 2)) +
-				band(energy, 3.2, 1.5, 30) +
-				band(energy, 20, 18, 200)
+				(conducts ? (81 * 0.035) / (energy * (energy ** 2 + 0.035 ** 2)) : 0) +
+				strength * band(energy, 3.2, 1.5, 30) +
+				strength * band(energy, 20, 18, 200)
 		),
-		lowEnd: { kind: 'drude', plasmaEnergyEv: 9, dampingEv: 0.035 },
+		lowEnd: conducts
+			? { kind: 'drude', plasmaEnergyEv: 9, dampingEv: 0.035 }
+			: { kind: 'power', exponent: 1 },
 		highEnd: { kind: 'power', exponent: 3 }
 	};
 }

@@ -88,6 +88,8 @@ export interface BlockSum {
 /** Adds up blocks of frequencies of one system at one level. */
 export function blockSum(system: System, level: Level, quantities: Quantities): BlockSum {
 	const { terms, at, phaseOf } = frequencyTerms(system, level, quantities);
+	/** The quantity by which the fall of terms is judged. */
+	const gauge = quantities === 'all' ? 0 : 1;
 	const last = new Float64Array(3);
 	const projected = new Float64Array(18);
 	const phases = [0, 0];
@@ -101,7 +103,7 @@ export function blockSum(system: System, level: Level, quantities: Quantities): 
 		for (let i = 0; i < block.xi.length; i++) {
 			at(block, i, separation, time);
 			phases[1] = terms.phase;
-			const size = Math.abs(terms.te[0]) + Math.abs(terms.tm[0]);
+			const size = Math.abs(terms.te[gauge]) + Math.abs(terms.tm[gauge]);
 			rising ||= i > 0 && size > sizes[1];
 			sizes[1] = size;
 			if (i === 0) {
