@@ -6,12 +6,18 @@ import { withCuration } from './openapi-curation.ts';
 import { forcePaths } from './openapi-forces.ts';
 import { libraryPaths } from './openapi-library.ts';
 import { peoplePaths } from './openapi-people.ts';
+import { studyPaths } from './openapi-studies.ts';
 
 /** The description of the API, made from the schemas that check what comes in and out. */
 
 export const API_BASE = '/api/v1';
 
-const paths: ZodOpenApiPathsObject = { ...forcePaths, ...withCuration(libraryPaths), ...peoplePaths };
+const paths: ZodOpenApiPathsObject = {
+	...forcePaths,
+	...withCuration(libraryPaths),
+	...peoplePaths,
+	...studyPaths
+};
 
 const [pinned, inPlace] = materialChoiceDescribed.options;
 

@@ -8,6 +8,7 @@ import { invitation } from '../db/schema/invitation.ts';
 import { material } from '../db/schema/material.ts';
 import { person } from '../db/schema/people.ts';
 import { source } from '../db/schema/source.ts';
+import { study } from '../db/schema/study.ts';
 import { apiToken } from '../db/schema/token.ts';
 
 /** What the objects of the trail are called, where their number alone says nothing. */
@@ -35,6 +36,7 @@ const KINDS: { types: string[]; of: Named }[] = [
 	{ types: ['material'], of: { table: material, id: material.id, name: material.slug } },
 	{ types: ['source'], of: { table: source, id: source.id, name: source.slug } },
 	{ types: ['dataset'], of: { table: dataset, id: dataset.id, name: dataset.slug } },
+	{ types: ['study'], of: { table: study, id: study.id, name: study.name } },
 	{ types: ['version'], of: { table: version, id: version.id, name: versionRef } }
 ];
 

@@ -31,6 +31,7 @@ const RIGHT: Record<Who, { roles: Role[]; scope: Scope | null; visitor: boolean 
 		scope: 'read',
 		visitor: false
 	},
+	keepers: { roles: ['reader', 'researcher', 'curator', 'administrator'], scope: 'compute', visitor: false },
 	uploaders: { roles: ['curator'], scope: 'upload', visitor: false },
 	reviewers: { roles: ['curator'], scope: 'review', visitor: false },
 	administrators: { roles: ['administrator'], scope: null, visitor: false }

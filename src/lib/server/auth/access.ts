@@ -21,6 +21,8 @@ export const MEANINGS = {
 	people: { signedOut: 'never', roles: ROLES, scope: null },
 	/** What a person may also look at through a program. */
 	'people-by-token': { signedOut: 'never', roles: ROLES, scope: 'read' },
+	/** Keeping studies: by a browser, or by a token that may compute. */
+	keepers: { signedOut: 'never', roles: ROLES, scope: 'compute' },
 	uploaders: { signedOut: 'never', roles: ['curator'], scope: 'upload' },
 	reviewers: { signedOut: 'never', roles: ['curator'], scope: 'review' },
 	administrators: { signedOut: 'never', roles: ['administrator'], scope: null }

@@ -8,6 +8,7 @@ import { upload } from '../db/schema/curation.ts';
 import { checkResult, dataset, version } from '../db/schema/dataset.ts';
 import { material } from '../db/schema/material.ts';
 import { Conflict, Forbidden, InvalidInput, NotFound, StateError } from '../errors.ts';
+import { tellOfPublication, tellOfWithdrawal } from '../studies/tell-owners.ts';
 import { takeStep } from './review.ts';
 import { reviewers, tell } from './tell.ts';
 import { visibleTo } from './viewer.ts';
@@ -194,6 +195,7 @@ export async function approve(
 			by: actor.name,
 			reason: reason ?? null
 		});
+		await tellOfPublication(tx, found.datasetId, { ...found, by: actor.name, actorId: actor.id });
 	});
 }
 
@@ -240,6 +242,7 @@ export async function withdraw(
 			by: actor.name,
 			reason
 		});
+		await tellOfWithdrawal(tx, found.datasetId, { ...found, by: actor.name, actorId: actor.id, reason });
 	});
 }
 

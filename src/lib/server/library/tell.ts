@@ -4,7 +4,7 @@ import { now } from '../clock.ts';
 import type { Transaction } from '../db/client.ts';
 import { notification } from '../db/schema/curation.ts';
 import { person } from '../db/schema/people.ts';
-import type { ReviewLetter } from '../mail/review-letters.ts';
+import { isAboutStudy, type ReviewLetter } from '../mail/review-letters.ts';
 import { enqueue } from '../outbox/enqueue.ts';
 
 /** Telling people about a version, in the transaction that gives the reason: inside the application always, by mail if they want it. */
@@ -24,7 +24,8 @@ export async function tell(
 	const { kind, ...data } = letter;
 	for (const one of people) {
 		await tx.insert(notification).values({ personId: one.id, kind, data, createdAt: now() });
-		const wanted = preferences.parse(one.preferences).mailAboutReviews;
+		const { mailAboutReviews, mailAboutVersions } = preferences.parse(one.preferences);
+		const wanted = isAboutStudy(kind) ? mailAboutVersions : mailAboutReviews;
 		if (wanted && one.email) await enqueue(tx, { letter, to: one.email });
 	}
 }

@@ -16,7 +16,9 @@ const shapes = {
 	'review-wanted': z.object({ ...base, note: z.string().nullable() }),
 	'version-returned': z.object({ ...base, reason: z.string() }),
 	'version-published': z.object({ ...base, reason: z.string().nullable() }),
-	'version-withdrawn': z.object({ ...base, reason: z.string() })
+	'version-withdrawn': z.object({ ...base, reason: z.string() }),
+	'study-input-published': z.object({ ...base, study: z.string(), studyId: z.string() }),
+	'study-input-withdrawn': z.object({ ...base, reason: z.string(), study: z.string(), studyId: z.string() })
 };
 
 export type ReviewLetterKind = keyof typeof shapes;
@@ -24,6 +26,9 @@ export type ReviewLetterKind = keyof typeof shapes;
 export type ReviewLetter = {
 	[Kind in ReviewLetterKind]: { kind: Kind } & z.infer<(typeof shapes)[Kind]>;
 }[ReviewLetterKind];
+
+/** Told to owners of studies, who choose apart from reviewers whether they want mail of it. */
+export const isAboutStudy = (kind: ReviewLetterKind): boolean => kind.startsWith('study-');
 
 export const isReviewLetter = (kind: string): kind is ReviewLetterKind => Object.hasOwn(shapes, kind);
 
@@ -73,6 +78,29 @@ export function writeReviewLetter(kind: ReviewLetterKind, data: unknown, origin:
 					'Its address stays, says so, and what used it can be recomputed. New work should not use it.'
 				],
 				link: { text: 'See the version', href: `${origin}${versionPath(ref)}` }
+			};
+		}
+		case 'study-input-published': {
+			const { ref, title, by, study, studyId } = shapes[kind].parse(data);
+			return {
+				subject: `${ref} is new, and your study rests on an earlier version`,
+				paragraphs: [
+					`${by} published ${ref} (${title}). Your study "${study}" keeps the version that it names until you say otherwise.`,
+					'Its page marks the revision and can show the change beside what you have.'
+				],
+				link: { text: 'Open the study', href: `${origin}/studies/${studyId}` }
+			};
+		}
+		case 'study-input-withdrawn': {
+			const { ref, title, by, reason, study, studyId } = shapes[kind].parse(data);
+			return {
+				subject: `${ref} is withdrawn, and your study rests on it`,
+				paragraphs: [
+					`${by} withdrew ${ref} (${title}), on which your study "${study}" rests. The reason:`,
+					reason,
+					'The study can still be computed as it was.'
+				],
+				link: { text: 'Open the study', href: `${origin}/studies/${studyId}` }
 			};
 		}
 	}
