@@ -7,6 +7,7 @@ import type {
 	MaterialModel,
 	PermittivityModel
 } from '$lib/engine/contract.ts';
+import { composedLiquid, composedSolid } from './random-composed.ts';
 
 /** Uniform numbers in [0, 1) from a seed: splitmix32, the same on every machine. */
 export function seededRandom(seed: number): () => number {
@@ -283,8 +284,29 @@ function temperature(dice: Dice): number {
 	return dice.between(10, 1000);
 }
 
-/** A valid request drawn over everything plates are computed for; the same for the same seed. */
+/** The same request for the same seed; every fourth one holds a fitted band, a mixture or a law of temperature somewhere. */
 export function randomRequest(seed: number): ForceRequest {
+	const request = plainRequest(seed);
+	return seed % 4 === 0 ? withComposed(request, seed) : request;
+}
+
+/** Another stream of numbers, so that what is drawn here changes nothing that was drawn before. */
+function withComposed(request: ForceRequest, seed: number): ForceRequest {
+	const random = seededRandom(seed ^ 0x5bd1e995);
+	const { arrangement } = request;
+	const { left, medium } = arrangement;
+	if (random() < 0.3 && medium.permittivity.kind !== 'constant' && arrangement.debyeLengthNm === undefined)
+		return { ...request, arrangement: { ...arrangement, medium: { permittivity: composedLiquid(random) } } };
+	const fresh: MaterialModel = { permittivity: composedSolid(random) };
+	const body =
+		left.layers.length > 0 && random() < 0.5
+			? { ...left, layers: [{ ...left.layers[0], of: fresh }, ...left.layers.slice(1)] }
+			: { ...left, substrate: fresh };
+	return { ...request, arrangement: { ...arrangement, left: body } };
+}
+
+/** A valid request drawn over everything plates are computed for; the same for the same seed. */
+function plainRequest(seed: number): ForceRequest {
 	const dice = new Dice(seededRandom(seed));
 	const temperatureK = temperature(dice);
 	const across: MaterialModel = {

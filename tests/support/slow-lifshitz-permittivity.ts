@@ -13,6 +13,14 @@ import {
 	toNumber,
 	type DoubleDouble
 } from './slow-lifshitz-double-double.ts';
+import {
+	bandSusceptibility,
+	mixtureCarriers,
+	mixtureSusceptibility,
+	sellmeierSusceptibility,
+	slowAtTemperature,
+	spreadSusceptibility
+} from './slow-lifshitz-composed.ts';
 import { imaginaryTableSusceptibility } from './slow-lifshitz-imaginary-table.ts';
 import { tableSusceptibility } from './slow-lifshitz-table.ts';
 
@@ -26,7 +34,10 @@ const HBAR_OVER_E: DoubleDouble = divide(divide([6.62607015, 0], multiply([1.602
 const EPSILON_VACUUM = 8.8541878188e-12;
 
 /** Closed forms and tables, sums flattened; an ideal conductor has no susceptibility and is told apart. */
-type Term = Exclude<PermittivityModel, { kind: 'sum' } | { kind: 'vacuum' } | { kind: 'idealConductor' }>;
+type Term = Exclude<
+	PermittivityModel,
+	{ kind: 'sum' } | { kind: 'vacuum' } | { kind: 'idealConductor' } | { kind: 'temperatureDependent' }
+>;
 
 export interface SlowMaterial {
 	readonly terms: readonly Term[];
@@ -61,26 +72,50 @@ function termsOf(model: PermittivityModel): Term[] {
 	if (model.kind === 'debye') return model.terms.map((term) => ({ kind: 'debye', terms: [term] }));
 	if (model.kind === 'ninhamParsegian')
 		return model.terms.map((term) => ({ kind: 'ninhamParsegian', terms: [term] }));
+	if (model.kind === 'brendelBormann')
+		return model.terms.map((term) => ({ kind: 'brendelBormann', terms: [term] }));
+	if (model.kind === 'temperatureDependent') return termsOf(model.of);
 	return [model];
 }
 
-function zeroResponse(terms: readonly Term[], rule: ZeroFrequencyRule | undefined): ZeroResponse {
-	let conducts = false;
-	let undamped = 0;
-	let damped = 0;
+type Mixture = Extract<Term, { kind: 'maxwellGarnett' | 'bruggeman' }>;
+
+/** Amplitudes of 1/xi^2 and 1/xi of a mixture, and of 1/xi^2 with dampings dropped; any unit, since only zero matters of the second. */
+function mixtureZero(mixture: Mixture): { undamped: number; conducting: number; dropped: number } {
+	const [host, inclusion] = [mixture.host, mixture.inclusion].map((part) => carriersOf(termsOf(part)));
+	const of = (name: 'undamped' | 'conducting' | 'dropped') =>
+		mixtureCarriers(mixture, host[name], inclusion[name]);
+	return { undamped: of('undamped'), conducting: of('conducting'), dropped: of('dropped') };
+}
+
+function carriersOf(terms: readonly Term[]): { undamped: number; conducting: number; dropped: number } {
+	const sum = { undamped: 0, conducting: 0, dropped: 0 };
 	for (const term of terms) {
+		if (term.kind === 'maxwellGarnett' || term.kind === 'bruggeman') {
+			const inner = mixtureZero(term);
+			sum.undamped += inner.undamped;
+			sum.conducting += inner.conducting;
+			sum.dropped += inner.dropped;
+			continue;
+		}
 		const low = term.kind === 'table' ? term.lowEnd : term;
-		if (low.kind === 'plasma') undamped += low.plasmaEnergyEv ** 2;
-		if (low.kind === 'drude') damped += low.plasmaEnergyEv ** 2;
-		if (low.kind === 'plasma' || low.kind === 'drude' || low.kind === 'dcConductivity') conducts = true;
+		if (low.kind === 'plasma' || low.kind === 'drude') sum.dropped += low.plasmaEnergyEv ** 2;
+		if (low.kind === 'plasma') sum.undamped += low.plasmaEnergyEv ** 2;
+		if (low.kind === 'plasma' || low.kind === 'drude' || low.kind === 'dcConductivity') sum.conducting += 1;
 	}
-	if (rule === 'plasma') return { conducts, mirror: false, plasmaEnergySquared: undamped + damped };
+	return sum;
+}
+
+function zeroResponse(terms: readonly Term[], rule: ZeroFrequencyRule | undefined): ZeroResponse {
+	const { undamped, conducting, dropped } = carriersOf(terms);
+	const conducts = conducting > 0;
+	if (rule === 'plasma') return { conducts, mirror: false, plasmaEnergySquared: dropped };
 	if (rule === 'drude') return { conducts, mirror: false, plasmaEnergySquared: 0 };
 	return { conducts, mirror: rule === 'ideal', plasmaEnergySquared: undamped };
 }
 
-export function slowMaterial(material: MaterialModel): SlowMaterial {
-	const terms = termsOf(material.permittivity);
+export function slowMaterial(material: MaterialModel, kelvin: number): SlowMaterial {
+	const terms = termsOf(slowAtTemperature(material.permittivity, kelvin));
 	const ideal = material.permittivity.kind === 'idealConductor';
 	return {
 		terms,
@@ -126,7 +161,24 @@ function susceptibility(term: Term, xi: ImaginaryFrequency): DoubleDouble {
 			return dd(tableSusceptibility(term.energiesEv, term.epsilon2, term.lowEnd, term.highEnd, toNumber(w)));
 		case 'imaginaryTable':
 			return dd(imaginaryTableSusceptibility(term.frequenciesRadPerS, term.epsilon, xi.radPerS));
+		case 'brendelBormann':
+			return dd(spreadSusceptibility(term.terms[0], toNumber(w)));
+		case 'taucLorentz':
+		case 'codyLorentz':
+			return term.terms.reduce((sum, _, i) => add(sum, dd(bandSusceptibility(term, i, toNumber(w)))), dd(0));
+		case 'sellmeier':
+			return dd(sellmeierSusceptibility(term, xi.radPerS));
+		case 'maxwellGarnett':
+		case 'bruggeman':
+			return mixtureSusceptibility(term, phase(term.host, xi), phase(term.inclusion, xi));
 	}
+}
+
+/** A phase of a mixture; at xi = 0 one that conducts is as good as without limit. */
+function phase(model: PermittivityModel, xi: ImaginaryFrequency): DoubleDouble {
+	const terms = termsOf(model);
+	if (xi.radPerS === 0 && carriersOf(terms).conducting > 0) return toDoubleDouble(1e40);
+	return terms.reduce((sum, term) => add(sum, susceptibility(term, xi)), toDoubleDouble(0));
 }
 
 /** Values of the terms met so far at one frequency. */
@@ -140,11 +192,27 @@ function cached(material: SlowMaterial, i: number, xi: ImaginaryFrequency, cache
 	return value;
 }
 
-const isTable = (material: SlowMaterial, i: number) =>
-	material.terms[i].kind === 'table' || material.terms[i].kind === 'imaginaryTable';
+const inDoubles = (material: SlowMaterial, i: number) => !IN_32_DIGITS.has(material.terms[i].kind);
 
-/** Tables are computed in doubles: their relative error, a few roundings of positive sums. */
+/** The others are computed in doubles: their relative error, a few roundings of positive sums. */
+const IN_32_DIGITS = new Set<Term['kind']>([
+	'constant',
+	'drude',
+	'plasma',
+	'lorentz',
+	'debye',
+	'ninhamParsegian',
+	'dcConductivity'
+]);
 const TABLE_ERROR = 1.5e-15;
+
+/** Sums of ten thousand terms, and lines fitted through points. */
+const FITTED_ERROR = 2e-14;
+
+const errorOf = (material: SlowMaterial, i: number): number =>
+	material.terms[i].kind === 'table' || material.terms[i].kind === 'imaginaryTable'
+		? TABLE_ERROR
+		: FITTED_ERROR;
 
 export interface Difference {
 	readonly value: number;
@@ -181,13 +249,13 @@ export function permittivityDifference(
 		}
 		const value = cached(one, i, xi, cache);
 		sum = add(sum, value);
-		if (isTable(one, i)) error += Math.abs(value[0]) * TABLE_ERROR;
+		if (inDoubles(one, i)) error += Math.abs(value[0]) * errorOf(one, i);
 	}
 	for (let i = 0; i < other.terms.length; i++) {
 		if (unmatched[i].name === '') continue;
 		const value = cached(other, i, xi, cache);
 		sum = add(sum, negate(value));
-		if (isTable(other, i)) error += Math.abs(value[0]) * TABLE_ERROR;
+		if (inDoubles(other, i)) error += Math.abs(value[0]) * errorOf(other, i);
 	}
 	const value = toNumber(sum);
 	return { value, error: error + Math.abs(value) * 2e-16 };

@@ -60,19 +60,19 @@ export interface PreparedArrangement {
 	debyeLength: number | undefined;
 }
 
-function prepareBody(body: BodyOf<MaterialModel>): PreparedBody {
+function prepareBody(body: BodyOf<MaterialModel>, kelvin: number): PreparedBody {
 	const layers = body.layers.map((layer) => ({
-		of: slowMaterial(layer.of),
+		of: slowMaterial(layer.of, kelvin),
 		thickness: layer.thicknessNm * 1e-9
 	}));
-	return { layers: [...layers, { of: slowMaterial(body.substrate), thickness: Infinity }] };
+	return { layers: [...layers, { of: slowMaterial(body.substrate, kelvin), thickness: Infinity }] };
 }
 
 export function prepareArrangement(arrangement: ArrangementOf<MaterialModel>): PreparedArrangement {
 	return {
-		left: prepareBody(arrangement.left),
-		medium: slowMaterial(arrangement.medium),
-		right: prepareBody(arrangement.right),
+		left: prepareBody(arrangement.left, arrangement.temperatureK),
+		medium: slowMaterial(arrangement.medium, arrangement.temperatureK),
+		right: prepareBody(arrangement.right, arrangement.temperatureK),
 		debyeLength: arrangement.debyeLengthNm === undefined ? undefined : arrangement.debyeLengthNm * 1e-9
 	};
 }

@@ -30,6 +30,41 @@ export interface NinhamParsegianTerm {
 	frequencyRadPerS: number;
 }
 
+/** A Lorentz oscillator whose resonance is spread by a normal distribution of standard deviation `widthEv`. */
+export interface BrendelBormannTerm {
+	strengthEv2: number;
+	energyEv: number;
+	dampingEv: number;
+	widthEv: number;
+}
+
+export interface TaucLorentzTerm {
+	amplitudeEv: number;
+	energyEv: number;
+	broadeningEv: number;
+	gapEv: number;
+}
+
+/** `transitionEv`: how far above the gap the Lorentz shape takes over. */
+export interface CodyLorentzTerm extends TaucLorentzTerm {
+	transitionEv: number;
+}
+
+/** n^2 = 1 + constant + sum strength lambda^2/(lambda^2 - wavelength^2), fitted over a transparent band. */
+export interface SellmeierModel {
+	kind: 'sellmeier';
+	terms: { strength: number; wavelengthUm: number }[];
+	constant: number;
+	/** Where the Cauchy plot of the ultraviolet pair is drawn; poles beyond `to` are infrared and kept. */
+	bandUm: { from: number; to: number };
+}
+
+/** How a parameter follows the temperature, in its own unit. */
+export type TemperatureLaw =
+	| { kind: 'polynomial'; coefficients: number[]; scale: 'kelvin' | 'celsius' }
+	| { kind: 'arrhenius'; value: number; referenceK: number; activationK: number }
+	| { kind: 'blochGruneisen'; value: number; referenceK: number; debyeK: number; residualShare: number };
+
 /** Relative permittivity on the imaginary axis; energies mean hbar*omega. */
 export type PermittivityModel =
 	| { kind: 'vacuum' }
@@ -43,7 +78,20 @@ export type PermittivityModel =
 	| { kind: 'dcConductivity'; siemensPerM: number }
 	| { kind: 'table'; energiesEv: number[]; epsilon2: number[]; lowEnd: LowEnd; highEnd: HighEnd }
 	| { kind: 'imaginaryTable'; frequenciesRadPerS: number[]; epsilon: number[] }
-	| { kind: 'sum'; of: PermittivityModel[] };
+	| { kind: 'brendelBormann'; terms: BrendelBormannTerm[] }
+	| { kind: 'taucLorentz'; terms: TaucLorentzTerm[] }
+	| { kind: 'codyLorentz'; terms: CodyLorentzTerm[] }
+	| SellmeierModel
+	| { kind: 'sum'; of: PermittivityModel[] }
+	| { kind: 'maxwellGarnett'; host: PermittivityModel; inclusion: PermittivityModel; fraction: number }
+	| { kind: 'bruggeman'; host: PermittivityModel; inclusion: PermittivityModel; fraction: number }
+	/** `of` as it stands belongs to no special temperature; in an arrangement each law sets the parameter that it names. */
+	| {
+			kind: 'temperatureDependent';
+			of: PermittivityModel;
+			rangeK: { from: number; to: number };
+			laws: { parameter: string; law: TemperatureLaw }[];
+	  };
 
 export type PermittivityKind = PermittivityModel['kind'];
 

@@ -2,6 +2,7 @@ import type { Extra, ForceRequest, PermittivityModel } from './contract.ts';
 import { LEVELS } from './lifshitz/level.ts';
 import { matsubaraFrequency } from './lifshitz/matsubara.ts';
 import { SPEED_OF_LIGHT } from './constants.ts';
+import { partsOf } from './permittivity/temperature.ts';
 import { roughnessNodes } from './shapes/roughness.ts';
 import { metresFromNm } from './units.ts';
 
@@ -16,6 +17,10 @@ const NODES = [52, 64, 84];
 /** Octaves of frequency that T = 0 asks for above c/(2 d), and below it c/(2 d), per level. */
 const OCTAVES_ABOVE = 6;
 const OCTAVES_BELOW = [16, 24, 32];
+
+/** Of one band by quadrature, and of one oscillator spread by a normal distribution. */
+const ROWS_A_BAND = 900;
+const ROWS_A_SPREAD_TERM = 40;
 
 /** Of a list far longer than any that is accepted, no more than this is looked at. */
 const MOST_LOOKED_AT = 10_000;
@@ -86,11 +91,19 @@ export function estimateCost(request: ForceRequest): Cost {
 }
 
 function rowsOf(model: PermittivityModel): number {
-	if (model.kind === 'sum') return model.of.reduce((sum, part) => sum + rowsOf(part), 0);
-	return model.kind === 'table' ? 4 * model.energiesEv.length : 1;
+	return partsOf(model).reduce((sum, part) => sum + rowsOfPart(part), 0);
+}
+
+/** What one evaluation costs beside a row of a table. */
+function rowsOfPart(part: PermittivityModel): number {
+	if (part.kind === 'table') return 4 * part.energiesEv.length;
+	if (part.kind === 'taucLorentz' || part.kind === 'codyLorentz') return ROWS_A_BAND * part.terms.length;
+	return part.kind === 'brendelBormann' ? ROWS_A_SPREAD_TERM * part.terms.length : 1;
 }
 
 function knotsOf(model: PermittivityModel): number {
-	if (model.kind === 'sum') return model.of.reduce((sum, part) => sum + knotsOf(part), 0);
-	return model.kind === 'imaginaryTable' ? model.frequenciesRadPerS.length : 0;
+	return partsOf(model).reduce(
+		(sum, part) => sum + (part.kind === 'imaginaryTable' ? part.frequenciesRadPerS.length : 0),
+		0
+	);
 }

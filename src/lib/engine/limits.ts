@@ -35,6 +35,15 @@ export const ENGINE_LIMITS = {
 	strength: { min: 0, max: 1e6 },
 	relaxationTimePs: { min: 1e-6, max: 1e12 },
 	frequencyRadPerS: { min: 1e3, max: 1e22 },
+	/** A gap of zero would leave nothing to begin the absorption at. */
+	gapEv: { min: 1e-3, max: 1e4 },
+	/** Of what must not vanish: resonances, widths and broadenings of fitted bands. */
+	bandEv: { min: 1e-6, max: 1e6 },
+	amplitudeEv: { min: 0, max: 1e8 },
+	wavelengthUm: { min: 1e-4, max: 1e5 },
+	sellmeierConstant: { min: -1, max: 1e3 },
+	activationK: { min: -1e5, max: 1e5 },
+	debyeK: { min: 1, max: 1e4 },
 	siemensPerM: { min: 1e-15, max: 1e10 },
 	epsilon2: { min: 0, max: 1e12 },
 	lowExponent: { min: 0.05, max: 10 },

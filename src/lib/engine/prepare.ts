@@ -19,6 +19,7 @@ import { terms } from './analysis/terms.ts';
 import { lineForces } from './shapes/cylinder.ts';
 import { shapeError, shapeRule, type ShapeRule } from './shapes/proximity.ts';
 import { ROUGHNESS_SHARE, roughPlates } from './shapes/roughness.ts';
+import { atItsTemperature } from './thermal-request.ts';
 import { systemOf } from './system.ts';
 import { metresFromNm } from './units.ts';
 import { checkRequest, separationsOf } from './validate.ts';
@@ -47,6 +48,10 @@ const LINE_SHARE = 0.3;
  */
 export function prepare(request: ForceRequest): Preparation {
 	checkRequest(request);
+	return prepared(atItsTemperature(request), request);
+}
+
+function prepared(request: ForceRequest, asked: ForceRequest): Preparation {
 	const separationsNm = separationsOf(request.separationsNm);
 	const { relativeAccuracy, include, arrangement } = request;
 	const system = systemOf(request);
@@ -131,7 +136,7 @@ export function prepare(request: ForceRequest): Preparation {
 		},
 		equilibria: (points) => equilibriaBetween(points, evaluatePlates),
 		whole: () => (analysis ? { nonRetarded: nonRetardedLimit(system) } : {}),
-		warnings: (points) => warningsFor(request, points)
+		warnings: (points) => warningsFor(asked, points)
 	};
 }
 

@@ -1,6 +1,7 @@
-import type { HighEnd, LowEnd, PermittivityModel } from './contract.ts';
+import type { HighEnd, LowEnd, PermittivityModel, TaucLorentzTerm } from './contract.ts';
 import { ENGINE_LIMITS as limits } from './limits.ts';
 import type { Issue } from './refusal.ts';
+import { mixtureIssues, sellmeierIssues, thermalIssues } from './validate-composed.ts';
 import { checkRange } from './validate-number.ts';
 
 /** Problems of one list are named up to here; a file with a thousand bad rows needs no thousand lines. */
@@ -51,13 +52,56 @@ export function permittivityIssues(model: PermittivityModel, path: string, depth
 		case 'imaginaryTable':
 			checkImaginaryTable(issues, path, model.frequenciesRadPerS, model.epsilon);
 			break;
+		case 'brendelBormann':
+			eachTerm(issues, path, model.terms, (term, at) => {
+				checkRange(issues, `${at}.strengthEv2`, term.strengthEv2, limits.strengthEv2, 'eV^2');
+				checkRange(issues, `${at}.energyEv`, term.energyEv, limits.bandEv, 'eV');
+				checkRange(issues, `${at}.dampingEv`, term.dampingEv, limits.dampingEv, 'eV');
+				checkRange(issues, `${at}.widthEv`, term.widthEv, limits.bandEv, 'eV');
+			});
+			break;
+		case 'taucLorentz':
+			eachTerm(issues, path, model.terms, (term, at) => checkBand(issues, at, term));
+			break;
+		case 'codyLorentz':
+			eachTerm(issues, path, model.terms, (term, at) => {
+				checkBand(issues, at, term);
+				checkRange(issues, `${at}.transitionEv`, term.transitionEv, limits.bandEv, 'eV');
+			});
+			break;
+		case 'sellmeier':
+			eachTerm(issues, path, model.terms, () => undefined);
+			if (issues.length === 0) issues.push(...sellmeierIssues(model, path));
+			break;
 		case 'sum':
 			checkSum(issues, path, model.of, depth);
 			break;
+		case 'maxwellGarnett':
+		case 'bruggeman':
+		case 'temperatureDependent': {
+			if (depth >= limits.nesting) {
+				issues.push({ path, message: `models are nested deeper than ${limits.nesting}` });
+				break;
+			}
+			const inner = (part: PermittivityModel, at: string): Issue[] => permittivityIssues(part, at, depth + 1);
+			const found =
+				model.kind === 'temperatureDependent'
+					? thermalIssues(model, path, inner)
+					: mixtureIssues(model, path, inner);
+			issues.push(...found);
+			break;
+		}
 		default:
 			issues.push({ path: `${path}.kind`, message: 'is not a permittivity model the engine knows' });
 	}
 	return issues;
+}
+
+function checkBand(issues: Issue[], at: string, term: TaucLorentzTerm): void {
+	checkRange(issues, `${at}.amplitudeEv`, term.amplitudeEv, limits.amplitudeEv, 'eV');
+	checkRange(issues, `${at}.energyEv`, term.energyEv, limits.bandEv, 'eV');
+	checkRange(issues, `${at}.broadeningEv`, term.broadeningEv, limits.bandEv, 'eV');
+	checkRange(issues, `${at}.gapEv`, term.gapEv, limits.gapEv, 'eV');
 }
 
 function eachTerm<T>(issues: Issue[], path: string, terms: T[], check: (term: T, at: string) => void): void {

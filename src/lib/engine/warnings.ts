@@ -1,18 +1,11 @@
-import type {
-	BodyOf,
-	ForcePoint,
-	ForceRequest,
-	Heights,
-	MaterialModel,
-	PermittivityModel,
-	Warning
-} from './contract.ts';
+import type { BodyOf, ForcePoint, ForceRequest, Heights, MaterialModel, Warning } from './contract.ts';
 import { matsubaraFrequency } from './lifshitz/matsubara.ts';
 import { ENGINE_LIMITS } from './limits.ts';
 import { susceptibility } from './permittivity/evaluator.ts';
 import { conducts } from './permittivity/susceptibility.ts';
 import { closestSeparationNm } from './shapes/roughness.ts';
 import { ionsStated, ionTreatment } from './system.ts';
+import { outsideRange, partsOf, thermalParts } from './permittivity/temperature.ts';
 import { epsilonShares, type TableModel } from './permittivity/table.ts';
 
 /** d/R above which the proximity approximation is worse than the percent level, and where it stops being one. */
@@ -45,6 +38,7 @@ export function warningsFor(request: ForceRequest, points: readonly ForcePoint[]
 		...reliance(places, arrangement.temperatureK),
 		...imaginaryReach(places, arrangement.temperatureK),
 		...neverFalling(places),
+		...temperature(places, arrangement.temperatureK),
 		...(arrangement.temperatureK > 0 ? zeroFrequency(request, places) : [])
 	];
 }
@@ -107,10 +101,6 @@ function notMet(points: readonly ForcePoint[]): Warning[] {
 	];
 }
 
-function kindsIn(model: PermittivityModel): PermittivityModel[] {
-	return model.kind === 'sum' ? model.of.flatMap(kindsIn) : [model];
-}
-
 /** The first Matsubara frequency is where the low end of a table is felt most; at T = 0 that of room temperature stands in. */
 const lowestXi = (temperatureK: number): number =>
 	matsubaraFrequency(1, temperatureK > 0 ? temperatureK : 300);
@@ -119,7 +109,7 @@ function reliance(places: Place[], temperatureK: number): Warning[] {
 	const xi = lowestXi(temperatureK);
 	const told = new Set<string>();
 	for (const { name, material } of places) {
-		for (const model of kindsIn(material.permittivity)) {
+		for (const model of partsOf(material.permittivity)) {
 			if (model.kind !== 'table') continue;
 			const { below, above } = epsilonShares(model as TableModel, xi);
 			if (below > RELIANCE)
@@ -135,7 +125,7 @@ function reliance(places: Place[], temperatureK: number): Warning[] {
 function imaginaryReach(places: Place[], temperatureK: number): Warning[] {
 	const xi = lowestXi(temperatureK);
 	const short = places.filter(({ material }) =>
-		kindsIn(material.permittivity).some(
+		partsOf(material.permittivity).some(
 			(model) => model.kind === 'imaginaryTable' && model.frequenciesRadPerS[0] > xi * (1 + 1e-9)
 		)
 	);
@@ -151,7 +141,7 @@ function imaginaryReach(places: Place[], temperatureK: number): Warning[] {
 
 function neverFalling(places: Place[]): Warning[] {
 	const flat = places.filter(({ material }) =>
-		kindsIn(material.permittivity).some((model) => model.kind === 'constant' && model.value > 1)
+		partsOf(material.permittivity).some((model) => model.kind === 'constant' && model.value > 1)
 	);
 	if (flat.length === 0) return [];
 	const names = flat.map(({ name }) => name).join(', ');
@@ -161,6 +151,20 @@ function neverFalling(places: Place[]): Warning[] {
 			text: `The permittivity of ${names} never falls to one: forces at short distances are overstated.`
 		}
 	];
+}
+
+function temperature(places: Place[], temperatureK: number): Warning[] {
+	const told = new Set<string>();
+	for (const { name, material } of places) {
+		for (const model of thermalParts(material.permittivity)) {
+			if (outsideRange(model, temperatureK))
+				told.add(
+					`the ${name} is meant for ${model.rangeK.from} to ${model.rangeK.to} K and held at the nearer end`
+				);
+		}
+	}
+	if (told.size === 0) return [];
+	return [{ code: 'temperature', text: `At ${temperatureK} K ${[...told].join('; ')}.` }];
 }
 
 function zeroFrequency({ arrangement }: ForceRequest, places: Place[]): Warning[] {

@@ -30,6 +30,8 @@ export const highEnd = z
 const rows = (what: z.ZodNumber) => z.array(what).min(2).max(TABLE_ROWS_MAX);
 const terms = <T extends z.ZodType>(term: T) => z.array(term).min(1).max(TERMS_MAX);
 
+const band = { amplitudeEv: nonNegative, energyEv: positive, broadeningEv: positive, gapEv: positive };
+
 const closedForms = [
 	z.strictObject({ kind: z.literal('vacuum') }),
 	z.strictObject({ kind: z.literal('constant'), value: positive }),
@@ -60,15 +62,79 @@ const closedForms = [
 		kind: z.literal('imaginaryTable'),
 		frequenciesRadPerS: rows(positive),
 		epsilon: rows(positive)
+	}),
+	z.strictObject({
+		kind: z.literal('brendelBormann'),
+		terms: terms(
+			z.strictObject({
+				strengthEv2: nonNegative,
+				energyEv: positive,
+				dampingEv: nonNegative,
+				widthEv: positive
+			})
+		)
+	}),
+	z.strictObject({ kind: z.literal('taucLorentz'), terms: terms(z.strictObject(band)) }),
+	z.strictObject({
+		kind: z.literal('codyLorentz'),
+		terms: terms(z.strictObject({ ...band, transitionEv: positive }))
+	}),
+	z.strictObject({
+		kind: z.literal('sellmeier'),
+		terms: terms(z.strictObject({ strength: nonNegative, wavelengthUm: positive })),
+		constant: finite,
+		bandUm: z.strictObject({ from: positive, to: positive })
 	})
 ] as const;
+
+export const temperatureLaw = z
+	.discriminatedUnion('kind', [
+		z.strictObject({
+			kind: z.literal('polynomial'),
+			coefficients: z.array(finite).min(1).max(12),
+			scale: z.enum(['kelvin', 'celsius'])
+		}),
+		z.strictObject({
+			kind: z.literal('arrhenius'),
+			value: finite,
+			referenceK: positive,
+			activationK: finite
+		}),
+		z.strictObject({
+			kind: z.literal('blochGruneisen'),
+			value: finite,
+			referenceK: positive,
+			debyeK: positive,
+			residualShare: z.number().min(0).max(1)
+		})
+	])
+	.meta({ id: 'TemperatureLaw', description: 'a parameter of a model as a function of the temperature' });
 
 /** Sums nest, so the depth is limited while parsing: a request cannot be deeper than the engine is meant to go. */
 function modelOfDepth(depth: number): z.ZodType<PermittivityModel> {
 	if (depth === 0) return z.discriminatedUnion('kind', [...closedForms]);
 	const inner = modelOfDepth(depth - 1);
 	const sum = z.strictObject({ kind: z.literal('sum'), of: z.array(inner).min(1).max(TERMS_MAX) });
-	return z.discriminatedUnion('kind', [...closedForms, sum]);
+	const mixture = <K extends 'maxwellGarnett' | 'bruggeman'>(kind: K) =>
+		z.strictObject({
+			kind: z.literal(kind),
+			host: inner,
+			inclusion: inner,
+			fraction: z.number().min(0).max(1)
+		});
+	const thermal = z.strictObject({
+		kind: z.literal('temperatureDependent'),
+		of: inner,
+		rangeK: z.strictObject({ from: positive, to: positive }),
+		laws: z.array(z.strictObject({ parameter: z.string().max(60), law: temperatureLaw })).max(TERMS_MAX)
+	});
+	return z.discriminatedUnion('kind', [
+		...closedForms,
+		sum,
+		mixture('maxwellGarnett'),
+		mixture('bruggeman'),
+		thermal
+	]);
 }
 
 export const permittivityModel = modelOfDepth(SUM_DEPTH_MAX).meta({

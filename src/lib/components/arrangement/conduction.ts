@@ -28,11 +28,32 @@ export function staticLimit(model: PermittivityModel): StaticLimit {
 			);
 		case 'table':
 			return model.lowEnd.kind === 'drude' || model.lowEnd.kind === 'plasma' ? model.lowEnd.kind : 'finite';
+		case 'temperatureDependent':
+			return staticLimit(model.of);
+		case 'maxwellGarnett':
+		case 'bruggeman':
+			return mixtureLimit(model);
 		case 'sum':
 			return strongest(model.of.map(staticLimit));
 		default:
 			return 'finite';
 	}
+}
+
+/** A phase conducts through a mixture as its host, or in Bruggeman's from a third of the volume on. */
+function mixtureLimit(
+	model: Extract<PermittivityModel, { kind: 'maxwellGarnett' | 'bruggeman' }>
+): StaticLimit {
+	const { host, inclusion, fraction } = model;
+	if (fraction === 0) return staticLimit(host);
+	if (fraction === 1) return staticLimit(inclusion);
+	const [ofHost, ofInclusion] = [staticLimit(host), staticLimit(inclusion)];
+	const both = ofHost !== 'finite' && ofInclusion !== 'finite';
+	const through = [
+		...(both || model.kind === 'maxwellGarnett' || 3 * (1 - fraction) > 1 ? [ofHost] : []),
+		...(both || (model.kind === 'bruggeman' && 3 * fraction > 1) ? [ofInclusion] : [])
+	];
+	return strongest(through);
 }
 
 /**

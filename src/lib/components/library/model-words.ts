@@ -1,4 +1,10 @@
-import type { HighEnd, LowEnd, PermittivityModel } from '../../engine/contract.ts';
+import type {
+	HighEnd,
+	LowEnd,
+	PermittivityModel,
+	TaucLorentzTerm,
+	TemperatureLaw
+} from '../../engine/contract.ts';
 import { evFromRadPerS } from '../../engine/units.ts';
 
 /** A permittivity model as a reader checks it against a paper: the formula of each part and its figures, unrounded. */
@@ -46,11 +52,101 @@ function highEndWords(end: HighEnd): string {
 		: 'Above the table: no absorption.';
 }
 
+const bandRow = ({ amplitudeEv, energyEv, broadeningEv, gapEv }: TaucLorentzTerm): string[] =>
+	[amplitudeEv, energyEv, broadeningEv, gapEv].map(String);
+
+function mixturePart({
+	kind,
+	fraction
+}: Extract<PermittivityModel, { kind: 'maxwellGarnett' | 'bruggeman' }>): ModelPart {
+	return kind === 'bruggeman'
+		? part('Bruggeman mixture', 'Σ f_{j}(ε_{j} − ε) / (ε_{j} + 2ε) = 0', {
+				notes: [`Volume fraction ${fraction} of the second phase in the first; both follow.`]
+			})
+		: part('Maxwell Garnett mixture', '(ε − ε_{h}) / (ε + 2ε_{h}) = f(ε_{i} − ε_{h}) / (ε_{i} + 2ε_{h})', {
+				notes: [`Volume fraction ${fraction} of the inclusion in the host; host, then inclusion, follow.`]
+			});
+}
+
+function lawsPart({ rangeK, laws }: Extract<PermittivityModel, { kind: 'temperatureDependent' }>): ModelPart {
+	return part('Temperature', `T = ${rangeK.from} to ${rangeK.to} K`, {
+		columns: ['parameter', 'law'],
+		rows: laws.map(({ parameter, law }) => [parameter, lawWords(law)]),
+		notes: ['The figures above hold at the temperature of the sample; in a study each law sets its own.']
+	});
+}
+
+function lawWords(law: TemperatureLaw): string {
+	switch (law.kind) {
+		case 'polynomial': {
+			const t = law.scale === 'celsius' ? 't/°C' : 'T/K';
+			return law.coefficients.map((c, j) => (j === 0 ? `${c}` : `${c} (${t})^${j}`)).join(' + ');
+		}
+		case 'arrhenius':
+			return `${law.value} exp[${law.activationK} K (1/T − 1/${law.referenceK} K)]`;
+		case 'blochGruneisen':
+			return `${law.value} at ${law.referenceK} K, Bloch-Grüneisen, Debye temperature ${law.debyeK} K, residual share ${law.residualShare}`;
+	}
+}
+
 /** The parts that add up; a sum inside a sum is one sum. */
 export function modelParts(model: PermittivityModel): ModelPart[] {
 	switch (model.kind) {
 		case 'sum':
 			return model.of.flatMap(modelParts);
+		case 'temperatureDependent':
+			return [...modelParts(model.of), lawsPart(model)];
+		case 'maxwellGarnett':
+		case 'bruggeman':
+			return [mixturePart(model), ...modelParts(model.host), ...modelParts(model.inclusion)];
+		case 'brendelBormann':
+			return [
+				part(
+					'Brendel-Bormann oscillators',
+					'ε(iξ) − 1 = Σ ∫ N(x; ω_{j}, σ_{j}) f_{j} / (x^{2} + ξ^{2} + γ_{j}ξ) dx',
+					{
+						columns: ['f_{j} / eV^{2}', 'ħω_{j} / eV', 'ħγ_{j} / eV', 'ħσ_{j} / eV'],
+						rows: model.terms.map(({ strengthEv2, energyEv, dampingEv, widthEv }) =>
+							[strengthEv2, energyEv, dampingEv, widthEv].map(String)
+						),
+						notes: ['At zero frequency resonances below a fifth of the centre are left out.']
+					}
+				)
+			];
+		case 'taucLorentz':
+			return [
+				part(
+					'Tauc-Lorentz bands',
+					'ε″(ω) = Σ AE_{0}C(E − E_{g})^{2} / E[(E^{2} − E_{0}^{2})^{2} + C^{2}E^{2}]',
+					{
+						columns: ['A / eV', 'E_{0} / eV', 'C / eV', 'E_{g} / eV'],
+						rows: model.terms.map(bandRow),
+						notes: ['On the imaginary axis by the Kramers-Kronig integral.']
+					}
+				)
+			];
+		case 'codyLorentz':
+			return [
+				part(
+					'Cody-Lorentz bands',
+					'ε″(ω) = Σ (E − E_{g})^{2} / [(E − E_{g})^{2} + E_{p}^{2}] · AE_{0}CE / [(E^{2} − E_{0}^{2})^{2} + C^{2}E^{2}]',
+					{
+						columns: ['A / eV', 'E_{0} / eV', 'C / eV', 'E_{g} / eV', 'E_{p} / eV'],
+						rows: model.terms.map((term) => [...bandRow(term), String(term.transitionEv)]),
+						notes: ['On the imaginary axis by the Kramers-Kronig integral; no absorption below the gap.']
+					}
+				)
+			];
+		case 'sellmeier':
+			return [
+				part('Index formula', 'n^{2} − 1 = a + Σ B_{j}λ^{2} / (λ^{2} − L_{j}^{2})', {
+					columns: ['B_{j}', 'L_{j} / µm'],
+					rows: model.terms.map((term) => [String(term.strength), String(term.wavelengthUm)]),
+					notes: [
+						`Constant a = ${model.constant}. Poles in the infrared are oscillators; the others and the constant become one ultraviolet oscillator by a Cauchy plot from ${model.bandUm.from} to ${model.bandUm.to} µm, because such poles are aids of fitting.`
+					]
+				})
+			];
 		case 'vacuum':
 			return [part('Vacuum', 'ε(iξ) = 1')];
 		case 'constant':

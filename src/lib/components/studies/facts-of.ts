@@ -18,6 +18,7 @@ const XI_PER_DECADE = 4;
 /** The table of a model: itself, or the only one in a sum. */
 function tableIn(model: PermittivityModel): Table | undefined {
 	if (model.kind === 'table') return model;
+	if (model.kind === 'temperatureDependent') return tableIn(model.of);
 	return model.kind === 'sum' ? model.of.map(tableIn).find((table) => table !== undefined) : undefined;
 }
 

@@ -1,5 +1,9 @@
-import type { PermittivityModel } from '../contract.ts';
-import { evFromRadPerS } from '../units.ts';
+import type { PermittivityModel, SellmeierModel } from '../contract.ts';
+import { susceptibility } from '../permittivity/evaluator.ts';
+import { isInfrared, ultravioletPair } from '../permittivity/sellmeier.ts';
+import { evFromRadPerS, radPerSFromEv, radPerSFromWavelength } from '../units.ts';
+
+const FAR = 1e8;
 
 /**
  * (2/pi) int E eps''(E) dE over all energies, in eV^2: the f-sum of a model, methods.md section 7, check 3. Closed forms
@@ -27,6 +31,25 @@ export function oscillatorStrength(model: PermittivityModel): number | null {
 			return Number.POSITIVE_INFINITY;
 		case 'table':
 			return below(model) + inside(model) + above(model);
+		case 'brendelBormann':
+			return model.terms.reduce((sum, term) => sum + term.strengthEv2, 0);
+		case 'taucLorentz':
+		case 'codyLorentz': {
+			// Far above every band eps(i xi) - 1 is the strength over xi^2, up to 1e-8 of it.
+			const energy = FAR * Math.max(...model.terms.map((term) => Math.max(term.energyEv, term.gapEv)));
+			return susceptibility(model).atXi(radPerSFromEv(energy)) * energy ** 2;
+		}
+		case 'sellmeier':
+			return strengthsOf(model).reduce((sum, one) => sum + one, 0);
+		case 'temperatureDependent':
+			return oscillatorStrength(model.of);
+		case 'maxwellGarnett':
+		case 'bruggeman': {
+			// Far above every resonance the parts add up by volume.
+			const [host, inclusion] = [oscillatorStrength(model.host), oscillatorStrength(model.inclusion)];
+			if (host === null || inclusion === null) return null;
+			return (1 - model.fraction) * host + model.fraction * inclusion;
+		}
 		case 'sum': {
 			const parts = model.of.map(oscillatorStrength);
 			return parts.every((part) => part !== null) ? parts.reduce((sum, part) => sum + part, 0) : null;
@@ -35,6 +58,18 @@ export function oscillatorStrength(model: PermittivityModel): number | null {
 		case 'imaginaryTable':
 			return null;
 	}
+}
+
+/** eV^2, of each oscillator that stands for an index formula. */
+function strengthsOf(model: SellmeierModel): number[] {
+	const pair = ultravioletPair(model);
+	const infrared = model.terms
+		.filter(({ wavelengthUm }) => isInfrared(model, wavelengthUm))
+		.map(
+			({ strength, wavelengthUm }) =>
+				strength * evFromRadPerS(radPerSFromWavelength(wavelengthUm * 1e-6)) ** 2
+		);
+	return pair === null ? infrared : [...infrared, pair.strength * evFromRadPerS(pair.frequency) ** 2];
 }
 
 const OVER_PI = 2 / Math.PI;

@@ -2,16 +2,21 @@ import type { PermittivityModel } from '../contract.ts';
 import { Refusal } from '../refusal.ts';
 import { radPerSFromEv, secondsFromPs } from '../units.ts';
 import { permittivityIssues } from '../validate-permittivity.ts';
+import { brendelBormann } from './brendel-bormann.ts';
+import { codyLorentz } from './cody-lorentz.ts';
 import { constant } from './constant.ts';
 import { dcConductivity } from './dc-conductivity.ts';
 import { debye } from './debye.ts';
 import { drude } from './drude.ts';
 import { imaginaryTable } from './imaginary-table.ts';
 import { lorentz } from './lorentz.ts';
+import { bruggeman, maxwellGarnett } from './mixtures.ts';
 import { ninhamParsegian } from './ninham-parsegian.ts';
 import { plasma } from './plasma.ts';
+import { sellmeier } from './sellmeier.ts';
 import { addLimits, type Susceptibility } from './susceptibility.ts';
 import { table } from './table.ts';
+import { taucLorentz } from './tauc-lorentz.ts';
 
 /** Susceptibilities add (methods.md section 7). */
 function sum(parts: readonly Susceptibility[]): Susceptibility {
@@ -70,8 +75,50 @@ export function susceptibility(model: PermittivityModel): Susceptibility {
 			return table(model);
 		case 'imaginaryTable':
 			return imaginaryTable(model.frequenciesRadPerS, model.epsilon);
+		case 'brendelBormann':
+			return sum(
+				model.terms.map(({ strengthEv2, energyEv, dampingEv, widthEv }) =>
+					brendelBormann(
+						strengthEv2 * radPerSFromEv(1) ** 2,
+						radPerSFromEv(energyEv),
+						radPerSFromEv(dampingEv),
+						radPerSFromEv(widthEv)
+					)
+				)
+			);
+		case 'taucLorentz':
+			return sum(
+				model.terms.map(({ amplitudeEv, energyEv, broadeningEv, gapEv }) =>
+					taucLorentz(
+						radPerSFromEv(amplitudeEv),
+						radPerSFromEv(energyEv),
+						radPerSFromEv(broadeningEv),
+						radPerSFromEv(gapEv)
+					)
+				)
+			);
+		case 'codyLorentz':
+			return sum(
+				model.terms.map(({ amplitudeEv, energyEv, broadeningEv, gapEv, transitionEv }) =>
+					codyLorentz(
+						radPerSFromEv(amplitudeEv),
+						radPerSFromEv(energyEv),
+						radPerSFromEv(broadeningEv),
+						radPerSFromEv(gapEv),
+						radPerSFromEv(transitionEv)
+					)
+				)
+			);
+		case 'sellmeier':
+			return sum(sellmeier(model));
 		case 'sum':
 			return sum(model.of.map(susceptibility));
+		case 'maxwellGarnett':
+			return maxwellGarnett(susceptibility(model.host), susceptibility(model.inclusion), model.fraction);
+		case 'bruggeman':
+			return bruggeman(susceptibility(model.host), susceptibility(model.inclusion), model.fraction);
+		case 'temperatureDependent':
+			return susceptibility(model.of);
 		case 'idealConductor':
 			throw new RangeError('an ideal conductor has no permittivity');
 	}

@@ -26,11 +26,14 @@ const override: CreateDocumentOptions['override'] = ({ jsonSchema, zodSchema }) 
 	if (z.globalRegistry.get(zodSchema)?.id === 'MaterialChoice' && zodSchema._zod.def.type === 'pipe') {
 		jsonSchema.anyOf = [reference('PinnedMaterial'), reference('InPlaceMaterial')];
 	}
-	// Sums hold models; the depth to which they may nest is checked, not drawn.
+	// Sums and mixtures hold models; the depth to which they may nest is checked, not drawn.
 	const kind = jsonSchema.properties?.kind;
-	if (typeof kind === 'object' && kind.const === 'sum' && jsonSchema.properties) {
-		jsonSchema.properties.of = { type: 'array', minItems: 1, items: reference('PermittivityModel') };
-	}
+	if (typeof kind !== 'object' || !jsonSchema.properties) return;
+	const model = reference('PermittivityModel');
+	if (kind.const === 'sum') jsonSchema.properties.of = { type: 'array', minItems: 1, items: model };
+	if (kind.const === 'temperatureDependent') jsonSchema.properties.of = model;
+	if (kind.const === 'maxwellGarnett' || kind.const === 'bruggeman')
+		Object.assign(jsonSchema.properties, { host: model, inclusion: model });
 };
 
 function reference(id: string): { $ref: string } {

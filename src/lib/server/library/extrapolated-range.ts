@@ -1,11 +1,13 @@
 import type { PermittivityModel } from '../../engine/contract.ts';
-import { evFromRadPerS } from '../../engine/units.ts';
+import { evFromRadPerS, radPerSFromWavelength } from '../../engine/units.ts';
 
 /** How far beyond its last point a tail, and below its first a free-electron or power end, is drawn. */
 const TAIL_FACTOR = 10;
 
 /** hbar/tau of a relaxation time in ps, in eV. */
 const relaxationEv = (picoseconds: number): number => evFromRadPerS(1e12 / picoseconds);
+
+const evFromUm = (micrometres: number): number => evFromRadPerS(radPerSFromWavelength(micrometres * 1e-6));
 
 /**
  * Photon energies between which a model has features of its own (resonances, relaxations, dampings, ends of a table):
@@ -44,6 +46,19 @@ function features(model: PermittivityModel): number[] {
 						: first / TAIL_FACTOR;
 			return [lowest, first, last, model.highEnd.kind === 'none' ? last : last * TAIL_FACTOR];
 		}
+		case 'brendelBormann':
+		case 'taucLorentz':
+		case 'codyLorentz':
+			return model.terms.map((term) => term.energyEv);
+		case 'sellmeier':
+			return [model.bandUm.from, model.bandUm.to, ...model.terms.map((term) => term.wavelengthUm)].map(
+				evFromUm
+			);
+		case 'temperatureDependent':
+			return features(model.of);
+		case 'maxwellGarnett':
+		case 'bruggeman':
+			return [...features(model.host), ...features(model.inclusion)];
 		case 'sum':
 			return model.of.flatMap(features);
 		default:
