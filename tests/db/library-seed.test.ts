@@ -37,7 +37,7 @@ describe('the seed', () => {
 			from material join dataset on material_id = material.id group by class order by class`;
 		const of = (name: string) => classes.find((row) => row.class === name);
 		expect(of('metal')).toMatchObject({ materials: 16 });
-		expect(of('liquid')).toMatchObject({ materials: 19, datasets: 22 });
+		expect(of('liquid')).toMatchObject({ materials: 19, datasets: 23 });
 		const [{ solids }] = await db.sql`
 			select count(distinct material_id)::int as solids from dataset join version on dataset_id = dataset.id
 			join version_source on version_id = version.id join source on source.id = source_id
