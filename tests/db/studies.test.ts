@@ -1,6 +1,7 @@
 import { beforeAll, describe, expect, it } from 'vitest';
 import { Conflict, Forbidden, InvalidInput, NotFound } from '../../src/lib/server/errors.ts';
 import { list as told } from '../../src/lib/server/notifications/list.ts';
+import { impactOf } from '../../src/lib/server/studies/impact.ts';
 import * as studies from '../../src/lib/server/studies/studies.ts';
 import { approve, submit, withdraw } from '../../src/lib/server/library/curation.ts';
 import { candidate } from '../../src/lib/server/library/reviewing.ts';
@@ -196,4 +197,42 @@ describe('a version that a study rests on', () => {
 			`${version.ref} is withdrawn, and your study rests on it`
 		);
 	}, 30_000);
+});
+
+describe('the impact of a version under review', () => {
+	it('is computed for every study that rests on its dataset, named only where the reviewer may see it', async () => {
+		const { researcher, curator, 'curator-2': reviewer, 'researcher-2': stranger } = people;
+		const slug = 'lead-drude';
+		const query = (version: string) =>
+			`?left=${slug}@${version}&medium=vacuum@1.0&right=silica-two-oscillators@1.0&choice=One&from=10&to=1000&at=50`;
+		const open = await studies.create(researcher, fields({ query: query('1.0'), visibility: 'signed-in' }));
+		await studies.create(stranger, fields({ name: 'Hidden name', query: query('1.0') }));
+		const elsewhere = await studies.create(researcher, fields({ name: 'Not of lead' }));
+
+		// A candidate whose permittivity is that of vacuum: the force goes, in every study.
+		const id = await uploads.start(curator, {
+			form: { dataset: slug, source: 'ordal-1985', model: '{"kind":"constant","value":1.000001}' }
+		});
+		const draft = await uploads.makeDraft(curator, id);
+		const { version } = await candidate(curator, draft.slug, draft.number);
+		const answers = Object.fromEntries(
+			version.checks.filter(({ severity }) => severity === 'warn').map(({ code }) => [code, 'Meant.'])
+		);
+		await submit(curator, slug, draft.number, { checksum: version.checksum, answers });
+
+		const lines = [];
+		const { ref, model } = version;
+		for await (const line of impactOf(reviewer, { ref, model }, new AbortController().signal))
+			lines.push(line);
+		expect(lines[0]).toEqual({ of: 2 });
+		const impacts = lines.flatMap((line) => ('impact' in line ? [line.impact] : []));
+		expect(impacts.map(({ study }) => study)).toEqual([{ id: open.id, name: open.name }, null]);
+		expect(JSON.stringify(lines)).not.toContain('Hidden name');
+		expect(JSON.stringify(lines)).not.toContain(elsewhere.id);
+		for (const { changes } of impacts) {
+			expect(changes).toHaveLength(1);
+			expect(changes[0].largestPercent).toBeGreaterThan(99);
+			expect(changes[0].points.some(({ separationNm }) => separationNm === 50)).toBe(true);
+		}
+	}, 60_000);
 });

@@ -1,6 +1,7 @@
 import { z } from 'zod';
 import type { ZodOpenApiOperationObject, ZodOpenApiPathsObject } from 'zod-openapi';
 import { datasetFields, datasetSlug } from '../../schemas/dataset.ts';
+import { forceChange, studyImpact } from '../../schemas/impact.ts';
 import { materialFields, materialSummary } from '../../schemas/material.ts';
 import { permittivityModel } from '../../schemas/permittivity.ts';
 import { source, sourceFields } from '../../schemas/source.ts';
@@ -86,9 +87,26 @@ const posts: Record<string, ZodOpenApiOperationObject> = {
 	[`${VERSION}/withdraw`]: step('Takes a published version out of use, with a reason', refusal)
 };
 
+const impact = z.object({
+	impact: z.object({ arrangements: z.array(forceChange), studies: z.array(studyImpact) })
+});
+
+const impactPath: ZodOpenApiOperationObject = {
+	summary:
+		'What publishing a version would do to usual arrangements and to the studies that rest on its dataset',
+	requestParams: { path: z.object({ slug: datasetSlug, number: versionNumber }) },
+	responses: {
+		200: json(impact, 'The largest changes first; a study that is not shared with you has no name'),
+		401: problems.unknown,
+		403: problems.forbidden,
+		404: problems.absent
+	}
+};
+
 /** The paths of the library with what may be sent to them. */
 export function withCuration(library: ZodOpenApiPathsObject): ZodOpenApiPathsObject {
 	const paths = { ...library };
 	for (const [path, post] of Object.entries(posts)) paths[path] = { ...paths[path], post };
+	paths[`${VERSION}/impact`] = { get: impactPath };
 	return paths;
 }

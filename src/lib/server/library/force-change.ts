@@ -108,7 +108,7 @@ export function forceChange(
 	};
 }
 
-interface Pressure {
+export interface Pressure {
 	pressurePa: number;
 	bound: number;
 }
@@ -135,7 +135,7 @@ function pressures(models: Models, separationsNm: readonly number[], temperature
 	}));
 }
 
-function pointOf(separationNm: number, from: Pressure | null, to: Pressure): ForceChangePoint {
+export function pointOf(separationNm: number, from: Pressure | null, to: Pressure): ForceChangePoint {
 	const difference = from ? to.pressurePa - from.pressurePa : 0;
 	return {
 		separationNm,
