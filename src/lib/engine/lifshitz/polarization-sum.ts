@@ -1,3 +1,4 @@
+import { logOneMinus } from '../numerics/log-one-minus.ts';
 import type { LogLattice } from '../numerics/log-lattice.ts';
 
 /**
@@ -35,7 +36,7 @@ export function polarizationSum(
 		let wy = weight[i] * y;
 		let z = r1[i] * r2[i] * decay0 * decay[i];
 		let d = z < NEAR_ONE ? 1 / (1 - z) : 1 / (y + Math.abs(1 - z));
-		f0 += wy * (z < NEAR_ONE ? Math.log1p(-z) : -Math.log(d));
+		f0 += wy * (z < NEAR_ONE ? logOneMinus(z) : -Math.log(d));
 		let p = wy * y * z * d;
 		p0 += p;
 		g0 += p * y * d;
@@ -44,7 +45,7 @@ export function polarizationSum(
 		wy = weight[j] * y;
 		z = r1[j] * r2[j] * decay0 * decay[j];
 		d = z < NEAR_ONE ? 1 / (1 - z) : 1 / (y + Math.abs(1 - z));
-		f1 += wy * (z < NEAR_ONE ? Math.log1p(-z) : -Math.log(d));
+		f1 += wy * (z < NEAR_ONE ? logOneMinus(z) : -Math.log(d));
 		p = wy * y * z * d;
 		p1 += p;
 		g1 += p * y * d;

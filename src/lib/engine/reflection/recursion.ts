@@ -1,11 +1,11 @@
 /** Most interfaces of one stack: the layers of the contract and the substrate, with room. */
 export const MOST_INTERFACES = 48;
 
-/** Below this a layer takes so little off a wave that 1 - e^-x is the number to work with. */
-const THIN = 0.5;
+/** Below this loss, 1 - e^-x at x = 1/2, a layer takes so little off a wave that the loss is the number to work with. */
+export const THIN = 0.39346934028736658;
 
 /** From here on front and back of a layer cancel enough that complements are the numbers to work with. */
-const CANCELLING = -0.25;
+export const CANCELLING = -0.25;
 
 /** Interfaces of one stack at one frequency and wave number, index 1 next to the gap. */
 export interface Interfaces {
@@ -31,9 +31,15 @@ export const interfaces = (): Interfaces => ({
  * difference. The absolute error stays at roundoff.
  *
  * @param last  index of the last interface seen
- * @param x     2 kappa t of the layer behind interface b, index b
+ * @param kept  e^-x of the layer behind interface b, index b, x = 2 kappa t
+ * @param lost  1 - e^-x of the same layer
  */
-export function reflectionFromBack({ r, plus, minus }: Interfaces, last: number, x: Float64Array): number {
+export function reflectionFromBack(
+	{ r, plus, minus }: Interfaces,
+	last: number,
+	kept: Float64Array,
+	lost: Float64Array
+): number {
 	let rho = r[last];
 	let above = plus[last];
 	let below = minus[last];
@@ -41,23 +47,23 @@ export function reflectionFromBack({ r, plus, minus }: Interfaces, last: number,
 		let seen: number;
 		let seenAbove: number;
 		let seenBelow: number;
-		if (x[b] > THIN) {
-			seen = rho * Math.exp(-x[b]);
+		if (lost[b] > THIN) {
+			seen = rho * kept[b];
 			seenAbove = 1 + seen;
 			seenBelow = 1 - seen;
 		} else {
-			const lost = rho * -Math.expm1(-x[b]);
-			seen = rho - lost;
-			seenAbove = above - lost;
-			seenBelow = below + lost;
+			const less = rho * lost[b];
+			seen = rho - less;
+			seenAbove = above - less;
+			seenBelow = below + less;
 		}
 		const A = plus[b] * seenAbove;
 		const B = minus[b] * seenBelow;
-		const sum = A + B;
+		const twice = 2 / (A + B);
 		const front = r[b];
-		rho = front * seen < CANCELLING ? (A - B) / sum : (2 * (front + seen)) / sum;
-		above = (2 * A) / sum;
-		below = (2 * B) / sum;
+		rho = front * seen < CANCELLING ? ((A - B) / 2) * twice : (front + seen) * twice;
+		above = A * twice;
+		below = B * twice;
 	}
 	return rho;
 }

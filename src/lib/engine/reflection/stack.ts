@@ -1,5 +1,6 @@
 import type { LogLattice } from '../numerics/log-lattice.ts';
-import { interfaces, MOST_INTERFACES, reflectionFromBack, type Interfaces } from './recursion.ts';
+import { fading } from '../numerics/fading.ts';
+import { CANCELLING, MOST_INTERFACES, THIN } from './recursion.ts';
 
 /** Once the round trip through the layers has decayed by e^-40, what lies behind is not seen (4e-18). */
 export const OPAQUE = 40;
@@ -27,14 +28,24 @@ export const stackAtFrequency = (layers: number): StackAtFrequency => ({
 	ideal: false
 });
 
-const kappas = new Float64Array(MOST_INTERFACES);
-const depths = new Float64Array(MOST_INTERFACES);
-const tm = interfaces();
-const te = interfaces();
+/** Most nodes of a lattice, and room for every place of a stack at each of them. */
+const MOST_NODES = 256;
+const plane = (): Float64Array => new Float64Array(MOST_INTERFACES * MOST_NODES);
+const row = (): Float64Array => new Float64Array(MOST_NODES);
+
+/** 2 d kappa of every place, and what its layer keeps and loses: place by place, node by node within. */
+const kappas = plane();
+const keeps = plane();
+const loses = plane();
+const squares = row();
+const depths = row();
+/** 1 + rho and 1 - rho of what has been put together so far. */
+const [aboveTM, belowTM, aboveTE, belowTE] = [row(), row(), row(), row()];
 
 /**
- * Reflection of a stack over y = y0 + s: interfaces as in half-space.ts, put together by recursion.ts. Layers behind an
- * opaque part of the stack are not looked at.
+ * Reflection of a stack over y = y0 + s: interfaces as in half-space.ts, put together from the back as in recursion.ts. Layers
+ * behind an opaque part of the stack are not looked at. All nodes go through one interface before the next one is
+ * taken: what an interface has of its own stays in registers.
  */
 export function stackReflection(
 	lattice: LogLattice,
@@ -44,38 +55,134 @@ export function stackReflection(
 	rTM: Float64Array,
 	rTE: Float64Array
 ): void {
-	const { layers, chi, mu, thickness, ideal } = stack;
-	for (let i = 0; i < lattice.count; i++) {
-		const s = lattice.s[i];
-		const K = s * (2 * y0 + s);
-		kappas[0] = y0 + s;
-		let depth = 0;
-		let last = 0;
-		while (last <= layers && depth < OPAQUE) {
-			last++;
-			if (last > layers && ideal) {
-				setIdeal(tm, last, 1);
-				setIdeal(te, last, -1);
-				break;
+	const { count } = lattice;
+	const last = penetrate(lattice, y0, X, stack);
+	if (last > stack.layers && stack.ideal) startIdeal(count, rTM, rTE);
+	else startInterface(count, X, stack, last, rTM, rTE);
+	for (let b = last - 1; b >= 1; b--) addInterface(count, X, stack, b, rTM, rTE);
+}
+
+/** Sets kappas and fadings from the gap inwards; the last interface that any node sees. */
+function penetrate(lattice: LogLattice, y0: number, X: number, stack: StackAtFrequency): number {
+	const { layers, chi, mu, thickness } = stack;
+	const { count, s } = lattice;
+	for (let i = 0; i < count; i++) {
+		squares[i] = s[i] * (2 * y0 + s[i]);
+		kappas[i] = y0 + s[i];
+		depths[i] = 0;
+	}
+	for (let b = 1; b <= layers + 1; b++) {
+		const index = (1 + chi[b]) * mu[b] * X;
+		const t = thickness[b];
+		const base = b * MOST_NODES;
+		for (let i = 0; i < count; i++) {
+			const kappa = Math.sqrt(squares[i] + index);
+			kappas[base + i] = kappa;
+			if (b > layers) continue;
+			const x = kappa * t;
+			depths[i] += x;
+			if (depths[i] < OPAQUE) {
+				fading(x, keeps, loses, base + i);
+			} else {
+				keeps[base + i] = 0;
+				loses[base + i] = 1;
 			}
-			kappas[last] = Math.sqrt(K + (1 + chi[last]) * mu[last] * X);
-			setInterface(last, K, X, chi, mu);
-			depths[last] = kappas[last] * thickness[last];
-			depth += depths[last];
 		}
-		rTM[i] = reflectionFromBack(tm, last, depths);
-		rTE[i] = reflectionFromBack(te, last, depths);
+		// The first node decays slowest: once it sees nothing behind, none does.
+		if (b <= layers && depths[0] >= OPAQUE) return b;
+	}
+	return layers + 1;
+}
+
+function startIdeal(count: number, rTM: Float64Array, rTE: Float64Array): void {
+	rTM.fill(1, 0, count);
+	rTE.fill(-1, 0, count);
+	aboveTM.fill(2, 0, count);
+	belowTM.fill(0, 0, count);
+	aboveTE.fill(0, 0, count);
+	belowTE.fill(2, 0, count);
+}
+
+/** The interface at the back: nothing comes from behind it. */
+function startInterface(
+	count: number,
+	X: number,
+	{ chi, mu }: StackAtFrequency,
+	b: number,
+	rTM: Float64Array,
+	rTE: Float64Array
+): void {
+	const { epsA, epsB, muA, muB, tmK, tmX, teK, teX } = neighbours(chi, mu, b, X);
+	const before = (b - 1) * MOST_NODES;
+	const behind = b * MOST_NODES;
+	for (let i = 0; i < count; i++) {
+		const K = squares[i];
+		const onwardTM = epsB * kappas[before + i];
+		const backTM = epsA * kappas[behind + i];
+		const tm = 1 / (onwardTM + backTM);
+		rTM[i] = (tmK * K + tmX) * tm * tm;
+		aboveTM[i] = 2 * onwardTM * tm;
+		belowTM[i] = 2 * backTM * tm;
+		const onwardTE = muB * kappas[before + i];
+		const backTE = muA * kappas[behind + i];
+		const te = 1 / (onwardTE + backTE);
+		rTE[i] = (teK * K + teX) * te * te;
+		aboveTE[i] = 2 * onwardTE * te;
+		belowTE[i] = 2 * backTE * te;
 	}
 }
 
-function setIdeal(into: Interfaces, b: number, r: number): void {
-	into.r[b] = r;
-	into.plus[b] = 1 + r;
-	into.minus[b] = 1 - r;
+/**
+ * Interface b and the layer behind it, in front of what is there. With r = (u - v)/(u + v) the recursion of recursion.ts has
+ * A : B = u (1 + rho e) : v (1 - rho e).
+ */
+function addInterface(
+	count: number,
+	X: number,
+	{ chi, mu }: StackAtFrequency,
+	b: number,
+	rTM: Float64Array,
+	rTE: Float64Array
+): void {
+	const { epsA, epsB, muA, muB, tmK, tmX, teK, teX } = neighbours(chi, mu, b, X);
+	const before = (b - 1) * MOST_NODES;
+	const behind = b * MOST_NODES;
+	for (let i = 0; i < count; i++) {
+		const K = squares[i];
+		const keep = keeps[behind + i];
+		const lose = loses[behind + i];
+		const thin = lose <= THIN;
+		let rho = rTM[i];
+		let seen = rho * keep;
+		let u = epsB * kappas[before + i];
+		let v = epsA * kappas[behind + i];
+		let uv = u + v;
+		let A = u * (thin ? aboveTM[i] - rho * lose : 1 + seen);
+		let B = v * (thin ? belowTM[i] + rho * lose : 1 - seen);
+		let one = 1 / uv;
+		let two = 1 / (A + B);
+		let front = (tmK * K + tmX) * one * one;
+		rTM[i] = front * seen < CANCELLING ? (A - B) * two : (front + seen) * uv * two;
+		aboveTM[i] = 2 * A * two;
+		belowTM[i] = 2 * B * two;
+		rho = rTE[i];
+		seen = rho * keep;
+		u = muB * kappas[before + i];
+		v = muA * kappas[behind + i];
+		uv = u + v;
+		A = u * (thin ? aboveTE[i] - rho * lose : 1 + seen);
+		B = v * (thin ? belowTE[i] + rho * lose : 1 - seen);
+		one = 1 / uv;
+		two = 1 / (A + B);
+		front = (teK * K + teX) * one * one;
+		rTE[i] = front * seen < CANCELLING ? (A - B) * two : (front + seen) * uv * two;
+		aboveTE[i] = 2 * A * two;
+		belowTE[i] = 2 * B * two;
+	}
 }
 
-/** Interface between place b - 1 and place b. */
-function setInterface(b: number, K: number, X: number, chi: Float64Array, mu: Float64Array): void {
+/** What the interface between places b - 1 and b has of its own, and the numerators of half-space.ts. */
+function neighbours(chi: Float64Array, mu: Float64Array, b: number, X: number): Neighbours {
 	const a = b - 1;
 	const epsA = 1 + chi[a];
 	const epsB = 1 + chi[b];
@@ -83,16 +190,25 @@ function setInterface(b: number, K: number, X: number, chi: Float64Array, mu: Fl
 	const muB = mu[b];
 	const dEps = chi[b] - chi[a];
 	const dMu = muB - muA;
-	const tmA = epsA * kappas[b];
-	const tmB = epsB * kappas[a];
-	const tmDen = 1 / (tmA + tmB);
-	const teA = muA * kappas[b];
-	const teB = muB * kappas[a];
-	const teDen = 1 / (teA + teB);
-	tm.r[b] = (dEps * (epsA + epsB) * K + epsA * epsB * X * (dEps * muA - epsA * dMu)) * tmDen * tmDen;
-	tm.plus[b] = 2 * tmB * tmDen;
-	tm.minus[b] = 2 * tmA * tmDen;
-	te.r[b] = (dMu * (muA + muB) * K + muA * muB * X * (dMu * epsA - muA * dEps)) * teDen * teDen;
-	te.plus[b] = 2 * teB * teDen;
-	te.minus[b] = 2 * teA * teDen;
+	return {
+		epsA,
+		epsB,
+		muA,
+		muB,
+		tmK: dEps * (epsA + epsB),
+		tmX: epsA * epsB * X * (dEps * muA - epsA * dMu),
+		teK: dMu * (muA + muB),
+		teX: muA * muB * X * (dMu * epsA - muA * dEps)
+	};
+}
+
+interface Neighbours {
+	epsA: number;
+	epsB: number;
+	muA: number;
+	muB: number;
+	tmK: number;
+	tmX: number;
+	teK: number;
+	teX: number;
 }

@@ -1,5 +1,6 @@
 import type { ZeroFrequencyRule } from '../contract.ts';
 import type { LogLattice } from '../numerics/log-lattice.ts';
+import { fading } from '../numerics/fading.ts';
 import type { StaticLimit } from '../permittivity/susceptibility.ts';
 import { interfaces, MOST_INTERFACES, reflectionFromBack } from './recursion.ts';
 
@@ -55,7 +56,8 @@ export function staticTe(a: ZeroFrequencyMaterial, b: ZeroFrequencyMaterial): nu
 }
 
 const kappas = new Float64Array(MOST_INTERFACES);
-const depths = new Float64Array(MOST_INTERFACES);
+const kept = new Float64Array(MOST_INTERFACES);
+const lost = new Float64Array(MOST_INTERFACES);
 const all = interfaces();
 
 /** r, 1 + r and 1 - r of interface b from the two admittances: r = (onward - back)/(onward + back). */
@@ -146,11 +148,11 @@ export function zeroFrequencyReflection(
 		kappas[0] = y0 + s;
 		for (let b = 1; b <= last; b++) {
 			kappas[b] = Math.sqrt(K + materials[b].square * materials[b].mu * X);
-			if (b < last) depths[b] = kappas[b] * thickness[b];
+			if (b < last) fading(kappas[b] * thickness[b], kept, lost, b);
 			if (polarisation === 'te') setTe(b, materials[b - 1], materials[b], K, X);
 			else setTm(b, materials[b - 1], materials[b], K, X);
 		}
 		if (screened) setScreened(materials[0], materials[1], Math.sqrt(K), kappas[0]);
-		r[i] = reflectionFromBack(all, last, depths);
+		r[i] = reflectionFromBack(all, last, kept, lost);
 	}
 }
