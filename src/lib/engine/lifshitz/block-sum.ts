@@ -73,9 +73,12 @@ const BLOCK_SAFETY = 20;
 /** Next to xi = 0 the last coefficients themselves stand for the error: the rule is far better than that. */
 const REMAINDER_SAFETY = 2;
 
+/** Grade of terms that are only looked at for their size. */
+const COARSEST = 3;
+
 /** One block added to the tally; magnitudes of the block are left in `last`. */
 export interface BlockSum {
-	add(block: FrequencyBlock, separation: number, tally: Tally, extrapolate: boolean): void;
+	add(block: FrequencyBlock, separation: number, tally: Tally, extrapolate: boolean, grade: number): void;
 	last: Float64Array;
 	/** y0 at the first frequency of a block. */
 	startPhase(block: FrequencyBlock, separation: number): number;
@@ -94,14 +97,20 @@ export function blockSum(system: System, level: Level, quantities: Quantities): 
 	const projected = new Float64Array(18);
 	const phases = [0, 0];
 	const sizes = [0, 0];
-	const add = (block: FrequencyBlock, separation: number, tally: Tally, extrapolate: boolean): void => {
+	const add = (
+		block: FrequencyBlock,
+		separation: number,
+		tally: Tally,
+		extrapolate: boolean,
+		grade: number
+	): void => {
 		const time = roundTripTime(separation);
 		last.fill(0);
 		projected.fill(0);
 		// Terms that grow inside a block have passed a zero, or will not be steep.
 		let rising = false;
 		for (let i = 0; i < block.xi.length; i++) {
-			at(block, i, separation, time);
+			at(block, i, separation, time, grade);
 			phases[1] = terms.phase;
 			const size = Math.abs(terms.te[gauge]) + Math.abs(terms.tm[gauge]);
 			rising ||= i > 0 && size > sizes[1];
@@ -142,12 +151,12 @@ export function blockSum(system: System, level: Level, quantities: Quantities): 
 	const startPhase = (block: FrequencyBlock, separation: number): number =>
 		phaseOf(block, 0, roundTripTime(separation));
 	const look = (block: FrequencyBlock, separation: number, out: Float64Array): void => {
-		add(block, separation, newTally(), true);
+		add(block, separation, newTally(), true, COARSEST);
 		out.set(last);
 	};
 	const values = (block: FrequencyBlock, separation: number, out: Float64Array): void => {
 		const aside = newTally();
-		add(block, separation, aside, true);
+		add(block, separation, aside, true, 0);
 		for (let q = 0; q < 3; q++) out[q] = valueOf(aside, q);
 	};
 	return { add, startPhase, look, values, last };

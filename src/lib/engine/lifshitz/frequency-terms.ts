@@ -3,7 +3,7 @@ import { halfSpaceReflection, idealReflection } from '../reflection/half-space.t
 import { stackAtFrequency, stackReflection, OPAQUE, type StackAtFrequency } from '../reflection/stack.ts';
 import type { Body, System } from '../system.ts';
 import type { FrequencyBlock } from './frequency-blocks.ts';
-import { frequencyLattice } from './lattices.ts';
+import { frequencyLattices } from './lattices.ts';
 import { doubledFall, LATTICE_CONSTANTS, singleFall, type Level } from './level.ts';
 import { addPolarizationNoise, sumOf, type Quantities } from './polarization-sum.ts';
 import { UNIT_ROUNDOFF } from './tally.ts';
@@ -38,8 +38,8 @@ interface BodyNoise {
 
 export interface FrequencyEvaluator {
 	terms: FrequencyTerms;
-	/** Computes node i of a block into `terms`; time is 2 d/c. */
-	at(block: FrequencyBlock, i: number, separation: number, time: number): void;
+	/** Computes node i of a block into `terms`; time is 2 d/c, `grade` says how finely (level.ts). */
+	at(block: FrequencyBlock, i: number, separation: number, time: number, grade: number): void;
 	/** y0 of node i. */
 	phaseOf(block: FrequencyBlock, i: number, time: number): number;
 }
@@ -47,8 +47,9 @@ export interface FrequencyEvaluator {
 /** Evaluator of frequency terms for one system and level. */
 export function frequencyTerms(system: System, level: Level, quantities: Quantities): FrequencyEvaluator {
 	const { substances, left, right, twins } = system;
-	const latticeOf = (index: number, odd: number): LogLattice => frequencyLattice(level, index, odd);
-	const size = latticeOf(SMALLEST_SCALE, 0).count + 4;
+	const graded = level.steps.map((step) => frequencyLattices(step, level.cut));
+	const paired = frequencyLattices(level.paired, level.cut);
+	const size = graded[0].at(SMALLEST_SCALE, 0).count + 4;
 	const polarizationSum = sumOf(quantities);
 	const [tm1, te1, tm2, te2] = [0, 1, 2, 3].map(() => new Float64Array(size));
 	const stacks = [left, right].map(({ thickness }) => stackAtFrequency(thickness.length));
@@ -65,8 +66,8 @@ export function frequencyTerms(system: System, level: Level, quantities: Quantit
 	};
 	const { te, tm, lattice: open, rounding } = terms;
 	const [firstTe, firstTm, firstOpen] = [0, 1, 2].map(() => new Float64Array(3));
-	const single = singleFall(level);
-	const doubled = doubledFall(level);
+	const singles = level.steps.map(singleFall);
+	const doubled = doubledFall(level.paired);
 	const mediumUlps = substances[0].chi?.ulps ?? 0;
 	// e^-y0 turns the relative error of y0, half of it from that of eps_m, into y0 times as much.
 	const phaseUlps = PHASE_ROUNDING + mediumUlps / 2;
@@ -213,17 +214,18 @@ export function frequencyTerms(system: System, level: Level, quantities: Quantit
 		return block.xi[i] * time * Math.sqrt((1 + block.chi[0][i]) * block.mu[0][i]);
 	};
 
-	const at = (block: FrequencyBlock, i: number, separation: number, time: number): void => {
+	const at = (block: FrequencyBlock, i: number, separation: number, time: number, grade: number): void => {
 		const y0 = phaseOf(block, i, time);
 		const X = (block.xi[i] * time) ** 2;
 		terms.phase = y0;
 		const radius = FOOT * analyticRadius(block, i, separation, X, y0);
 		const scale = Math.min(SMALLEST_SCALE, Math.max(0, Math.ceil(-Math.log2(radius))));
 		const odd = (block.parity + i) & 1;
-		onLattice(block, i, separation, latticeOf(scale, odd), y0, X);
+		const lattices = block.doubled ? paired : graded[grade];
+		onLattice(block, i, separation, lattices.at(scale, odd), y0, X);
 		if (!block.doubled) {
 			for (let q = 0; q < 3; q++) {
-				open[q] *= single * LATTICE_CONSTANTS[q];
+				open[q] *= singles[grade] * LATTICE_CONSTANTS[q];
 				open[q] += 2 * level.cut * (Math.abs(te[q]) + Math.abs(tm[q]));
 			}
 			return;
@@ -231,7 +233,7 @@ export function frequencyTerms(system: System, level: Level, quantities: Quantit
 		firstTe.set(te);
 		firstTm.set(tm);
 		firstOpen.set(open);
-		onLattice(block, i, separation, latticeOf(scale, 1 - odd), y0, X);
+		onLattice(block, i, separation, lattices.at(scale, 1 - odd), y0, X);
 		for (let q = 0; q < 3; q++) {
 			te[q] = (te[q] + firstTe[q]) / 2;
 			tm[q] = (tm[q] + firstTm[q]) / 2;

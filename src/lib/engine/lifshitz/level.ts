@@ -3,8 +3,14 @@
  * until its bound does; every choice depends on the request alone, never on other points.
  */
 export interface Level {
-	/** Step h of the lattice in ln s, and what may be left out at its ends. */
-	step: number;
+	/**
+	 * Steps h of the lattice in ln s by grade: the first where a frequency may carry the result, coarser ones where it
+	 * weighs less than each of GRADES. What they leave open is measured all the same.
+	 */
+	steps: readonly number[];
+	/** Step of two lattices that are computed together, shifted by half a step. */
+	paired: number;
+	/** What may be left out at the ends of a lattice. */
 	cut: number;
 	/** Gauss nodes of one block of frequencies. */
 	nodes: number;
@@ -14,11 +20,21 @@ export interface Level {
 	reach: number;
 }
 
+/** Weights, as shares of the sum so far, from which on the next coarser step is taken. */
+const GRADES = [1e-2, 1e-4, 1e-6] as const;
+
 export const LEVELS: readonly Level[] = [
-	{ step: 0.35, cut: 1e-13, nodes: 6, direct: 8, reach: 1e-6 },
-	{ step: 0.29, cut: 1e-15, nodes: 7, direct: 8, reach: 1e-8 },
-	{ step: 0.25, cut: 1e-17, nodes: 11, direct: 16, reach: 0 }
+	{ steps: [0.39, 0.45, 0.55, 0.7], paired: 0.7, cut: 1e-10, nodes: 6, direct: 8, reach: 1e-6 },
+	{ steps: [0.32, 0.36, 0.42, 0.52], paired: 0.56, cut: 1e-12, nodes: 7, direct: 16, reach: 1e-8 },
+	{ steps: [0.25, 0.27, 0.3, 0.34], paired: 0.4, cut: 1e-17, nodes: 11, direct: 16, reach: 0 }
 ];
+
+/** The grade of a frequency whose block weighs this share of the result. */
+export function gradeOf(share: number): number {
+	let grade = 0;
+	while (grade < GRADES.length && share < GRADES[grade]) grade++;
+	return grade;
+}
 
 /**
  * Errors of a lattice in terms of what its even and odd nodes differ by. That difference lives at the frequency 1/(2h)
@@ -29,7 +45,7 @@ export const LEVELS: readonly Level[] = [
 export const LATTICE_CONSTANTS = [20, 32, 50] as const;
 
 /** exp(-pi^2 (1/h - 1/(2h))): error of one lattice over the difference of its halves. */
-export const singleFall = ({ step }: Level): number => Math.exp(-(Math.PI ** 2) / (2 * step));
+export const singleFall = (step: number): number => Math.exp(-(Math.PI ** 2) / (2 * step));
 
 /** exp(-pi^2 (2/h - 1/(2h))): error of the mean of two shifted lattices over the same difference. */
-export const doubledFall = ({ step }: Level): number => Math.exp((-3 * Math.PI ** 2) / (2 * step));
+export const doubledFall = (step: number): number => Math.exp((-3 * Math.PI ** 2) / (2 * step));

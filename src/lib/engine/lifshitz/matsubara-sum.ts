@@ -1,11 +1,11 @@
 import { roundTripTime, type System } from '../system.ts';
 import { blockSum } from './block-sum.ts';
 import { matsubaraBlocks, probeBlock, type FrequencyBlock } from './frequency-blocks.ts';
-import type { Level } from './level.ts';
+import { gradeOf, type Level } from './level.ts';
 import { matsubaraFrequency } from './matsubara.ts';
 import type { Quantities } from './polarization-sum.ts';
 import { LARGEST_PHASE, tailJudge } from './tail.ts';
-import type { Tally } from './tally.ts';
+import { shareOf, type Tally } from './tally.ts';
 
 /**
  * Adds all terms n >= 1 (T > 0) to a tally, octave by octave until the tail no longer counts (methods.md section 9).
@@ -33,15 +33,17 @@ export function matsubaraSum(
 		const judge = tailJudge();
 		octave.fill(0);
 		let next = 1;
+		let grade = 0;
 		let start = sum.startPhase(blockAt(0), separation);
 		for (let index = 0; blockAt(index).xi[0] * time < LARGEST_PHASE; index++) {
 			const block = blockAt(index);
-			sum.add(block, separation, tally, true);
+			sum.add(block, separation, tally, true, grade);
 			for (let q = 0; q < 3; q++) octave[q] += sum.last[q];
 			if (!block.closesOctave) continue;
 			next *= 2;
 			const following = sum.startPhase(blockAt(index + 1), separation);
 			judge.octave(octave, start, following);
+			grade = gradeOf(shareOf(tally, octave));
 			octave.fill(0);
 			start = following;
 			if (!judge.smallEnough(tally, accuracy)) continue;

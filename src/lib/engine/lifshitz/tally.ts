@@ -38,6 +38,16 @@ export function valueOf(tally: Tally, quantity: number): number {
 	return parts[at] + parts[at + 1] + (parts[at + 2] + parts[at + 3]);
 }
 
+/** The largest share that these magnitudes have in a sum; one where there is nothing yet. */
+export function shareOf(tally: Tally, sizes: Float64Array): number {
+	let share = 0;
+	for (let q = 0; q < 3; q++) {
+		const value = Math.abs(valueOf(tally, q));
+		if (sizes[q] > 0) share = Math.max(share, sizes[q] < value ? sizes[q] / value : 1);
+	}
+	return share > 0 ? share : 1;
+}
+
 const FIELDS = ['parts', 'magnitude', 'lattice', 'blocks', 'tail', 'rounding'] as const;
 
 /** What a tally holds now, to go back to. */

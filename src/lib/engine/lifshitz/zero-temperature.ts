@@ -2,10 +2,10 @@ import { SPEED_OF_LIGHT } from '../constants.ts';
 import { roundTripTime, type System } from '../system.ts';
 import { blockSum } from './block-sum.ts';
 import { probeBlock, zeroTemperatureBlocks, type FrequencyBlock } from './frequency-blocks.ts';
-import type { Level } from './level.ts';
+import { gradeOf, type Level } from './level.ts';
 import type { Quantities } from './polarization-sum.ts';
 import { LARGEST_PHASE, tailJudge } from './tail.ts';
-import { copyTally, restoreTally, UNIT_ROUNDOFF, valueOf, type Tally } from './tally.ts';
+import { copyTally, restoreTally, shareOf, UNIT_ROUNDOFF, valueOf, type Tally } from './tally.ts';
 
 /** Octaves above and below c/(2 d) that are tried at most; the lowest holds 2^-60 of the integral. */
 const MOST_OCTAVES = 60;
@@ -41,10 +41,10 @@ export function zeroTemperatureIntegral(
 		probes.set(key, known);
 		return known;
 	};
-	const addOctave = (k: number, separation: number, tally: Tally): void => {
+	const addOctave = (k: number, separation: number, tally: Tally, grade: number): void => {
 		octave.fill(0);
 		for (const block of blocks.octave(k)) {
-			sum.add(block, separation, tally, true);
+			sum.add(block, separation, tally, true, grade);
 			for (let q = 0; q < 3; q++) octave[q] += sum.last[q];
 		}
 	};
@@ -52,7 +52,8 @@ export function zeroTemperatureIntegral(
 	/** The block next to xi = 0, kept if its error is small; terms need not be analytic at that end. */
 	const addRemainder = (k: number, separation: number, accuracy: number, tally: Tally): boolean => {
 		const before = copyTally(tally);
-		for (const block of blocks.below(k)) sum.add(block, separation, tally, false);
+		const grade = gradeOf(shareOf(tally, octave));
+		for (const block of blocks.below(k)) sum.add(block, separation, tally, false, grade);
 		// Relaxations far below the lowest node would pass unseen: what xi = 0 differs by may fill all the way to it.
 		const lowest = blocks.below(k)[0].xi[0];
 		sum.values(probeAt(lowest, 2 * lowest), separation, first);
@@ -71,8 +72,10 @@ export function zeroTemperatureIntegral(
 		const judge = tailJudge();
 		const time = roundTripTime(separation);
 		let start = sum.startPhase(blocks.octave(middle)[0], separation);
+		let grade = 0;
 		for (let k = middle; k < middle + MOST_OCTAVES && 2 ** k * time < LARGEST_PHASE; k++) {
-			addOctave(k, separation, tally);
+			addOctave(k, separation, tally, grade);
+			grade = gradeOf(shareOf(tally, octave));
 			const next = sum.startPhase(blocks.octave(k + 1)[0], separation);
 			judge.octave(octave, start, next);
 			start = next;
@@ -88,8 +91,10 @@ export function zeroTemperatureIntegral(
 
 	const downwards = (middle: number, separation: number, accuracy: number, tally: Tally): void => {
 		const lowest = middle - MOST_OCTAVES;
+		let grade = 0;
 		for (let k = middle - 1; k > lowest; k--) {
-			addOctave(k, separation, tally);
+			addOctave(k, separation, tally, grade);
+			grade = gradeOf(shareOf(tally, octave));
 			// Nothing yet: coatings that match the medium may hide the bodies down to much lower frequencies.
 			if (tally.magnitude.every((size) => size === 0)) continue;
 			const late = [0, 1, 2].every(

@@ -32,10 +32,11 @@ export function zeroTerm(
 	const wanted = quantities === 'all' ? [0, 1, 2] : [1];
 	const { left, right, screening, ions } = system;
 	const medium = left.zero[0];
-	const latticesTo = (floor: number): LogLattice[] => [0, 1].map((odd) => zeroLattice(level, floor, odd));
+	const latticesTo = (floor: number): LogLattice[] =>
+		[0, 1].map((odd) => zeroLattice(level.paired, level.cut, floor, odd));
 	// With y0 = 0 the integrands vanish at least like y ln y at the foot.
 	const unscreened = latticesTo(Math.sqrt(level.cut) / 200);
-	const fall = doubledFall(level);
+	const fall = doubledFall(level.paired);
 	let rLeft = new Float64Array(0);
 	let rRight = new Float64Array(0);
 	const sums = new Float64Array(6);
