@@ -3,7 +3,7 @@ import type { FrequencyBlock } from './frequency-blocks.ts';
 import { frequencyTerms } from './frequency-terms.ts';
 import type { Level } from './level.ts';
 import type { Quantities } from './polarization-sum.ts';
-import { newTally, valueOf, type Tally } from './tally.ts';
+import { clearTally, newTally, valueOf, type Tally } from './tally.ts';
 
 /**
  * The error of an m-node Gauss rule over an octave: terms are analytic for Re xi > 0, so the coefficients c_j of a
@@ -91,6 +91,8 @@ export interface BlockSum {
 /** Adds up blocks of frequencies of one system at one level. */
 export function blockSum(system: System, level: Level, quantities: Quantities): BlockSum {
 	const { terms, at, phaseOf } = frequencyTerms(system, level, quantities);
+	const { te: teOf, tm: tmOf, lattice: openOf, rounding: noiseOf } = terms;
+	const aside = newTally();
 	/** The quantity by which the fall of terms is judged. */
 	const gauge = quantities === 'all' ? 0 : 1;
 	const last = new Float64Array(3);
@@ -105,11 +107,14 @@ export function blockSum(system: System, level: Level, quantities: Quantities): 
 		grade: number
 	): void => {
 		const time = roundTripTime(separation);
+		const { exact, xi, weight } = block;
+		const { parts, lattice, rounding } = tally;
+		const [first, second, third] = block.projections;
 		last.fill(0);
 		projected.fill(0);
 		// Terms that grow inside a block have passed a zero, or will not be steep.
 		let rising = false;
-		for (let i = 0; i < block.xi.length; i++) {
+		for (let i = 0; i < xi.length; i++) {
 			at(block, i, separation, time, grade);
 			phases[1] = terms.phase;
 			const size = Math.abs(terms.te[gauge]) + Math.abs(terms.tm[gauge]);
@@ -119,26 +124,35 @@ export function blockSum(system: System, level: Level, quantities: Quantities): 
 				phases[0] = phases[1];
 				sizes[0] = sizes[1];
 			}
-			const w = block.weight[i];
+			const w = weight[i];
 			for (let q = 0; q < 3; q++) {
-				const te = terms.te[q];
-				const tm = terms.tm[q];
-				tally.parts[4 * q + 2] += w * te;
-				tally.parts[4 * q + 3] += w * tm;
+				const te = teOf[q];
+				const tm = tmOf[q];
+				parts[4 * q + 2] += w * te;
+				parts[4 * q + 3] += w * tm;
 				last[q] += w * (Math.abs(te) + Math.abs(tm));
-				tally.lattice[q] += w * terms.lattice[q];
-				tally.rounding[q] += w * terms.rounding[q];
-				if (block.exact) continue;
-				for (let j = 0; j < 3; j++) {
-					projected[6 * q + j] += block.projections[j][i] * te;
-					projected[6 * q + 3 + j] += block.projections[j][i] * tm;
-				}
+				lattice[q] += w * openOf[q];
+				rounding[q] += w * noiseOf[q];
+			}
+			if (exact) continue;
+			const a = first[i];
+			const b = second[i];
+			const c = third[i];
+			for (let q = 0; q < 3; q++) {
+				const te = teOf[q];
+				const tm = tmOf[q];
+				projected[6 * q] += a * te;
+				projected[6 * q + 1] += b * te;
+				projected[6 * q + 2] += c * te;
+				projected[6 * q + 3] += a * tm;
+				projected[6 * q + 4] += b * tm;
+				projected[6 * q + 5] += c * tm;
 			}
 		}
 		tally.evaluations += terms.evaluations;
 		terms.evaluations = 0;
 		for (let q = 0; q < 3; q++) tally.magnitude[q] += last[q];
-		if (block.exact) return;
+		if (exact) return;
 		const early = rising ? DOUBLE_ZERO : 0;
 		const falls = fallsOf(block.xi.length, steepness(block, phases, sizes), early);
 		const safety = extrapolate ? BLOCK_SAFETY * falls.beyond : REMAINDER_SAFETY;
@@ -151,11 +165,12 @@ export function blockSum(system: System, level: Level, quantities: Quantities): 
 	const startPhase = (block: FrequencyBlock, separation: number): number =>
 		phaseOf(block, 0, roundTripTime(separation));
 	const look = (block: FrequencyBlock, separation: number, out: Float64Array): void => {
-		add(block, separation, newTally(), true, COARSEST);
+		clearTally(aside);
+		add(block, separation, aside, true, COARSEST);
 		out.set(last);
 	};
 	const values = (block: FrequencyBlock, separation: number, out: Float64Array): void => {
-		const aside = newTally();
+		clearTally(aside);
 		add(block, separation, aside, true, 0);
 		for (let q = 0; q < 3; q++) out[q] = valueOf(aside, q);
 	};

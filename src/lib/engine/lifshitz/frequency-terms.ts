@@ -53,6 +53,7 @@ export function frequencyTerms(system: System, level: Level, quantities: Quantit
 	const polarizationSum = sumOf(quantities);
 	const [tm1, te1, tm2, te2] = [0, 1, 2, 3].map(() => new Float64Array(size));
 	const stacks = [left, right].map(({ thickness }) => stackAtFrequency(thickness.length));
+	const layered = [left, right].filter(({ thickness }) => thickness.length > 0);
 	const sums = new Float64Array(6);
 	const noise: BodyNoise = { relative: 0, absolute: 0 };
 	const noise2: BodyNoise = { relative: 0, absolute: 0 };
@@ -90,10 +91,12 @@ export function frequencyTerms(system: System, level: Level, quantities: Quantit
 	): number => {
 		let lowest = Infinity;
 		for (let j = 0; j < substances.length; j++) {
-			if (substances[j].chi !== null) lowest = Math.min(lowest, (1 + block.chi[j][i]) * block.mu[j][i]);
+			const square = (1 + block.chi[j][i]) * block.mu[j][i];
+			if (square < lowest && substances[j].chi !== null) lowest = square;
 		}
 		let radius = Math.min(1, y0, (lowest * X) / (2 * y0));
-		for (const { thickness, places } of [left, right]) {
+		for (let b = 0; b < layered.length; b++) {
+			const { thickness, places } = layered[b];
 			for (let j = 0; j < thickness.length; j++) {
 				const index = Math.sqrt((1 + block.chi[places[j]][i]) * block.mu[places[j]][i] * X);
 				const ratio = separation / thickness[j];

@@ -43,7 +43,9 @@ export function tailJudge(): TailJudge {
 	let seen = 0;
 	const tail = (q: number): number => Math.max(geometric(q), probed[q]);
 	const geometric = (q: number): number => {
-		const [now, before, earlier] = sizes.map((size) => size[q]);
+		const now = sizes[0][q];
+		const before = sizes[1][q];
+		const earlier = sizes[2][q];
 		if (now === 0 && before === 0) return seen >= 2 ? 0 : Infinity;
 		if (seen < 3) return Infinity;
 		const slower = Math.exp(Math.max(0, starts[0] - starts[1] - (next - starts[0])));
@@ -68,10 +70,12 @@ export function tailJudge(): TailJudge {
 				probed[q] = PROBE_SAFETY * (first[q] + second[q] / (1 - fall));
 			}
 		},
-		smallEnough: (tally, accuracy) =>
-			[0, 1, 2].every((q) => {
+		smallEnough(tally, accuracy) {
+			for (let q = 0; q < 3; q++) {
 				const wanted = TAIL_SHARE * accuracy * Math.abs(valueOf(tally, q));
-				return tail(q) <= Math.max(wanted, TAIL_ROUNDING * tally.magnitude[q]);
-			})
+				if (!(tail(q) <= Math.max(wanted, TAIL_ROUNDING * tally.magnitude[q]))) return false;
+			}
+			return true;
+		}
 	};
 }

