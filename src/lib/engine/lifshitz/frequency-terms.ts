@@ -4,7 +4,7 @@ import { stackAtFrequency, stackReflection, OPAQUE, type StackAtFrequency } from
 import type { Body, System } from '../system.ts';
 import type { FrequencyBlock } from './frequency-blocks.ts';
 import { frequencyLattices } from './lattices.ts';
-import { doubledFall, LATTICE_CONSTANTS, singleFall, type Level } from './level.ts';
+import { doubledFall, LATTICE_CONSTANTS, PAIRED_CONSTANTS, singleFall, type Level } from './level.ts';
 import { addPolarizationNoise, sumOf, type Quantities } from './polarization-sum.ts';
 import { UNIT_ROUNDOFF } from './tally.ts';
 
@@ -240,7 +240,7 @@ export function frequencyTerms(system: System, level: Level, quantities: Quantit
 		for (let q = 0; q < 3; q++) {
 			te[q] = (te[q] + firstTe[q]) / 2;
 			tm[q] = (tm[q] + firstTm[q]) / 2;
-			open[q] = doubled * LATTICE_CONSTANTS[q] * Math.hypot(open[q], firstOpen[q]);
+			open[q] = doubled * PAIRED_CONSTANTS[q] * Math.hypot(open[q], firstOpen[q]);
 			open[q] += 2 * level.cut * (Math.abs(te[q]) + Math.abs(tm[q]));
 		}
 	};

@@ -24,9 +24,9 @@ export interface Level {
 const GRADES = [1e-2, 1e-4, 1e-6] as const;
 
 export const LEVELS: readonly Level[] = [
-	{ steps: [0.39, 0.45, 0.55, 0.7], paired: 0.7, cut: 1e-10, nodes: 6, direct: 8, reach: 1e-6 },
-	{ steps: [0.32, 0.36, 0.42, 0.52], paired: 0.56, cut: 1e-12, nodes: 7, direct: 16, reach: 1e-8 },
-	{ steps: [0.25, 0.27, 0.3, 0.34], paired: 0.4, cut: 1e-17, nodes: 11, direct: 16, reach: 0 }
+	{ steps: [0.39, 0.45, 0.55, 0.7], paired: 0.56, cut: 1e-10, nodes: 6, direct: 8, reach: 1e-6 },
+	{ steps: [0.32, 0.36, 0.42, 0.52], paired: 0.48, cut: 1e-12, nodes: 7, direct: 16, reach: 1e-8 },
+	{ steps: [0.25, 0.27, 0.3, 0.34], paired: 0.36, cut: 1e-17, nodes: 11, direct: 16, reach: 0 }
 ];
 
 /** The grade of a frequency whose block weighs this share of the result. */
@@ -42,7 +42,10 @@ export function gradeOf(share: number): number {
  * |Im u| < pi/2 makes spectra fall like exp(-pi^2 frequency). The constants, for F, P and G, cover the powers of the
  * frequency that go with it and phases at which the difference is small by chance.
  */
-export const LATTICE_CONSTANTS = [20, 32, 50] as const;
+export const LATTICE_CONSTANTS = [14, 26, 50] as const;
+
+/** The same for two shifted lattices: powers of four times the frequency, not of twice it. */
+export const PAIRED_CONSTANTS = [40, 140, 520] as const;
 
 /** exp(-pi^2 (1/h - 1/(2h))): error of one lattice over the difference of its halves. */
 export const singleFall = (step: number): number => Math.exp(-(Math.PI ** 2) / (2 * step));

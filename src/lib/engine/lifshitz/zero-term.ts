@@ -9,7 +9,7 @@ import {
 } from '../reflection/zero-frequency.ts';
 import type { Body, System } from '../system.ts';
 import { zeroLattice } from './lattices.ts';
-import { doubledFall, LATTICE_CONSTANTS, type Level } from './level.ts';
+import { doubledFall, PAIRED_CONSTANTS, type Level } from './level.ts';
 import { addPolarizationNoise, sumOf, type Quantities } from './polarization-sum.ts';
 import { UNIT_ROUNDOFF, type Tally } from './tally.ts';
 
@@ -97,7 +97,7 @@ export function zeroTerm(
 			}
 		}
 		for (const q of wanted) {
-			tally.lattice[q] += (fall * LATTICE_CONSTANTS[q] * open[q]) / 2;
+			tally.lattice[q] += (fall * PAIRED_CONSTANTS[q] * open[q]) / 2;
 			tally.rounding[q] += noise[q] / 4;
 		}
 	};

@@ -1,6 +1,16 @@
 import type { LogLattice } from '../numerics/log-lattice.ts';
-import { fading } from '../numerics/fading.ts';
 import { CANCELLING, MOST_INTERFACES, THIN } from './recursion.ts';
+import {
+	coatAt,
+	firstKappa,
+	kappas,
+	keeps,
+	loses,
+	MOST_NODES,
+	squares,
+	startWaves,
+	waveAt
+} from './waves.ts';
 
 /** Once the round trip through the layers has decayed by e^-40, what lies behind is not seen (4e-18). */
 export const OPAQUE = 40;
@@ -28,17 +38,7 @@ export const stackAtFrequency = (layers: number): StackAtFrequency => ({
 	ideal: false
 });
 
-/** Most nodes of a lattice, and room for every place of a stack at each of them. */
-const MOST_NODES = 256;
-const plane = (): Float64Array => new Float64Array(MOST_INTERFACES * MOST_NODES);
 const row = (): Float64Array => new Float64Array(MOST_NODES);
-
-/** 2 d kappa of every place, and what its layer keeps and loses: place by place, node by node within. */
-const kappas = plane();
-const keeps = plane();
-const loses = plane();
-const squares = row();
-const depths = row();
 /** 1 + rho and 1 - rho of what has been put together so far. */
 const [aboveTM, belowTM, aboveTE, belowTE] = [row(), row(), row(), row()];
 
@@ -62,37 +62,26 @@ export function stackReflection(
 	for (let b = last - 1; b >= 1; b--) addInterface(count, X, stack, b, rTM, rTE);
 }
 
-/** Sets kappas and fadings from the gap inwards; the last interface that any node sees. */
+/** Finds the waves of every place from the gap inwards; the last interface that any node sees. */
 function penetrate(lattice: LogLattice, y0: number, X: number, stack: StackAtFrequency): number {
-	const { layers, chi, mu, thickness } = stack;
-	const { count, s } = lattice;
-	for (let i = 0; i < count; i++) {
-		squares[i] = s[i] * (2 * y0 + s[i]);
-		kappas[i] = y0 + s[i];
-		depths[i] = 0;
-	}
-	for (let b = 1; b <= layers + 1; b++) {
-		const index = (1 + chi[b]) * mu[b] * X;
-		const t = thickness[b];
-		const base = b * MOST_NODES;
-		for (let i = 0; i < count; i++) {
-			const kappa = Math.sqrt(squares[i] + index);
-			kappas[base + i] = kappa;
-			if (b > layers) continue;
-			const x = kappa * t;
-			depths[i] += x;
-			if (depths[i] < OPAQUE) {
-				fading(x, keeps, loses, base + i);
-			} else {
-				keeps[base + i] = 0;
-				loses[base + i] = 1;
-			}
-		}
+	const { layers, chi, mu, thickness, ideal } = stack;
+	startWaves(lattice, y0, X);
+	let depth = 0;
+	for (let b = 0; b <= layers + 1; b++) {
+		if (b > layers && ideal) break;
+		waves[b] = waveAt(chi[b], mu[b]);
+		if (b === 0 || b > layers) continue;
+		coats[b] = coatAt(waves[b], thickness[b]);
 		// The first node decays slowest: once it sees nothing behind, none does.
-		if (b <= layers && depths[0] >= OPAQUE) return b;
+		depth += firstKappa(waves[b]) * thickness[b];
+		if (depth >= OPAQUE) return b;
 	}
 	return layers + 1;
 }
+
+/** Where the waves and coats of this stack's places are kept. */
+const waves = new Int32Array(MOST_INTERFACES);
+const coats = new Int32Array(MOST_INTERFACES);
 
 function startIdeal(count: number, rTM: Float64Array, rTE: Float64Array): void {
 	rTM.fill(1, 0, count);
@@ -113,8 +102,8 @@ function startInterface(
 	rTE: Float64Array
 ): void {
 	const { epsA, epsB, muA, muB, tmK, tmX, teK, teX } = neighbours(chi, mu, b, X);
-	const before = (b - 1) * MOST_NODES;
-	const behind = b * MOST_NODES;
+	const before = waves[b - 1];
+	const behind = waves[b];
 	for (let i = 0; i < count; i++) {
 		const K = squares[i];
 		const onwardTM = epsB * kappas[before + i];
@@ -145,12 +134,13 @@ function addInterface(
 	rTE: Float64Array
 ): void {
 	const { epsA, epsB, muA, muB, tmK, tmX, teK, teX } = neighbours(chi, mu, b, X);
-	const before = (b - 1) * MOST_NODES;
-	const behind = b * MOST_NODES;
+	const before = waves[b - 1];
+	const behind = waves[b];
+	const coat = coats[b];
 	for (let i = 0; i < count; i++) {
 		const K = squares[i];
-		const keep = keeps[behind + i];
-		const lose = loses[behind + i];
+		const keep = keeps[coat + i];
+		const lose = loses[coat + i];
 		const thin = lose <= THIN;
 		let rho = rTM[i];
 		let seen = rho * keep;
