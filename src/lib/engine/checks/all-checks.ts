@@ -1,3 +1,4 @@
+import { agreement } from './agreement.ts';
 import type { Check, CheckOutcome, CheckSubject } from './check.ts';
 import { fSumRule } from './f-sum-rule.ts';
 import { highFrequencyLimit } from './high-frequency-limit.ts';
@@ -23,7 +24,8 @@ export const ALL_CHECKS: readonly Check[] = [
 	kramersKronigResidual,
 	fSumRule,
 	joints,
-	reliance
+	reliance,
+	agreement
 ];
 
 /** Later checks assume an ordered passive table, so a `fail` of these ends the list. */

@@ -12,6 +12,8 @@ export interface CheckSubject {
 		/** Known from elsewhere; null for conductors and where nobody has stated it. */
 		staticPermittivity: number | null;
 	};
+	/** Other published versions of the material, by name; absent where nothing is to be held against them. */
+	others?: { ref: string; model: PermittivityModel }[];
 }
 
 /** `fail` blocks submission, `warn` must be answered with a reason, `info` stands as it is. */

@@ -19,6 +19,8 @@ import { mapColumns, type MappedTable } from './upload/map-columns.ts';
 import { parseSheet } from './upload/parse.ts';
 import { PUBLIC_STATES } from './viewer.ts';
 
+const OTHERS_MAX = 60;
+
 /** Making a draft, from a file or from a closed form: read, checked and sourced before anything is stored. */
 
 export interface Draft {
@@ -78,7 +80,13 @@ async function store(tx: Transaction, place: Place, content: Content): Promise<D
 	const sourceIds = await findSources(tx, description.source);
 	const parent = description.parent ? await findParent(tx, home.id, description.parent) : null;
 
-	const checks = checkModel({ model, rows: table?.rows ?? null, material: home.material });
+	const checks = checkModel({
+		model,
+		rows: table?.rows ?? null,
+		material: home.material,
+		// The seed comes in an order of its own, and each of its versions was held against the literature.
+		...(place.number ? {} : { others: await publishedOf(tx, home.material.id, place.replaces) })
+	});
 	const row = contentRow(content);
 	const number = place.number ?? (await nextNumber(tx, home.id, parent, row, place.replaces));
 	const id = place.replaces
@@ -172,6 +180,24 @@ async function rewrite(tx: Transaction, id: string, row: Written): Promise<strin
 	await tx.delete(checkResult).where(eq(checkResult.versionId, id));
 	await tx.update(version).set(row).where(eq(version.id, id));
 	return id;
+}
+
+/** What the library has of a material already, that a new version of it is held against. */
+async function publishedOf(tx: Transaction, materialId: string, but: string | undefined) {
+	const rows = await tx
+		.select({ slug: dataset.slug, major: version.major, minor: version.minor, model: version.model })
+		.from(version)
+		.innerJoin(dataset, eq(version.datasetId, dataset.id))
+		.where(
+			and(
+				eq(dataset.materialId, materialId),
+				eq(version.state, 'published'),
+				but === undefined ? undefined : ne(version.id, but)
+			)
+		)
+		.orderBy(dataset.slug, version.major, version.minor)
+		.limit(OTHERS_MAX);
+	return rows.map(({ slug, major, minor, model }) => ({ ref: `${slug}@${major}.${minor}`, model }));
 }
 
 /** What the engine would refuse to compute is refused here already, in the caller's terms. */

@@ -24,7 +24,7 @@ const QUANTITIES: [RegExp, Quantity][] = [
 	[/^(k|kappa|κ)\b/i, 'k']
 ];
 
-const UNCERTAINTY = /^((sigma|delta|error|err|uncertainty|unc|std|σ|Δ|±)[\s_.(]*|[sdu][\s_.(]+)/i;
+const UNCERTAINTY = /^((sigma|delta|error|err|uncertainty|unc|std|σ|Δ|±)(\s+of\s+|[\s_.(]*)|[sdu][\s_.(]+)/i;
 
 export function guessColumns(sheet: Sheet): ColumnGuess {
 	const width = sheet.rows[0].cells.length;
