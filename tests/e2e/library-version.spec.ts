@@ -43,7 +43,7 @@ test('machines find the address to cite, the newest version and the files', asyn
 test('every download arrives', async ({ page, request }) => {
 	await page.goto(ADDRESS);
 	const links = page.locator('a[download]');
-	expect(await links.count()).toBe(4);
+	expect(await links.count()).toBe(6);
 	for (const address of await links.evaluateAll((all) => all.map((one) => (one as HTMLAnchorElement).href))) {
 		const file = await request.get(address);
 		expect(file.status(), address).toBe(200);

@@ -29,6 +29,8 @@ export function linkHeader(version: Identified, latest: string | null, origin: s
 	if (latest !== null) links.push([own(latest), 'latest-version']);
 	if (version.parent !== null) links.push([own(version.parent), 'predecessor-version']);
 	for (const successor of version.successors) links.push([own(successor), 'successor-version']);
+	for (const { licence } of version.sources)
+		if (licence !== null) links.push([`https://spdx.org/licenses/${licence}`, 'license']);
 	links.push([api, 'alternate', 'application/json']);
 	return links
 		.map(
