@@ -1,4 +1,4 @@
-import type { PermittivityModel } from '$lib/engine/contract.ts';
+import type { MaterialModel, PermittivityModel } from '$lib/engine/contract.ts';
 
 /** Models made of parts, drawn at random: fitted bands, index formulae, mixtures, laws of temperature. */
 
@@ -126,4 +126,16 @@ export function composedLiquid(random: () => number): PermittivityModel {
 			}
 		]
 	};
+}
+
+/** A place made uniaxial, covered with a conducting sheet, or both. */
+export function dressed(random: () => number, material: MaterialModel): MaterialModel {
+	const roll = random();
+	const normal = { permittivity: random() < 0.8 ? oxide(random) : composedSolid(random) };
+	const siemens = logBetween(random, 1e-6, 1e-2);
+	const sheet =
+		random() < 0.5
+			? { kind: 'constant' as const, siemens }
+			: { kind: 'drude' as const, siemens, dampingEv: logBetween(random, 1e-3, 1) };
+	return { ...material, ...(roll < 0.7 ? { normal } : {}), ...(roll > 0.45 ? { sheet } : {}) };
 }

@@ -7,7 +7,7 @@ import type {
 	MaterialModel,
 	PermittivityModel
 } from '$lib/engine/contract.ts';
-import { composedLiquid, composedSolid } from './random-composed.ts';
+import { composedLiquid, composedSolid, dressed } from './random-composed.ts';
 
 /** Uniform numbers in [0, 1) from a seed: splitmix32, the same on every machine. */
 export function seededRandom(seed: number): () => number {
@@ -284,10 +284,11 @@ function temperature(dice: Dice): number {
 	return dice.between(10, 1000);
 }
 
-/** The same request for the same seed; every fourth one holds a fitted band, a mixture or a law of temperature somewhere. */
+/** The same request for the same seed; every fourth one holds a fitted band, a mixture or a law of temperature somewhere, another fourth a uniaxial place or a sheet. */
 export function randomRequest(seed: number): ForceRequest {
 	const request = plainRequest(seed);
-	return seed % 4 === 0 ? withComposed(request, seed) : request;
+	if (seed % 4 === 0) return withComposed(request, seed);
+	return seed % 4 === 2 ? withDress(request, seed) : request;
 }
 
 /** Another stream of numbers, so that what is drawn here changes nothing that was drawn before. */
@@ -303,6 +304,24 @@ function withComposed(request: ForceRequest, seed: number): ForceRequest {
 			? { ...left, layers: [{ ...left.layers[0], of: fresh }, ...left.layers.slice(1)] }
 			: { ...left, substrate: fresh };
 	return { ...request, arrangement: { ...arrangement, left: body } };
+}
+
+/** An axis and a sheet at the face of each body, or behind its first layer. */
+function withDress(request: ForceRequest, seed: number): ForceRequest {
+	const random = seededRandom(seed ^ 0x2545f491);
+	const body = (given: BodyOf<MaterialModel>): BodyOf<MaterialModel> => {
+		const dress = (material: MaterialModel): MaterialModel =>
+			material.permittivity.kind === 'idealConductor' ? material : dressed(random, material);
+		if (given.layers.length === 0 || random() < 0.4) return { ...given, substrate: dress(given.substrate) };
+		const [first, ...rest] = given.layers;
+		return { ...given, layers: [{ ...first, of: dress(first.of) }, ...rest] };
+	};
+	const { left, right } = request.arrangement;
+	const both = random() < 0.5;
+	return {
+		...request,
+		arrangement: { ...request.arrangement, left: body(left), right: both ? body(right) : right }
+	};
 }
 
 /** A valid request drawn over everything plates are computed for; the same for the same seed. */

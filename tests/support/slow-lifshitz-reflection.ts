@@ -1,4 +1,4 @@
-import type { ArrangementOf, BodyOf, MaterialModel } from '$lib/engine/contract.ts';
+import type { ArrangementOf, BodyOf, MaterialModel, SheetModel } from '$lib/engine/contract.ts';
 import {
 	electricSusceptibility,
 	imaginaryFrequency,
@@ -29,6 +29,11 @@ export interface Medium {
 	teShift: number;
 	tmMirror: boolean;
 	teMirror: boolean;
+	/** Along the normal of a uniaxial layer. */
+	normal: { eps: number; difference: number } | null;
+	/** What a sheet in front adds to the admittances. */
+	tmSheet: number;
+	teSheet: number;
 	/** thickness/d, so that kappa t = kappa * ratio/2; Infinity for the substrate. */
 	ratio: number;
 }
@@ -49,8 +54,15 @@ export interface Setting {
 	contrastError: number;
 }
 
+interface SlowPlace {
+	of: SlowMaterial;
+	normal: SlowMaterial | null;
+	sheet: SheetModel | undefined;
+	thickness: number;
+}
+
 interface PreparedBody {
-	layers: { of: SlowMaterial; thickness: number }[];
+	layers: SlowPlace[];
 }
 
 export interface PreparedArrangement {
@@ -61,11 +73,16 @@ export interface PreparedArrangement {
 }
 
 function prepareBody(body: BodyOf<MaterialModel>, kelvin: number): PreparedBody {
-	const layers = body.layers.map((layer) => ({
-		of: slowMaterial(layer.of, kelvin),
-		thickness: layer.thicknessNm * 1e-9
-	}));
-	return { layers: [...layers, { of: slowMaterial(body.substrate, kelvin), thickness: Infinity }] };
+	const place = (material: MaterialModel, thickness: number): SlowPlace => ({
+		of: slowMaterial(material, kelvin),
+		normal: material.normal
+			? slowMaterial({ ...material, permittivity: material.normal.permittivity }, kelvin)
+			: null,
+		sheet: material.sheet,
+		thickness
+	});
+	const layers = body.layers.map((layer) => place(layer.of, layer.thicknessNm * 1e-9));
+	return { layers: [...layers, place(body.substrate, Infinity)] };
 }
 
 export function prepareArrangement(arrangement: ArrangementOf<MaterialModel>): PreparedArrangement {
@@ -78,6 +95,23 @@ export function prepareArrangement(arrangement: ArrangementOf<MaterialModel>): P
 }
 
 const SPEED_OF_LIGHT = 299792458;
+const EPSILON_VACUUM = 8.8541878188e-12;
+
+/** What a sheet adds: sigma/(eps_0 xi) to eps/kappa and mu_0 sigma xi to kappa/mu, lengths in units of 2d. */
+function sheetAdmittances(
+	sheet: SheetModel | undefined,
+	xi: number,
+	distance: number
+): { tmSheet: number; teSheet: number } {
+	if (sheet === undefined) return { tmSheet: 0, teSheet: 0 };
+	if (xi === 0) return { tmSheet: Infinity, teSheet: 0 };
+	const fall = sheet.kind === 'constant' ? 1 : 1 + xi / (sheet.dampingEv * EV_TO_RAD_PER_S);
+	const sigma = sheet.siemens / fall;
+	return {
+		tmSheet: sigma / (EPSILON_VACUUM * xi * 2 * distance),
+		teSheet: (sigma * xi * 2 * distance) / (EPSILON_VACUUM * SPEED_OF_LIGHT ** 2)
+	};
+}
 const EV_TO_RAD_PER_S = (1.602176634e-19 * 2 * Math.PI) / 6.62607015e-34;
 
 /** The setting at imaginary frequency xi; xi = 0 takes the zero-frequency rules. */
@@ -90,13 +124,19 @@ export function settingAt(prepared: PreparedArrangement, xi: number, distance: n
 	const mu = 1 + muChi;
 	const phaseSquared = ((2 * distance * xi) / SPEED_OF_LIGHT) ** 2;
 	let contrastError = 0;
-	const place = ({ of, thickness }: { of: SlowMaterial; thickness: number }): Medium => {
+	const place = ({ of, normal, sheet, thickness }: SlowPlace): Medium => {
 		const layerMuChi = magneticSusceptibility(of.permeability, xi);
 		const layerMu = 1 + layerMuChi;
 		const muDifference = layerMuChi - muChi;
 		const ratio = thickness / distance;
-		const shared = { mu: layerMu, muDifference, ratio };
-		if (of.ideal || (xi === 0 && of.zero.conducts)) {
+		const shared = {
+			mu: layerMu,
+			muDifference,
+			ratio,
+			normal: null,
+			...sheetAdmittances(sheet, xi, distance)
+		};
+		if (of.ideal || (xi === 0 && (of.zero.conducts || normal?.zero.conducts))) {
 			const plasma =
 				xi === 0 ? of.zero.plasmaEnergySquared * ((EV_TO_RAD_PER_S * 2 * distance) / SPEED_OF_LIGHT) ** 2 : 0;
 			const mirror = of.ideal || of.zero.mirror;
@@ -114,10 +154,17 @@ export function settingAt(prepared: PreparedArrangement, xi: number, distance: n
 		const difference = permittivityDifference(of, medium, frequency, cache);
 		if (difference.value !== 0)
 			contrastError = Math.max(contrastError, difference.error / Math.abs(difference.value));
+		const along = normal && {
+			eps: 1 + electricSusceptibility(normal, frequency, cache),
+			...permittivityDifference(normal, medium, frequency, cache)
+		};
+		if (along && along.value !== 0)
+			contrastError = Math.max(contrastError, along.error / Math.abs(along.value));
 		const layerEps = 1 + electricSusceptibility(of, frequency, cache);
 		const shift = layerEps * layerMu * phaseSquared;
 		return {
 			...shared,
+			normal: along && { eps: along.eps, difference: along.value },
 			difference: difference.value,
 			eps: layerEps,
 			teContrast: difference.value * phaseSquared,
@@ -153,6 +200,24 @@ function throughLayer(gap: number, a: number, b: number, phase: number): number 
 	return (b * (gap * oneLessT + a) + a * t * (2 * gap + a)) / (gap + a + (gap + b) * t);
 }
 
+const tmKappa = ({ normal, eps, tmShift }: Medium, kSquared: number): number =>
+	Math.sqrt((normal ? eps / normal.eps : 1) * kSquared + tmShift);
+
+/** eps_p/kappa - eps_m/q with kappa^2 = (eps_p/eps_z) k^2 + eps_p mu x, over the sum of the two. */
+function uniaxialExcess(
+	{ eps, difference, muDifference }: Medium,
+	normal: { eps: number; difference: number },
+	setting: Setting,
+	q: number,
+	kSquared: number,
+	kappa: number
+): number {
+	const electric = (kSquared * (normal.eps * difference + setting.eps * normal.difference)) / normal.eps;
+	const magnetic =
+		setting.eps * setting.phaseSquared * (difference * setting.mu - setting.eps * muDifference);
+	return (eps * (electric + magnetic)) / ((eps * q + setting.eps * kappa) * kappa * q);
+}
+
 /** W in TM at wave number k, q = sqrt(k^2 + lowest^2) in the gap. */
 export function tmExcess(stack: readonly Medium[], setting: Setting, q: number, kSquared: number): number {
 	const gap = setting.eps / q;
@@ -163,12 +228,14 @@ export function tmExcess(stack: readonly Medium[], setting: Setting, q: number, 
 			excess = Infinity;
 			continue;
 		}
-		const kappa = Math.sqrt(kSquared + layer.tmShift);
-		const a =
-			(layer.difference * (q * kappa + kSquared) -
-				setting.eps * layer.eps * layer.muDifference * setting.phaseSquared) /
-			((kappa + q) * kappa * q);
+		const kappa = tmKappa(layer, kSquared);
+		const a = layer.normal
+			? uniaxialExcess(layer, layer.normal, setting, q, kSquared, kappa)
+			: (layer.difference * (q * kappa + kSquared) -
+					setting.eps * layer.eps * layer.muDifference * setting.phaseSquared) /
+				((kappa + q) * kappa * q);
 		excess = layer.ratio === Infinity ? a : throughLayer(gap, a, excess, (kappa * layer.ratio) / 2);
+		excess += layer.tmSheet;
 	}
 	return excess;
 }
@@ -187,6 +254,7 @@ export function teExcess(stack: readonly Medium[], setting: Setting, q: number, 
 		const a =
 			(product * layer.teContrast - layer.muDifference * (q * kappa + kSquared)) / ((kappa + q) * product);
 		excess = layer.ratio === Infinity ? a : throughLayer(gap, a, excess, (kappa * layer.ratio) / 2);
+		excess += layer.teSheet;
 	}
 	return excess;
 }
@@ -204,8 +272,14 @@ export function screenedExcess(stack: readonly Medium[], setting: Setting, s: nu
 			excess = Infinity;
 			continue;
 		}
-		const a = layer.difference * k - (setting.eps * setting.screening ** 2) / (s + k);
-		excess = layer.ratio === Infinity ? a : throughLayer(gap, a, excess, (k * layer.ratio) / 2);
+		const kappa = tmKappa(layer, k * k);
+		const mean = layer.normal ? Math.sqrt(layer.eps * layer.normal.eps) : layer.eps;
+		const difference = layer.normal
+			? (layer.normal.eps * layer.difference + setting.eps * layer.normal.difference) / (mean + setting.eps)
+			: layer.difference;
+		const a = difference * k - (setting.eps * setting.screening ** 2) / (s + k);
+		excess = layer.ratio === Infinity ? a : throughLayer(gap, a, excess, (kappa * layer.ratio) / 2);
+		excess += layer.tmSheet;
 	}
 	return excess;
 }

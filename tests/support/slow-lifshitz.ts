@@ -100,7 +100,12 @@ function nearestSingularity(setting: Setting): number {
 	const { lowest } = setting;
 	let least = lowest * lowest;
 	for (const layer of [...setting.left, ...setting.right])
-		if (!layer.tmMirror) least = Math.min(least, layer.tmShift);
+		if (!layer.tmMirror)
+			least = Math.min(
+				least,
+				layer.tmShift,
+				layer.normal ? (layer.tmShift * layer.normal.eps) / layer.eps : Infinity
+			);
 	return least / (lowest + Math.sqrt(Math.max(0, lowest * lowest - least)));
 }
 

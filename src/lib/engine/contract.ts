@@ -117,8 +117,22 @@ export type Uncertainty =
 	| { kind: 'table'; energiesEv: number[]; relative: number[]; correlation: 'common' | 'independent' }
 	| { kind: 'parameters'; names: string[]; covariance: number[][] };
 
-export interface MaterialModel {
+/** A layer of no thickness that conducts in its plane; `drude`: sigma/(1 + xi/gamma). */
+export type SheetModel =
+	{ kind: 'constant'; siemens: number } | { kind: 'drude'; siemens: number; dampingEv: number };
+
+/** What lies along the normal of a uniaxial body. */
+export interface NormalModel {
 	permittivity: PermittivityModel;
+}
+
+export interface MaterialModel {
+	/** Of a uniaxial body that in the plane of its face. */
+	permittivity: PermittivityModel;
+	/** Permittivity along the normal: the optic axis of a uniaxial body. Bodies and layers only. */
+	normal?: NormalModel;
+	/** On the face towards the gap. Bodies and layers only. */
+	sheet?: SheetModel;
 	permeability?: PermeabilityModel;
 	zeroFrequency?: ZeroFrequencyRule;
 	uncertainty?: Uncertainty;

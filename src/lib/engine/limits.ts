@@ -44,6 +44,8 @@ export const ENGINE_LIMITS = {
 	sellmeierConstant: { min: -1, max: 1e3 },
 	activationK: { min: -1e5, max: 1e5 },
 	debyeK: { min: 1, max: 1e4 },
+	/** Of a sheet; graphene has 6e-5 S. */
+	sheetSiemens: { min: 1e-12, max: 1e3 },
 	siemensPerM: { min: 1e-15, max: 1e10 },
 	epsilon2: { min: 0, max: 1e12 },
 	lowExponent: { min: 0.05, max: 10 },

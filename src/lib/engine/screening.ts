@@ -1,6 +1,7 @@
 import type { ArrangementOf, BodyOf, MaterialModel } from './contract.ts';
 import { plates } from './lifshitz/plates.ts';
 import { substanceOf, systemOf, type Substance } from './system.ts';
+import { materialAt } from './thermal-request.ts';
 import { metresFromNm } from './units.ts';
 import { checkRequest } from './validate.ts';
 
@@ -41,15 +42,16 @@ export interface ScreeningKernel {
  * without energy and gradient no logarithm is needed. The bound holds as it does for `evaluate`; values may differ from
  * its values within both bounds, because the pressure alone decides here how finely is computed.
  *
- * @param materials         in the order that triples number them; one material under two zero-frequency rules stands twice
+ * @param given             in the order that triples number them; one material under two zero-frequency rules stands twice
  * @param temperatureK      K, or 0
  * @param relativeAccuracy  of the pressure
  */
 export function screeningKernel(
-	materials: readonly MaterialModel[],
+	given: readonly MaterialModel[],
 	temperatureK: number,
 	relativeAccuracy: number
 ): ScreeningKernel {
+	const materials = given.map((material) => materialAt(material, temperatureK));
 	const substances = new Map<MaterialModel, Substance>();
 	const source = (material: MaterialModel): Substance => {
 		const substance = substances.get(material) ?? remembering(substanceOf(material));

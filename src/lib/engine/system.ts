@@ -1,9 +1,10 @@
 import { SPEED_OF_LIGHT } from './constants.ts';
-import type { ForceRequest, IonTreatment, MaterialModel } from './contract.ts';
+import type { BodyOf, ForceRequest, IonTreatment, MaterialModel } from './contract.ts';
 import { susceptibility } from './permittivity/evaluator.ts';
 import { NO_STATIC_LIMIT, type Susceptibility } from './permittivity/susceptibility.ts';
 import { permeability, type Permeability } from './permeability.ts';
 import { zeroFrequencyMaterial, type ZeroFrequencyMaterial } from './reflection/zero-frequency.ts';
+import { dressedAtZero, isDressed, normalOf, sheetOf, type Dress } from './dress.ts';
 import { debyeLength } from './ions.ts';
 import { metresFromNm } from './units.ts';
 
@@ -26,6 +27,8 @@ export interface Body {
 	ideal: boolean;
 	/** Medium, layers, substrate at n = 0. */
 	zero: ZeroFrequencyMaterial[];
+	/** Null where every place is isotropic and without a sheet. */
+	dress: Dress | null;
 }
 
 /** The arrangement in SI units, every substance once. Substance 0 is the medium. */
@@ -83,11 +86,14 @@ export function systemOf(
 	};
 	const atZero = (material: MaterialModel): ZeroFrequencyMaterial => {
 		const { chi, mu } = substances[indexOf(material)];
-		return zeroFrequencyMaterial(
+		const zero = zeroFrequencyMaterial(
 			chi?.atZero ?? NO_STATIC_LIMIT,
 			mu.atZero,
 			chi === null ? 'ideal' : material.zeroFrequency
 		);
+		if (!isDressed(material)) return zero;
+		const along = material.normal ? substances[indexOf(normalOf(material))].chi : null;
+		return dressedAtZero(zero, along?.atZero ?? null, material.sheet !== undefined);
 	};
 	indexOf(medium);
 	const ions = ionTreatment(arrangement);
@@ -99,13 +105,19 @@ export function systemOf(
 		const seen = end < 0 ? materials : materials.slice(0, end + 1);
 		const places = seen.map(indexOf);
 		const thickness = layers.slice(0, seen.length - 1).map((layer) => metresFromNm(layer.thicknessNm));
-		const firstOther = places.findIndex((place) => place !== 0);
+		const firstOther = places.findIndex((place, j) => place !== 0 || isDressed(seen[j]));
 		return {
 			places,
 			thickness,
 			silent: thickness.slice(0, Math.max(0, firstOther)).reduce((sum, t) => sum + t, 0),
 			ideal: end >= 0,
-			zero: [mediumAtZero, ...seen.map(atZero)]
+			zero: [mediumAtZero, ...seen.map(atZero)],
+			dress: seen.some(isDressed)
+				? {
+						normals: seen.map((material) => indexOf(normalOf(material))),
+						sheets: seen.map(({ sheet }) => sheetOf(sheet))
+					}
+				: null
 		};
 	};
 	const left = bodyOf(arrangement.left);
@@ -114,13 +126,19 @@ export function systemOf(
 		substances,
 		left,
 		right,
-		twins: JSON.stringify([left.places, left.thickness]) === JSON.stringify([right.places, right.thickness]),
+		twins: likeness(arrangement.left, left) === likeness(arrangement.right, right),
 		magnetic: substances.some(({ mu }) => !mu.one),
 		temperature: temperatureK,
 		ions,
 		screening,
 		knots: [...new Set(substances.flatMap(({ chi }) => chi?.knots ?? []))].sort((a, b) => a - b)
 	};
+}
+
+/** What a body reflects by at n >= 1. */
+function likeness({ layers, substrate }: BodyOf<MaterialModel>, { places, thickness, dress }: Body): string {
+	const sheets = dress && [...layers.map(({ of }) => of), substrate].map(({ sheet }) => sheet ?? null);
+	return JSON.stringify([places, thickness, dress?.normals ?? null, sheets]);
 }
 
 /** A length, a salt or a treatment says that ions are what conducts in the medium. */

@@ -3,8 +3,16 @@ import { atTemperature, thermalParts } from './permittivity/temperature.ts';
 
 /** A material with every law of temperature carried out; the same object where there is none. */
 export function materialAt(material: MaterialModel, kelvin: number): MaterialModel {
-	if (thermalParts(material.permittivity).length === 0) return material;
-	return { ...material, permittivity: atTemperature(material.permittivity, kelvin) };
+	const { permittivity, normal } = material;
+	const follows = [permittivity, ...(normal ? [normal.permittivity] : [])].some(
+		(model) => thermalParts(model).length > 0
+	);
+	if (!follows) return material;
+	return {
+		...material,
+		permittivity: atTemperature(permittivity, kelvin),
+		...(normal ? { normal: { permittivity: atTemperature(normal.permittivity, kelvin) } } : {})
+	};
 }
 
 /** The request at its own temperature: all that computes sees parameters, not laws. */

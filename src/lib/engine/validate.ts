@@ -4,6 +4,7 @@ import { susceptibility } from './permittivity/evaluator.ts';
 import { conducts } from './permittivity/susceptibility.ts';
 import { Refusal, type Issue } from './refusal.ts';
 import { ionsStated } from './system.ts';
+import { checkDress, checkDressedBodies, checkDressedExtras, checkPlainMedium } from './validate-dress.ts';
 import { checkRange } from './validate-number.ts';
 import { checkIons } from './validate-ions.ts';
 import { checkExtras, checkUncertainty } from './validate-uncertainty.ts';
@@ -43,6 +44,7 @@ export function checkRequest(request: ForceRequest): void {
 		checkRange(issues, 'arrangement.temperatureK', arrangement.temperatureK, limits.temperatureK, 'K (or 0)');
 	}
 	checkMedium(issues, request);
+	checkDressedExtras(issues, request);
 	checkExtras(issues, request);
 	request.rivals?.forEach(({ of }, i) => checkMaterial(issues, `rivals[${i}].of`, of));
 	checkRoughness(issues, request, separationsOf);
@@ -94,6 +96,7 @@ function checkMaterial(issues: Issue[], path: string, material: MaterialModel): 
 	const found = permittivityIssues(material.permittivity, `${path}.permittivity`);
 	issues.push(...found);
 	checkPermeability(issues, path, material);
+	checkDress(issues, path, material);
 	if (found.length > 0) return null;
 	checkUncertainty(issues, path, material);
 	const rule = material.zeroFrequency;
@@ -166,7 +169,11 @@ function checkMedium(issues: Issue[], { arrangement }: ForceRequest): void {
 		return;
 	}
 	const conducting = checkMaterial(issues, path, medium);
-	if (conducting && !ionsStated(arrangement)) checkCountedBodies(issues, arrangement);
+	checkPlainMedium(issues, path, medium);
+	if (conducting && !ionsStated(arrangement)) {
+		checkCountedBodies(issues, arrangement);
+		checkDressedBodies(issues, arrangement);
+	}
 	if (medium.zeroFrequency === 'dcCounted') {
 		issues.push({
 			path: `${path}.zeroFrequency`,

@@ -39,6 +39,7 @@ export function warningsFor(request: ForceRequest, points: readonly ForcePoint[]
 		...imaginaryReach(places, arrangement.temperatureK),
 		...neverFalling(places),
 		...temperature(places, arrangement.temperatureK),
+		...sheets(places, arrangement.temperatureK),
 		...(arrangement.temperatureK > 0 ? zeroFrequency(request, places) : [])
 	];
 }
@@ -165,6 +166,18 @@ function temperature(places: Place[], temperatureK: number): Warning[] {
 	}
 	if (told.size === 0) return [];
 	return [{ code: 'temperature', text: `At ${temperatureK} K ${[...told].join('; ')}.` }];
+}
+
+function sheets(places: Place[], temperatureK: number): Warning[] {
+	const covered = places.filter(({ material }) => material.sheet !== undefined);
+	if (covered.length === 0 || temperatureK === 0) return [];
+	const names = covered.map(({ name }) => name).join(', ');
+	return [
+		{
+			code: 'conducting-sheet',
+			text: `At n = 0 the sheet on the ${names} reflects like bulk metal whatever its conductivity: an artefact of a local response.`
+		}
+	];
 }
 
 function zeroFrequency({ arrangement }: ForceRequest, places: Place[]): Warning[] {

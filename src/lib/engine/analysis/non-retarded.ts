@@ -4,7 +4,7 @@ import { intervalBlock, matsubaraBlock, type FrequencyBlock } from '../lifshitz/
 import { matsubaraFrequency } from '../lifshitz/matsubara.ts';
 import { trilogarithm } from '../numerics/trilogarithm.ts';
 import { staticTe, staticTm } from '../reflection/zero-frequency.ts';
-import type { Substance, System } from '../system.ts';
+import type { Body, Substance, System } from '../system.ts';
 
 /** Terms summed one by one before octaves are summed by Gauss rules; a power of two. */
 const DIRECT = 32;
@@ -47,7 +47,9 @@ export function nonRetardedLimit(system: System): NonRetardedLimit {
 		return { why: 'Layers make it depend on the separation: see the effective coefficients of the points.' };
 	if (left.ideal || right.ideal)
 		return { why: 'An ideal conductor reflects at every frequency: the sum over frequencies diverges.' };
-	const bodies: [Substance, Substance] = [substances[left.places[0]], substances[right.places[0]]];
+	if ([left, right].some(({ dress }) => dress?.sheets.some((sheet) => sheet !== null)))
+		return { why: 'A conducting sheet makes it depend on the separation: see the effective coefficients.' };
+	const bodies: [Substance, Substance] = [bodyAlone(left, substances), bodyAlone(right, substances)];
 	const term = (xi: number): { value: number; rounding: number } => termAt(substances[0], bodies, xi);
 	const sum = temperature > 0 ? matsubara(term, system) : integral(term, system);
 	if (sum === null)
@@ -60,6 +62,24 @@ export function nonRetardedLimit(system: System): NonRetardedLimit {
 		hamakerJ: {
 			value,
 			errorBound: Math.min(Number.MAX_VALUE, error / Math.abs(sum.value) + 8 * UNIT_ROUNDOFF)
+		}
+	};
+}
+
+/** A uniaxial half-space reflects like sqrt(eps_p eps_z) without retardation (methods.md section 4). */
+function bodyAlone({ places, dress }: Body, substances: readonly Substance[]): Substance {
+	const own = substances[places[0]];
+	if (dress === null || own.chi === null) return own;
+	const [plane, along] = [own.chi, substances[dress.normals[0]].chi ?? own.chi];
+	return {
+		...own,
+		chi: {
+			...plane,
+			ulps: plane.ulps + along.ulps + 4,
+			atXi: (xi) => {
+				const [p, z] = [plane.atXi(xi), along.atXi(xi)];
+				return (p + z + p * z) / (1 + Math.sqrt((1 + p) * (1 + z)));
+			}
 		}
 	};
 }

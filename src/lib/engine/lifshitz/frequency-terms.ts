@@ -1,6 +1,8 @@
 import type { LogLattice } from '../numerics/log-lattice.ts';
+import { dressedReflection, dressedStack, type DressedStack } from '../reflection/dressed-stack.ts';
 import { halfSpaceReflection, idealReflection } from '../reflection/half-space.ts';
 import { stackAtFrequency, stackReflection, OPAQUE, type StackAtFrequency } from '../reflection/stack.ts';
+import type { Dress } from '../dress.ts';
 import type { Body, System } from '../system.ts';
 import type { FrequencyBlock } from './frequency-blocks.ts';
 import { frequencyLattices } from './lattices.ts';
@@ -29,6 +31,9 @@ const ROUNDING = 16;
 /** Roundoff of y0 itself: frequency, travel time, their product and the root. */
 const PHASE_ROUNDING = 8;
 
+/** Of one interface with a sheet, or between uniaxial media. */
+const DRESSED_ULPS = 12;
+
 interface BodyNoise {
 	/** Relative error of the coefficient of a half-space. */
 	relative: number;
@@ -54,6 +59,7 @@ export function frequencyTerms(system: System, level: Level, quantities: Quantit
 	const [tm1, te1, tm2, te2] = [0, 1, 2, 3].map(() => new Float64Array(size));
 	const stacks = [left, right].map(({ thickness }) => stackAtFrequency(thickness.length));
 	const layered = [left, right].filter(({ thickness }) => thickness.length > 0);
+	const dressed: DressedStack[] = [];
 	const sums = new Float64Array(6);
 	const noise: BodyNoise = { relative: 0, absolute: 0 };
 	const noise2: BodyNoise = { relative: 0, absolute: 0 };
@@ -96,14 +102,51 @@ export function frequencyTerms(system: System, level: Level, quantities: Quantit
 		}
 		let radius = Math.min(1, y0, (lowest * X) / (2 * y0));
 		for (let b = 0; b < layered.length; b++) {
-			const { thickness, places } = layered[b];
+			const { thickness, places, dress } = layered[b];
 			for (let j = 0; j < thickness.length; j++) {
 				const index = Math.sqrt((1 + block.chi[places[j]][i]) * block.mu[places[j]][i] * X);
 				const ratio = separation / thickness[j];
 				if (index < OPAQUE * ratio) radius = Math.min(radius, (ratio * index) / y0, ratio);
+				if (dress === null || dress.normals[j] === places[j]) continue;
+				// TM fields of a uniaxial layer fall like sqrt(eps_p/eps_z) sqrt(K + eps_z X).
+				const along = (1 + block.chi[dress.normals[j]][i]) * block.mu[places[j]][i] * X;
+				const stretched = (ratio * Math.sqrt(along)) / index;
+				if (index < OPAQUE * ratio) radius = Math.min(radius, (stretched * Math.sqrt(along)) / y0, stretched);
 			}
 		}
 		return radius;
+	};
+
+	const reflectDressed = (
+		body: Body,
+		{ normals, sheets }: Dress,
+		block: FrequencyBlock,
+		i: number,
+		separation: number,
+		lattice: LogLattice,
+		y0: number,
+		X: number,
+		rTM: Float64Array,
+		rTE: Float64Array,
+		left: BodyNoise
+	): void => {
+		const stack: DressedStack = (dressed[body.thickness.length] ??= dressedStack(body.thickness.length));
+		stack.ideal = body.ideal;
+		stack.chi[0] = block.chi[0][i];
+		stack.normal[0] = stack.chi[0];
+		stack.mu[0] = block.mu[0][i];
+		let ulps = 0;
+		for (let j = 0; j < body.places.length; j++) {
+			const place = body.places[j];
+			stack.chi[j + 1] = block.chi[place][i];
+			stack.normal[j + 1] = block.chi[normals[j]][i];
+			stack.mu[j + 1] = block.mu[place][i];
+			stack.sheet[j + 1] = sheets[j]?.(block.xi[i]) ?? 0;
+			if (j < body.thickness.length) stack.thickness[j + 1] = body.thickness[j] / separation;
+			ulps += DRESSED_ULPS + (substances[place].chi?.ulps ?? 0) + (substances[normals[j]].chi?.ulps ?? 0);
+		}
+		left.absolute = UNIT_ROUNDOFF * (ulps + mediumUlps * body.places.length);
+		dressedReflection(lattice, y0, X, stack, rTM, rTE);
 	};
 
 	const reflect = (
@@ -122,6 +165,8 @@ export function frequencyTerms(system: System, level: Level, quantities: Quantit
 		const chiM = block.chi[0][i];
 		left.relative = 0;
 		left.absolute = 0;
+		if (body.dress !== null)
+			return reflectDressed(body, body.dress, block, i, separation, lattice, y0, X, rTM, rTE, left);
 		if (body.places.length === 1) {
 			if (body.ideal) return idealReflection(lattice.count, rTM, rTE);
 			const place = body.places[0];

@@ -146,7 +146,7 @@ function closedRounding(
 ): number {
 	const of = (body: ZeroFrequencyMaterial): number => {
 		const [a, b] = polarisation === 'te' ? [medium.mu, body.mu] : [medium.amplitude, body.amplitude];
-		const same = polarisation === 'te' || (body.order === medium.order && !body.ideal);
+		const same = polarisation === 'te' || (body.order === medium.order && !body.ideal && !body.sheet);
 		return same && a !== b ? (8 * (Math.abs(a) + Math.abs(b))) / Math.abs(b - a) : 0;
 	};
 	return of(left) + of(right);

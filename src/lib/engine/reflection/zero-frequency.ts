@@ -16,6 +16,10 @@ export interface ZeroFrequencyMaterial {
 	square: number;
 	mu: number;
 	ideal: boolean;
+	/** TM fields of a uniaxial dielectric fall this much faster than like k; 1 where it is left out. */
+	stretch?: number;
+	/** A conducting sheet lies in front. */
+	sheet?: boolean;
 }
 
 /**
@@ -43,7 +47,7 @@ export function zeroFrequencyMaterial(
 
 /** r_TM at n = 0 between two materials in which both fields decay alike (no carriers without damping on both sides). */
 export function staticTm(a: ZeroFrequencyMaterial, b: ZeroFrequencyMaterial): number {
-	if (b.ideal || b.order > a.order) return 1;
+	if (b.ideal || b.sheet || b.order > a.order) return 1;
 	if (b.order < a.order) return -1;
 	const offset = a.order === 0 ? 2 : 0;
 	return (b.amplitude - a.amplitude) / (b.amplitude + a.amplitude + offset);
@@ -82,7 +86,7 @@ function setTm(
 	K: number,
 	X: number
 ): void {
-	if (right.ideal || right.order > left.order) return setTotal(b, 1);
+	if (right.ideal || right.sheet || right.order > left.order) return setTotal(b, 1);
 	if (right.order < left.order) return setTotal(b, -1);
 	const d = right.amplitude - left.amplitude;
 	if (left.order < 2) {
@@ -115,7 +119,7 @@ function setTe(
 
 /** First TM interface where the medium holds mobile ions: (eps k - eps_m s)/(eps k + eps_m s). */
 function setScreened(medium: ZeroFrequencyMaterial, wall: ZeroFrequencyMaterial, k: number, s: number): void {
-	if (wall.ideal || wall.order > 0) return setTotal(1, 1);
+	if (wall.ideal || wall.sheet || wall.order > 0) return setTotal(1, 1);
 	const onward = (1 + wall.amplitude) * k;
 	const back = (1 + medium.amplitude) * s;
 	setQuotients(1, onward - back, onward, back);
@@ -148,7 +152,8 @@ export function zeroFrequencyReflection(
 		kappas[0] = y0 + s;
 		for (let b = 1; b <= last; b++) {
 			kappas[b] = Math.sqrt(K + materials[b].square * materials[b].mu * X);
-			if (b < last) fading(kappas[b] * thickness[b], kept, lost, b);
+			const stretch = polarisation === 'tm' ? (materials[b].stretch ?? 1) : 1;
+			if (b < last) fading(kappas[b] * stretch * thickness[b], kept, lost, b);
 			if (polarisation === 'te') setTe(b, materials[b - 1], materials[b], K, X);
 			else setTm(b, materials[b - 1], materials[b], K, X);
 		}
