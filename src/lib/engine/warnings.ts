@@ -157,7 +157,8 @@ function neverFalling(places: Place[]): Warning[] {
 function temperature(places: Place[], temperatureK: number): Warning[] {
 	const told = new Set<string>();
 	for (const { name, material } of places) {
-		for (const model of thermalParts(material.permittivity)) {
+		const models = [material.permittivity, ...(material.normal ? [material.normal.permittivity] : [])];
+		for (const model of models.flatMap(thermalParts)) {
 			if (outsideRange(model, temperatureK))
 				told.add(
 					`the ${name} is meant for ${model.rangeK.from} to ${model.rangeK.to} K and held at the nearer end`

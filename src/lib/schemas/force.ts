@@ -1,5 +1,5 @@
 import { z } from 'zod';
-import type { ForceRequestOf } from '../engine/contract.ts';
+import type { ForceRequestOf, PermittivityModel, SheetModel } from '../engine/contract.ts';
 import { permeabilityModel, permittivityModel } from './permittivity.ts';
 
 /** The contract's request to the engine, for callers outside: a material is a pinned version or a model in place. */
@@ -43,16 +43,77 @@ export const uncertainty = z
 	])
 	.meta({ id: 'Uncertainty', description: 'standard uncertainty of a permittivity' });
 
-const pinned = z.strictObject({
-	version: versionRef,
+/** Two permittivities in one place: the phases of a mixture and the axis of a crystal may be pinned versions too. */
+const phaseDescribed = z
+	.union([z.strictObject({ version: versionRef }), permittivityModel])
+	.meta({ id: 'Phase', description: 'of a mixture: a pinned version or a model' });
+
+export type Phase = { version: string } | PermittivityModel;
+
+const phase: z.ZodType<Phase> = z
+	.unknown()
+	.transform((value, context): Phase => told(value, phaseDescribed.options, context))
+	.meta({ id: 'Phase' });
+
+const MIXTURES = ['maxwellGarnett', 'bruggeman'] as const;
+
+const mixtureOf = <P extends z.ZodType>(of: P) =>
+	z.strictObject({ kind: z.enum(MIXTURES), host: of, inclusion: of, fraction: z.number().min(0).max(1) });
+
+const mixtureOfVersions = mixtureOf(phase);
+
+/** A model, or a mixture whose phases name versions. */
+export type PermittivityChoice = PermittivityModel | z.infer<typeof mixtureOfVersions>;
+
+const permittivityChoice: z.ZodType<PermittivityChoice> = z
+	.unknown()
+	.transform((value, context): PermittivityChoice => {
+		const mixed =
+			typeof value === 'object' &&
+			value !== null &&
+			'kind' in value &&
+			MIXTURES.some((kind) => kind === value.kind);
+		return mixed
+			? passed(mixtureOfVersions.safeParse(value), context)
+			: passed(permittivityModel.safeParse(value), context);
+	})
+	.meta({ id: 'PermittivityModel' });
+
+export const sheetModel: z.ZodType<SheetModel> = z
+	.discriminatedUnion('kind', [
+		z.strictObject({ kind: z.literal('constant'), siemens: z.number().positive() }),
+		z.strictObject({
+			kind: z.literal('drude'),
+			siemens: z.number().positive(),
+			dampingEv: z.number().positive()
+		})
+	])
+	.meta({ id: 'Sheet', description: 'a layer of no thickness that conducts, on the face towards the gap' });
+
+const normalOptions = [
+	z.strictObject({ version: versionRef }),
+	z.strictObject({ permittivity: permittivityModel })
+] as const;
+
+export type NormalChoice = { version: string } | { permittivity: PermittivityModel };
+
+const normal: z.ZodType<NormalChoice> = z
+	.unknown()
+	.transform((value, context): NormalChoice => told(value, normalOptions, context))
+	.meta({ id: 'Normal' });
+
+const withDress = <N extends z.ZodType>(along: N) => ({
+	normal: along.optional(),
+	sheet: sheetModel.optional(),
 	zeroFrequency: zeroFrequencyRule.optional(),
 	uncertainty: uncertainty.optional()
 });
+
+const pinned = z.strictObject({ version: versionRef, ...withDress(normal) });
 const inPlace = z.strictObject({
-	permittivity: permittivityModel,
+	permittivity: permittivityChoice,
 	permeability: permeabilityModel.optional(),
-	zeroFrequency: zeroFrequencyRule.optional(),
-	uncertainty: uncertainty.optional()
+	...withDress(normal)
 });
 
 export type PinnedMaterial = z.infer<typeof pinned>;
@@ -62,25 +123,46 @@ export type MaterialChoice = PinnedMaterial | InPlaceMaterial;
 const STRAY_FIELD = 'is not a field here; check the spelling or leave it out';
 
 /** Told apart by the field `version`, so that a slip inside a model is reported where it is and not as "no alternative fits". */
+function told<V, M>(
+	value: unknown,
+	[byVersion, byModel]: readonly [z.ZodType<V>, z.ZodType<M>],
+	context: z.RefinementCtx
+): V | M {
+	const named = typeof value === 'object' && value !== null && 'version' in value;
+	return named ? passed(byVersion.safeParse(value), context) : passed(byModel.safeParse(value), context);
+}
+
+function passed<T>(parsed: z.ZodSafeParseResult<T>, context: z.RefinementCtx): T {
+	if (parsed.success) return parsed.data;
+	for (const issue of parsed.error.issues) {
+		if (issue.code !== 'unrecognized_keys')
+			context.addIssue({ code: 'custom', path: issue.path, message: issue.message });
+		else
+			for (const key of issue.keys)
+				context.addIssue({ code: 'custom', path: [...issue.path, key], message: STRAY_FIELD });
+	}
+	return z.NEVER;
+}
+
 export const materialChoice: z.ZodType<MaterialChoice> = z
 	.unknown()
-	.transform((value, context): MaterialChoice => {
-		const named = typeof value === 'object' && value !== null && 'version' in value;
-		const parsed = (named ? pinned : inPlace).safeParse(value);
-		if (parsed.success) return parsed.data;
-		for (const issue of parsed.error.issues) {
-			if (issue.code !== 'unrecognized_keys')
-				context.addIssue({ code: 'custom', path: issue.path, message: issue.message });
-			else
-				for (const key of issue.keys)
-					context.addIssue({ code: 'custom', path: [...issue.path, key], message: STRAY_FIELD });
-		}
-		return z.NEVER;
-	})
+	.transform((value, context): MaterialChoice => told(value, [pinned, inPlace], context))
 	.meta({ id: 'MaterialChoice' });
 
 /** The same for the API's description, where a transform cannot be drawn. */
-export const materialChoiceDescribed = z.union([pinned, inPlace]).meta({ id: 'MaterialChoice' });
+const dressDescribed = withDress(
+	z.union(normalOptions).meta({ description: 'along the normal of a uniaxial body' })
+);
+export const materialChoiceDescribed = z
+	.union([
+		z.strictObject({ version: versionRef, ...dressDescribed }),
+		z.strictObject({
+			permittivity: z.union([permittivityModel, mixtureOf(phaseDescribed)]),
+			permeability: permeabilityModel.optional(),
+			...dressDescribed
+		})
+	])
+	.meta({ id: 'MaterialChoice' });
 
 const lengthNm = z.number().positive();
 

@@ -35,6 +35,88 @@ describe('pinnedVersions', () => {
 	});
 });
 
+describe('versions inside a material', () => {
+	const dressed = request({
+		left: {
+			substrate: {
+				permittivity: {
+					kind: 'bruggeman',
+					host: { version: 'silica-constant@1.0' },
+					inclusion: { kind: 'vacuum' },
+					fraction: 0.2
+				},
+				sheet: { kind: 'constant', siemens: 6e-5 }
+			}
+		},
+		right: { substrate: { version: 'gold-drude@1.0', normal: { version: 'silica-constant@1.0' } } }
+	});
+
+	it('are found in mixtures and along an axis', () => {
+		expect(pinnedVersions(dressed)).toEqual(['silica-constant@1.0', 'gold-drude@1.0']);
+	});
+
+	it('are replaced by their models there too', () => {
+		const { left, right } = resolveRequest(dressed, modelOf).arrangement;
+		expect(left.substrate).toEqual({
+			permittivity: { kind: 'bruggeman', host: silica, inclusion: { kind: 'vacuum' }, fraction: 0.2 },
+			sheet: { kind: 'constant', siemens: 6e-5 }
+		});
+		expect(right.substrate).toEqual({ permittivity: gold, normal: { permittivity: silica } });
+	});
+
+	it('are named where they do not exist', () => {
+		const unknown = request({
+			right: {
+				substrate: {
+					version: 'gold-drude@1.0',
+					normal: { version: 'lost@1.0' }
+				}
+			},
+			medium: {
+				permittivity: {
+					kind: 'maxwellGarnett',
+					host: { version: 'silica-constant@1.0' },
+					inclusion: { version: 'gone@2.0' },
+					fraction: 0.1
+				}
+			}
+		});
+		try {
+			resolveRequest(unknown, modelOf);
+			expect.unreachable();
+		} catch (error) {
+			expect(error).toMatchObject({
+				issues: [
+					{ path: 'arrangement.medium.permittivity.inclusion.version' },
+					{ path: 'arrangement.right.substrate.normal.version' }
+				]
+			});
+		}
+	});
+
+	it('are told from slips of the pen', () => {
+		const parsed = forceRequest.safeParse({
+			...request(),
+			arrangement: {
+				...request().arrangement,
+				medium: {
+					permittivity: {
+						kind: 'bruggeman',
+						host: { version: 'no name' },
+						inclusion: { kind: 'glas' },
+						fraction: 2
+					}
+				}
+			}
+		});
+		expect(parsed.error?.issues.map(({ path }) => path.join('.'))).toEqual([
+			'arrangement.medium.permittivity.host.version',
+			'arrangement.medium.permittivity.inclusion.kind',
+			'arrangement.medium.permittivity.fraction'
+		]);
+	});
+});
+
 describe('resolveRequest', () => {
 	it('puts models in the place of versions and keeps what was said beside them', () => {
 		const { arrangement } = resolveRequest(request(), modelOf);

@@ -6,7 +6,13 @@ import type {
 	PermittivityModel,
 	Uncertainty
 } from '../../engine/contract.ts';
-import type { ForceRequestComplete, MaterialChoice } from '../../schemas/force.ts';
+import type {
+	ForceRequestComplete,
+	MaterialChoice,
+	NormalChoice,
+	PermittivityChoice,
+	Phase
+} from '../../schemas/force.ts';
 import { InvalidInput, type Issue } from '../errors.ts';
 import { canonicalJson, sha256 } from '../library/canonical.ts';
 
@@ -34,10 +40,28 @@ function everySlot({ arrangement, rivals = [] }: ForceRequestComplete): Slot[] {
 
 /** The versions that a request names, each once, in the order of their first appearance. */
 export function pinnedVersions(request: ForceRequestComplete): string[] {
-	return [
-		...new Set(everySlot(request).flatMap(({ choice }) => ('version' in choice ? [choice.version] : [])))
-	];
+	return [...new Set(everySlot(request).flatMap((slot) => namedIn(slot).map(({ version }) => version)))];
 }
+
+/** The versions that a slot names, its own, that along its axis and those of a mixture, each with its path. */
+function namedIn({ path, choice }: Slot): { path: string; version: string }[] {
+	const named: { path: string; version: string }[] = [];
+	const add = (at: string, of: object): void => {
+		if ('version' in of && typeof of.version === 'string') named.push({ path: at, version: of.version });
+	};
+	add(path, choice);
+	if (choice.normal) add(`${path}.normal`, choice.normal);
+	if ('permittivity' in choice && isMixture(choice.permittivity)) {
+		add(`${path}.permittivity.host`, choice.permittivity.host);
+		add(`${path}.permittivity.inclusion`, choice.permittivity.inclusion);
+	}
+	return named;
+}
+
+const isMixture = (
+	model: PermittivityChoice
+): model is Extract<PermittivityChoice, { kind: 'maxwellGarnett' | 'bruggeman' }> =>
+	model.kind === 'maxwellGarnett' || model.kind === 'bruggeman';
 
 /**
  * @param modelOf the model of a pinned version; undefined where there is none
@@ -49,11 +73,13 @@ export function resolveRequest(
 	modelOf: (version: string) => PermittivityModel | undefined,
 	statedBy: (version: string) => Uncertainty | null | undefined = () => null
 ): ForceRequest {
-	const missing: Issue[] = everySlot(request).flatMap(({ path, choice }) =>
-		'version' in choice && !modelOf(choice.version)
-			? [{ path: `${path}.version`, message: `there is no published version ${choice.version}` }]
-			: []
-	);
+	const missing: Issue[] = everySlot(request)
+		.flatMap(namedIn)
+		.filter(({ version }) => !modelOf(version))
+		.map(({ path, version }) => ({
+			path: `${path}.version`,
+			message: `there is no published version ${version}`
+		}));
 	if (missing.length > 0) {
 		throw new InvalidInput(
 			'The request names a version that the library does not have.',
@@ -61,13 +87,27 @@ export function resolveRequest(
 			'unknown-version'
 		);
 	}
+	const phase = (of: Phase): PermittivityModel =>
+		'version' in of ? (modelOf(of.version) as PermittivityModel) : of;
+	const along = (normal: NormalChoice | undefined): Pick<MaterialModel, 'normal'> => {
+		if (normal === undefined) return {};
+		return {
+			normal: { permittivity: 'version' in normal ? phase({ version: normal.version }) : normal.permittivity }
+		};
+	};
 	const material = (choice: MaterialChoice): MaterialModel => {
-		if (!('version' in choice)) return choice;
+		if (!('version' in choice)) {
+			const { permittivity, normal, ...given } = choice;
+			const mixed = isMixture(permittivity)
+				? { ...permittivity, host: phase(permittivity.host), inclusion: phase(permittivity.inclusion) }
+				: permittivity;
+			return { permittivity: mixed, ...along(normal), ...given };
+		}
 		const permittivity = modelOf(choice.version) as PermittivityModel;
-		const { version: _version, ...said } = choice;
+		const { version: _version, normal, ...said } = choice;
 		// Nothing is looked up that the answer would not show: it would only make equal questions look different.
 		const stated = request.include.includes('uncertainty') ? statedBy(choice.version) : null;
-		return { permittivity, ...(stated ? { uncertainty: stated } : {}), ...said };
+		return { permittivity, ...along(normal), ...(stated ? { uncertainty: stated } : {}), ...said };
 	};
 	const body = ({ layers, substrate }: BodyOf<MaterialChoice>): BodyOf<MaterialModel> => ({
 		layers: layers.map(({ of, thicknessNm }) => ({ of: material(of), thicknessNm })),
