@@ -17,7 +17,7 @@ export { closestSeparationNm } from './shapes/roughness.ts';
 export { matsubaraFrequency } from './lifshitz/matsubara.ts';
 export { permittivityOnImaginaryAxis, permittivityOnRealAxis } from './permittivity/evaluator.ts';
 export { permittivityIssues } from './validate-permittivity.ts';
-export { epsilonShares, type EpsilonShares, type TableModel } from './permittivity/table.ts';
+export { epsilonShares, epsilonSharesOf, type EpsilonShares, type TableModel } from './permittivity/table.ts';
 export {
 	evFromRadPerS,
 	radPerSFromEv,

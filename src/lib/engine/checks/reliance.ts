@@ -1,5 +1,5 @@
 import { matsubaraFrequency } from '../lifshitz/matsubara.ts';
-import { epsilonShares } from '../permittivity/table.ts';
+import { epsilonSharesOf } from '../permittivity/table.ts';
 import { asText, percent, type Check } from './check.ts';
 
 /** Share of eps - 1 from outside the data above which a submitter must say why that is right. */
@@ -15,8 +15,9 @@ export const reliance: Check = ({ model }) => {
 	if (model.kind !== 'table') return null;
 	let worst = { n: 1, outside: -1, below: 0, above: 0 };
 	let sum = 0;
+	const sharesAt = epsilonSharesOf(model);
 	for (let n = 1; n <= TERMS; n++) {
-		const { below, above } = epsilonShares(model, matsubaraFrequency(n, TEMPERATURE));
+		const { below, above } = sharesAt(matsubaraFrequency(n, TEMPERATURE));
 		sum += below + above;
 		if (below + above > worst.outside) worst = { n, outside: below + above, below, above };
 	}

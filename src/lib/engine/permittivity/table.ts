@@ -76,14 +76,19 @@ export function tableShares(model: TableModel): TableShares {
 	};
 }
 
-/** How much of eps(i xi) - 1 comes from below, inside and above the table. */
-export function epsilonShares(model: TableModel, xi: number): EpsilonShares {
+/** How much of eps(i xi) - 1 comes from below, inside and above the table; prepared once for all xi. */
+export function epsilonSharesOf(model: TableModel): (xi: number) => EpsilonShares {
 	const { low, inside, high } = partsOf(model);
-	const shares = { below: low.atXi(xi), inside: inside(xi), above: high.atXi(xi) };
-	const total = shares.below + shares.inside + shares.above;
-	if (total === 0) return shares;
-	return { below: shares.below / total, inside: shares.inside / total, above: shares.above / total };
+	return (xi) => {
+		const shares = { below: low.atXi(xi), inside: inside(xi), above: high.atXi(xi) };
+		const total = shares.below + shares.inside + shares.above;
+		if (total === 0) return shares;
+		return { below: shares.below / total, inside: shares.inside / total, above: shares.above / total };
+	};
 }
+
+/** The same at one xi. */
+export const epsilonShares = (model: TableModel, xi: number): EpsilonShares => epsilonSharesOf(model)(xi);
 
 /** Power laws of the ends, cut into octaves, as segments of the real axis. */
 function endSegments(model: TableModel, { first, last }: Parts): Segment[] {
@@ -135,12 +140,14 @@ function carriersReal(model: TableModel, w1: number, omega: number): number {
 
 function realAxis(model: TableModel, parts: Parts): (omega: number) => ComplexValue {
 	const { segments, first, last, low, high } = parts;
-	const all = [...segments, ...endSegments(model, parts)];
+	// Few who prepare a table ask for the real axis: its panels are made when the first one does.
+	let onReal: ((omega: number) => number) | undefined;
 	return (omega) => {
 		const inside = segments.find(({ from, to }) => omega >= from && omega <= to);
 		let im = inside ? segmentAt(inside, omega) : 0;
 		if (omega < first) im = low.epsIm(omega);
 		if (omega > last) im = high.epsIm(omega);
-		return { re: principalValue(all, omega) + carriersReal(model, first, omega), im };
+		onReal ??= principalValue([...segments, ...endSegments(model, parts)]);
+		return { re: onReal(omega) + carriersReal(model, first, omega), im };
 	};
 }

@@ -1,6 +1,6 @@
 import type { PermittivityModel } from '../../engine/contract.ts';
 import { permittivityOnImaginaryAxis, permittivityOnRealAxis } from '../../engine/permittivity/evaluator.ts';
-import { epsilonShares } from '../../engine/permittivity/table.ts';
+import { epsilonSharesOf } from '../../engine/permittivity/table.ts';
 import { radPerSFromEv } from '../../engine/units.ts';
 import type { Spectrum } from '../../schemas/version.ts';
 import { database, type Executor } from '../db/client.ts';
@@ -60,7 +60,7 @@ function thinned(model: PermittivityModel): PermittivityModel {
 export function onImaginaryAxis(model: PermittivityModel): Spectrum['imaginary'] {
 	if (model.kind === 'idealConductor') return { xiRadPerS: [], epsilon: [], shares: null };
 	const xiRadPerS = logGrid(XI);
-	const shares = model.kind === 'table' ? xiRadPerS.map((xi) => epsilonShares(model, xi)) : null;
+	const shares = model.kind === 'table' ? xiRadPerS.map(epsilonSharesOf(model)) : null;
 	return {
 		xiRadPerS,
 		epsilon: xiRadPerS.map(permittivityOnImaginaryAxis(model)),
