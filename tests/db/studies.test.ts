@@ -1,5 +1,6 @@
 import { beforeAll, describe, expect, it } from 'vitest';
 import { Conflict, Forbidden, InvalidInput, NotFound } from '../../src/lib/server/errors.ts';
+import { deleteAccount, exportData } from '../../src/lib/server/people/account.ts';
 import { list as told } from '../../src/lib/server/notifications/list.ts';
 import { impactOf } from '../../src/lib/server/studies/impact.ts';
 import * as studies from '../../src/lib/server/studies/studies.ts';
@@ -235,4 +236,26 @@ describe('the impact of a version under review', () => {
 			expect(changes[0].points.some(({ separationNm }) => separationNm === 50)).toBe(true);
 		}
 	}, 60_000);
+});
+
+describe('deleting an account', () => {
+	it('takes the private studies with every state of them, and leaves what is shared', async () => {
+		const { 'reader-2': person, reader } = people;
+		const own = await studies.create(person, fields({ name: 'Only mine' }));
+		await studies.change(person, own.id, { revision: 1, notes: 'Changed' });
+		const shared = await studies.create(person, fields({ name: 'For all', visibility: 'signed-in' }));
+		await expect(database.applicationSql`delete from study where id = ${own.id}`).rejects.toThrow();
+		await expect(
+			database.applicationSql`delete from study_change where study_id = ${own.id}`
+		).rejects.toMatchObject({ constraint_name: 'study_change_append_only' });
+		expect(((await exportData(person)).studies as { name: string }[]).map(({ name }) => name)).toEqual([
+			'Only mine',
+			'For all'
+		]);
+		await deleteAccount(person);
+		const [{ left }] = await database.sql`select (select count(*) from study where id = ${own.id})
+			+ (select count(*) from study_change where study_id = ${own.id}) as left`;
+		expect(Number(left)).toBe(0);
+		expect((await studies.get(reader, shared.id)).study.owner).toBe('Larkmoor reader 2');
+	});
 });

@@ -1,15 +1,19 @@
-import { and, asc, desc, eq } from 'drizzle-orm';
+import { and, asc, desc, eq, isNull } from 'drizzle-orm';
 import { preferences, type SignedIn } from '../../schemas/person.ts';
 import { appendAudit } from '../audit/append.ts';
 import { endAll, list as listSessions } from '../auth/sessions.ts';
 import { database, type Transaction } from '../db/client.ts';
 import { auditEntry } from '../db/schema/audit.ts';
+import { notification, upload } from '../db/schema/curation.ts';
 import { invitation } from '../db/schema/invitation.ts';
 import { accountLink, person } from '../db/schema/people.ts';
 import { signInLink } from '../db/schema/session.ts';
 import { FORGOTTEN, outbox } from '../db/schema/outbox.ts';
 import { NotFound } from '../errors.ts';
+import { list as listUploads } from '../library/uploads.ts';
 import { enqueue } from '../outbox/enqueue.ts';
+import { forgetStudies } from '../studies/forget.ts';
+import { ownStudies } from '../studies/studies.ts';
 import { exitAll } from './groups.ts';
 import { keepingAnAdministrator } from './people.ts';
 import { list as listTokens, revokeAll } from './tokens.ts';
@@ -62,6 +66,8 @@ export async function exportData(actor: SignedIn): Promise<Record<string, unknow
 		sessions: await listSessions(actor.id, null),
 		tokens: await listTokens(actor),
 		mails,
+		studies: await ownStudies(actor),
+		uploads: await listUploads(actor),
 		trail
 	};
 }
@@ -133,6 +139,9 @@ export async function deleteAccount(actor: SignedIn): Promise<void> {
 				fromState: 'active',
 				toState: 'deleted'
 			});
+			await forgetStudies(tx, actor.id);
+			await tx.delete(notification).where(eq(notification.personId, actor.id));
+			await tx.delete(upload).where(and(eq(upload.personId, actor.id), isNull(upload.versionId)));
 			await forgetAddress(tx, actor.email, actor.id);
 			await enqueue(tx, { letter: { kind: 'account-deleted' }, to: actor.email });
 		})

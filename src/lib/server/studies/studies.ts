@@ -309,3 +309,9 @@ function after(sort: StudyQuery['sort'], cursor: string | undefined): SQL | unde
 		? sql`(${study.savedAt} < ${key}::timestamptz or (${study.savedAt} = ${key}::timestamptz and ${study.id} > ${id}::uuid))`
 		: sql`(${study.name}, ${study.id}) > (${key}::text, ${id}::uuid)`;
 }
+
+/** Everything of somebody's own, the archive included, for the copy of their data. */
+export async function ownStudies(actor: SignedIn): Promise<SavedStudy[]> {
+	const rows = await select(database(), eq(study.ownerId, actor.id)).orderBy(asc(study.createdAt));
+	return rows.map(toSaved);
+}
