@@ -15,7 +15,16 @@ const version = fc.constantFrom(
 	'vacuum@1.0'
 );
 const rule = fc.constantFrom('drude', 'plasma', 'ideal', 'dcCounted', 'dcIgnored');
-const material = fc.record({ version, zeroFrequency: rule }, { requiredKeys: ['version'] });
+const plain = fc.record({ version, zeroFrequency: rule }, { requiredKeys: ['version'] });
+const material = fc.record(
+	{
+		version,
+		normal: version,
+		sheetSiemens: fc.double({ min: 1e-12, max: 1e3, noNaN: true }),
+		zeroFrequency: rule
+	},
+	{ requiredKeys: ['version'] }
+);
 const thicknessNm = fc.double({ min: 0.1, max: 1e6, noNaN: true });
 const separation = fc.double({ min: 1, max: 9000, noNaN: true });
 const body = fc.record({
@@ -47,7 +56,7 @@ const anyStudy: fc.Arbitrary<Study> = fc
 	.record(
 		{
 			left: body,
-			medium: material,
+			medium: plain,
 			right: body,
 			shape,
 			temperatureK: fc.oneof(fc.constant(0), fc.double({ min: 0.5, max: 5000, noNaN: true })),

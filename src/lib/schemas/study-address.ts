@@ -5,6 +5,7 @@ import {
 	MARK_LABEL_MAX,
 	MARKS_MAX,
 	SEPARATION_RANGE_NM,
+	SHEET_RANGE_SIEMENS,
 	TEMPERATURE_RANGE_K,
 	THICKNESS_RANGE_NM
 } from './study-limits.ts';
@@ -30,7 +31,8 @@ import { WORKED_STUDY } from './study-worked.ts';
  *   /?left=silica-a@1.0:20nm,gold-drude@1.0!plasma&medium=vacuum@1.0&right=gold-drude@1.0&T=300
  *     &choice=Drude&choice=Plasma;left:!plasma;debye:10&at=38
  *
- * A body lists its layers from the gap outwards (`version:thickness`) and ends with its substrate. Decoding is total: a part
+ * A body lists its layers from the gap outwards (`version:thickness`) and ends with its substrate; `*version` is what lies along
+ * the axis of a uniaxial place, `~siemens` a sheet on it. Decoding is total: a part
  * that cannot be read is reported in words, and what stands in its place is said.
  */
 
@@ -50,16 +52,28 @@ type Report = (part: string, message: string) => void;
 const NUMBER = /^\d+(\.\d+)?(e[+-]?\d+)?$/i;
 const UNIT_NM: Record<string, number> = { '': 1, nm: 1, um: 1000, A: 0.1 };
 
+/** `version*along-the-normal~sheet-in-siemens!rule`, all but the first where they stand. */
 function decodeMaterial(text: string): SlotMaterial | string {
-	const [version, ruleText, ...rest] = text.split('!');
+	const [named, ruleText, ...rest] = text.split('!');
 	if (rest.length > 0) return `"${text}" names more than one rule for the static term`;
-	if (!versionRef.safeParse(version).success)
-		return `"${version}" is not the name of a version (slug@major.minor, as gold-drude@1.0)`;
-	if (ruleText === undefined) return { version };
-	const parsed = zeroFrequencyRule.safeParse(ruleText);
-	return parsed.success
-		? { version, zeroFrequency: parsed.data }
-		: `"${ruleText}" is not drude, plasma, ideal, dcCounted or dcIgnored`;
+	const [versions, sheetText, ...sheets] = named.split('~');
+	const [version, normal, ...axes] = versions.split('*');
+	if (sheets.length > 0 || axes.length > 0) return `"${text}" names more than one axis or sheet`;
+	for (const one of [version, normal ?? version])
+		if (!versionRef.safeParse(one).success)
+			return `"${one}" is not the name of a version (slug@major.minor, as gold-drude@1.0)`;
+	const { min, max } = SHEET_RANGE_SIEMENS;
+	const sheetSiemens = sheetText === undefined ? undefined : decodeNumber(sheetText, min, max);
+	if (sheetText !== undefined && sheetSiemens === undefined)
+		return `"${sheetText}" is not a conductivity of a sheet between ${min} and ${max} S`;
+	const rule = ruleText === undefined ? undefined : zeroFrequencyRule.safeParse(ruleText);
+	if (rule && !rule.success) return `"${ruleText}" is not drude, plasma, ideal, dcCounted or dcIgnored`;
+	return {
+		version,
+		...(normal === undefined ? {} : { normal }),
+		...(sheetSiemens === undefined ? {} : { sheetSiemens }),
+		...(rule ? { zeroFrequency: rule.data } : {})
+	};
 }
 
 function decodeThickness(text: string): number | undefined {

@@ -38,7 +38,10 @@ export function encodeShape(shape: Shape): string {
 }
 
 const rule = (material: SlotMaterial) => (material.zeroFrequency ? `!${material.zeroFrequency}` : '');
-const encodeMaterial = (material: SlotMaterial) => material.version + rule(material);
+const axis = ({ normal }: SlotMaterial) => (normal === undefined ? '' : `*${normal}`);
+const sheet = ({ sheetSiemens }: SlotMaterial) => (sheetSiemens === undefined ? '' : `~${sheetSiemens}`);
+const encodeMaterial = (material: SlotMaterial) =>
+	material.version + axis(material) + sheet(material) + rule(material);
 
 function encodeBody(body: StudyBody): string {
 	const layers = body.layers.map(({ of, thicknessNm }) => `${encodeMaterial(of)}:${thicknessNm}nm`);

@@ -2,7 +2,7 @@ import type { Roughness } from '../engine/contract.ts';
 import { closestSeparationNm } from '../engine/shapes/roughness.ts';
 import type { ForceRequestInput, PinnedMaterial } from './force.ts';
 import { materialIn } from './study-slots.ts';
-import type { ModelChoice, Study, StudyBody } from './study.ts';
+import type { ModelChoice, SlotMaterial, Study, StudyBody } from './study.ts';
 
 /** What the engine is asked for one model choice of a study. */
 
@@ -58,10 +58,15 @@ export function choiceRequest(
 	include: ForceRequestInput['include'] = ['breakdown']
 ): ForceRequestInput {
 	const assumed = include.includes('uncertainty') ? study.dataUncertainty : undefined;
-	const material = (slot: string): PinnedMaterial => ({
-		...(materialIn(study, choice, slot) as PinnedMaterial),
-		...(assumed === undefined ? {} : { uncertainty: { kind: 'scale', relative: assumed } })
-	});
+	const material = (slot: string): PinnedMaterial => {
+		const { normal, sheetSiemens, ...plain } = materialIn(study, choice, slot) as SlotMaterial;
+		return {
+			...plain,
+			...(normal === undefined ? {} : { normal: { version: normal } }),
+			...(sheetSiemens === undefined ? {} : { sheet: { kind: 'constant', siemens: sheetSiemens } }),
+			...(assumed === undefined ? {} : { uncertainty: { kind: 'scale', relative: assumed } })
+		};
+	};
 	const body = (side: 'left' | 'right', { layers }: StudyBody) => ({
 		layers: layers.map(({ thicknessNm }, index) => ({ of: material(`${side}${index + 1}`), thicknessNm })),
 		substrate: material(side)

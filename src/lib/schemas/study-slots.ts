@@ -26,12 +26,18 @@ export function materialIn(study: Study, choice: ModelChoice, slot: string): Slo
 	if (!base || !change) return base;
 	const version = change.version ?? base.version;
 	const rule = change.zeroFrequency ?? base.zeroFrequency;
-	return rule === undefined || rule === 'written' ? { version } : { version, zeroFrequency: rule };
+	const { zeroFrequency: _rule, ...kept } = base;
+	return rule === undefined || rule === 'written'
+		? { ...kept, version }
+		: { ...kept, version, zeroFrequency: rule };
 }
 
 /** Every version a study names, in the arrangement or in a choice, each once. */
 export function versionsOf(study: Study): string[] {
-	const named = slotsOf(study).map((slot) => materialAt(study, slot)?.version);
+	const named = slotsOf(study).flatMap((slot) => {
+		const material = materialAt(study, slot);
+		return [material?.version, material?.normal];
+	});
 	const changed = study.choices.flatMap((choice) =>
 		Object.values(choice.changes).map(({ version }) => version)
 	);

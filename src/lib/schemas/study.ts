@@ -9,6 +9,7 @@ import {
 	ROUGHNESS_RANGE_NM,
 	SALT_RANGE_MOL_PER_L,
 	SEPARATION_RANGE_NM,
+	SHEET_RANGE_SIEMENS,
 	TEMPERATURE_RANGE_K,
 	THICKNESS_RANGE_NM,
 	UNCERTAINTY_RANGE,
@@ -22,6 +23,10 @@ import {
 
 export const slotMaterial = z.strictObject({
 	version: versionRef,
+	/** Along the normal of a uniaxial body; `version` is then what lies in the plane. */
+	normal: versionRef.optional(),
+	/** Of a conducting sheet on the face towards the gap. */
+	sheetSiemens: z.number().min(SHEET_RANGE_SIEMENS.min).max(SHEET_RANGE_SIEMENS.max).optional(),
 	/** Absent: the limit of the model as written. */
 	zeroFrequency: zeroFrequencyRule.optional()
 });

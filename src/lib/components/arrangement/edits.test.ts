@@ -15,6 +15,40 @@ function layered(): Study {
 
 const names = (study: Study) => study.left.layers.map(({ of }) => of.version);
 
+describe('axis and sheet', () => {
+	const dressed = () => {
+		const study = layered();
+		study.left.substrate = { version: 'calcite-ordinary@1.0', zeroFrequency: 'dcCounted' };
+		return study;
+	};
+
+	it('stand beside the rule of a place, and go without it', () => {
+		const study = dressed();
+		const axis = edits.setNormal('left', study.left.substrate, 'calcite-extraordinary@1.0')(study);
+		const both = edits.setSheet('left', axis.left.substrate, 6e-5)(axis);
+		expect(both.left.substrate).toEqual({
+			version: 'calcite-ordinary@1.0',
+			normal: 'calcite-extraordinary@1.0',
+			sheetSiemens: 6e-5,
+			zeroFrequency: 'dcCounted'
+		});
+		const ruleless = edits.setRule('left', both.left.substrate, undefined)(both);
+		expect(ruleless.left.substrate.sheetSiemens).toBe(6e-5);
+		const bare = edits.setSheet('left', ruleless.left.substrate, undefined)(ruleless);
+		expect(edits.setNormal('left', bare.left.substrate, undefined)(bare).left.substrate).toEqual({
+			version: 'calcite-ordinary@1.0'
+		});
+	});
+
+	it('go with the material that they were of', () => {
+		const study = dressed();
+		const covered = edits.setSheet('left', study.left.substrate, 6e-5)(study);
+		expect(edits.setMaterial('left', 'gold-drude@1.0')(covered).left.substrate).toEqual({
+			version: 'gold-drude@1.0'
+		});
+	});
+});
+
 describe('layers', () => {
 	it('are added at the surface, and a choice follows the layer it speaks of', () => {
 		const study = edits.addLayer('left', layer('new@1.0', 2))(layered());

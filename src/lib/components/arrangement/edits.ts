@@ -112,9 +112,20 @@ export function setVersion(slot: string, material: SlotMaterial, version: string
 
 /** How the static term of a conductor is taken; undefined for the limit of its model as written. */
 export function setRule(slot: string, material: SlotMaterial, rule: ZeroFrequencyRule | undefined): Edit {
-	const { version } = material;
-	return (study) =>
-		withMaterial(study, slot, rule === undefined ? { version } : { version, zeroFrequency: rule });
+	const { zeroFrequency: _rule, ...kept } = material;
+	return (study) => withMaterial(study, slot, rule === undefined ? kept : { ...kept, zeroFrequency: rule });
+}
+
+/** What lies along the normal of a place; undefined for an isotropic one. */
+export function setNormal(slot: string, material: SlotMaterial, normal: string | undefined): Edit {
+	const { normal: _normal, ...kept } = material;
+	return (study) => withMaterial(study, slot, normal === undefined ? kept : { ...kept, normal });
+}
+
+/** A conducting sheet on a place; undefined for none. */
+export function setSheet(slot: string, material: SlotMaterial, sheetSiemens: number | undefined): Edit {
+	const { sheetSiemens: _sheet, ...kept } = material;
+	return (study) => withMaterial(study, slot, sheetSiemens === undefined ? kept : { ...kept, sheetSiemens });
 }
 
 export function swapBodies(): Edit {

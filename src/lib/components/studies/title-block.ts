@@ -31,8 +31,9 @@ export function ingredients(
 	const used = new Map<string, Set<string>>();
 	for (const slot of slotsOf(study)) {
 		study.choices.forEach((choice, index) => {
-			const version = materialIn(study, choice, slot)?.version;
-			if (version) used.set(version, (used.get(version) ?? new Set()).add(letters[index]));
+			const material = materialIn(study, choice, slot);
+			for (const version of [material?.version, material?.normal])
+				if (version) used.set(version, (used.get(version) ?? new Set()).add(letters[index]));
 		});
 	}
 	return [...used].flatMap(([version, by]) => {
@@ -50,9 +51,15 @@ export function conductionWords(
 	const words = slotsOf(study).flatMap((slot) => {
 		const material = materialIn(study, choice, slot);
 		const known = material && facts[material.version];
-		if (!material || !known || (known.staticLimit === 'finite' && !material.zeroFrequency)) return [];
-		const rule = material.zeroFrequency;
+		if (!material || !known) return [];
+		const { sheetSiemens, zeroFrequency: rule } = material;
+		const sheet =
+			sheetSiemens === undefined
+				? []
+				: [`${known.material.name}: a sheet of ${numberLine(sheetSiemens, 3)} S towards the gap`];
+		if (known.staticLimit === 'finite' && !rule) return sheet;
 		return [
+			...sheet,
 			`${known.material.name}: ${ruleWords(rule ?? known.staticLimit)}${rule ? ', chosen' : ', as the model is written'}`
 		];
 	});

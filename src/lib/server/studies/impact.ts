@@ -70,7 +70,10 @@ async function changesIn(
 	const { study: kept } = decodeStudy(new URLSearchParams(query));
 	const changes: ForceChange[] = [];
 	for (const [index, choice] of kept.choices.entries()) {
-		const names = slotsOf(kept).map((slot) => materialIn(kept, choice, slot)?.version);
+		const names = slotsOf(kept).flatMap((slot) => {
+			const material = materialIn(kept, choice, slot);
+			return [material?.version, material?.normal];
+		});
 		if (!names.some((name) => name !== undefined && refs.includes(name))) continue;
 		const words = `${choiceLetter(index)} ${choice.name}`.trim();
 		changes.push(await changeOf(kept, choice, words, refs, candidate, signal));
