@@ -40,6 +40,7 @@ describe('linkHeader', () => {
 			'<https://larkmoor.example/datasets/gold-drude/versions/2.0>; rel="latest-version"',
 			'<https://larkmoor.example/datasets/gold-drude/versions/1.0>; rel="predecessor-version"',
 			'<https://larkmoor.example/datasets/gold-drude/versions/2.0>; rel="successor-version"',
+			'<https://spdx.org/licenses/CC-BY-4.0>; rel="license"',
 			'<https://larkmoor.example/api/v1/datasets/gold-drude/versions/1.1>; rel="alternate"; type="application/json"'
 		]);
 	});
