@@ -161,3 +161,33 @@ test('bodies swap, and the force stays', async ({ page }) => {
 	await computed(page);
 	await expect(valueOf(page, 'B').locator('.number')).toHaveText(before ?? '');
 });
+
+test('a body is made uniaxial and covered with a sheet, and both travel in the address', async ({ page }) => {
+	const noTrouble = watchTrouble(page);
+	await openStudy(page);
+	const before = await valueOf(page, 'A').textContent();
+
+	await page.getByText('Axis and sheet of the right body').click();
+	await page.getByRole('button', { name: 'Choose what lies along the normal of the right body' }).click();
+	const search = page.getByRole('combobox', { name: 'Along the normal of the right body' });
+	await search.fill('sapphire extraordinary');
+	await page
+		.getByRole('listbox')
+		.getByRole('option', { name: /Sapphire/ })
+		.first()
+		.click();
+	await expect(page).toHaveURL(/right=silica-[^&]*\*sapphire-/);
+	const sheet = page.getByLabel('Sheet towards the gap').nth(1);
+	await sheet.fill('6.09e-5');
+	await sheet.press('Enter');
+	await expect(page).toHaveURL(/~0\.0000609|~6\.09e-5/);
+	await computed(page);
+	await expect(valueOf(page, 'A')).not.toHaveText(before ?? '');
+
+	await page.reload();
+	await computed(page);
+	await expect(page.getByLabel('Sheet towards the gap').nth(1)).toHaveValue(/6\.09e-5|0\.0000609/);
+	await page.getByRole('button', { name: 'Remove the axis of the right body' }).click();
+	await expect(page).not.toHaveURL(/sapphire/);
+	noTrouble();
+});

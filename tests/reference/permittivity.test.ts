@@ -8,6 +8,7 @@ import {
 	radPerSFromWavelength,
 	type PermittivityModel
 } from '../../src/lib/engine/index.ts';
+import { susceptibility } from '../../src/lib/engine/permittivity/evaluator.ts';
 
 /**
  * Figures worked out for this project with 25 to 60 digits, independent of the engine; the unit figures follow from the
@@ -50,6 +51,11 @@ const lorentz: PermittivityModel = {
 	kind: 'lorentz',
 	terms: [{ strengthEv2: 16, energyEv: 3, dampingEv: 0.5 }]
 };
+
+it('a Drude metal of 9.0 eV / 35 meV has the dc conductivity eps_0 wp^2/gamma', () => {
+	const { slope } = susceptibility({ kind: 'drude', plasmaEnergyEv: 9, dampingEv: 0.035 }).atZero;
+	expect(off(8.8541878188e-12 * slope, 31131492.164886)).toBeLessThan(1e-12);
+});
 
 describe('eps(i xi), energies in eV', () => {
 	const xi1 = 0.1624329052193415;
