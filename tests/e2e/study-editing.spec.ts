@@ -167,7 +167,7 @@ test('a body is made uniaxial and covered with a sheet, and both travel in the a
 	await openStudy(page);
 	const before = await valueOf(page, 'A').textContent();
 
-	await page.getByText('Axis and sheet of the right body').click();
+	await page.locator('summary', { hasText: 'of the right body' }).click();
 	await page.getByRole('button', { name: 'Choose what lies along the normal of the right body' }).click();
 	const search = page.getByRole('combobox', { name: 'Along the normal of the right body' });
 	await search.fill('sapphire extraordinary');

@@ -74,6 +74,23 @@ describe('models made of models in words', () => {
 	});
 });
 
+describe('a polynomial of the temperature', () => {
+	it('is written with its signs and powers', () => {
+		const [, laws] = modelParts({
+			kind: 'temperatureDependent',
+			of: glass,
+			rangeK: { from: 273, to: 372 },
+			laws: [
+				{
+					parameter: 'value',
+					law: { kind: 'polynomial', coefficients: [249, -0.79, 0.0007], scale: 'kelvin' }
+				}
+			]
+		});
+		expect(laws.rows[0][1]).toBe('249 − 0.79 T/K + 0.0007 (T/K)²');
+	});
+});
+
 describe('the static term of mixtures', () => {
 	const limit = (kind: 'maxwellGarnett' | 'bruggeman', host: PermittivityModel, fraction: number) =>
 		staticLimit({ kind, host, inclusion: host === gold ? glass : gold, fraction });

@@ -76,11 +76,22 @@ function lawsPart({ rangeK, laws }: Extract<PermittivityModel, { kind: 'temperat
 	});
 }
 
+const POWERS = '⁰¹²³⁴⁵⁶⁷⁸⁹';
+
+/** One term of a polynomial with its sign: "245.02", "− 0.79069 T/K", "+ 0.00073 (T/K)²". */
+function termWords(coefficient: number, variable: string, power: number): string {
+	if (power === 0) return String(coefficient).replace('-', '−');
+	const sign = coefficient < 0 ? '−' : '+';
+	const raised =
+		power === 1 ? variable : `(${variable})${[...String(power)].map((d) => POWERS[Number(d)]).join('')}`;
+	return `${sign} ${Math.abs(coefficient)} ${raised}`;
+}
+
 function lawWords(law: TemperatureLaw): string {
 	switch (law.kind) {
 		case 'polynomial': {
 			const t = law.scale === 'celsius' ? 't/°C' : 'T/K';
-			return law.coefficients.map((c, j) => (j === 0 ? `${c}` : `${c} (${t})^${j}`)).join(' + ');
+			return law.coefficients.map((c, power) => termWords(c, t, power)).join(' ');
 		}
 		case 'arrhenius':
 			return `${law.value} exp[${law.activationK} K (1/T − 1/${law.referenceK} K)]`;

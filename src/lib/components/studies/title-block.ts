@@ -56,7 +56,7 @@ export function conductionWords(
 		const sheet =
 			sheetSiemens === undefined
 				? []
-				: [`${known.material.name}: a sheet of ${numberLine(sheetSiemens, 3)} S towards the gap`];
+				: [`${known.material.name}: like a metal, by its sheet of ${Number(sheetSiemens.toPrecision(3))} S`];
 		if (known.staticLimit === 'finite' && !rule) return sheet;
 		return [
 			...sheet,
