@@ -9,7 +9,7 @@ import { slowForces, type SlowForces } from '../support/slow-lifshitz.ts';
  * of its own error. HAIRSBREADTH_BOUND_CASES draws more requests, HAIRSBREADTH_BOUND_SEED starts elsewhere (one case
  * is replayed by its seed and a count of 1).
  */
-const CASES = Number(process.env.HAIRSBREADTH_BOUND_CASES ?? 150);
+const CASES = Number(process.env.HAIRSBREADTH_BOUND_CASES ?? 1000);
 const FIRST_SEED = Number(process.env.HAIRSBREADTH_BOUND_SEED ?? 1);
 
 /** What is said of the draw as a whole needs a draw; a replayed seed is only held to its own bounds. */

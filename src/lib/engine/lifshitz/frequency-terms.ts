@@ -23,7 +23,8 @@ export interface FrequencyTerms {
 
 /** Share of the nearest singularity that the doubly exponential foot of the lattice may fill. */
 const FOOT = 0.5;
-const SMALLEST_SCALE = 60;
+/** Of discs smaller than 2^-60 nothing is asked. */
+export const SMALLEST_SCALE = 60;
 
 /** Roundoff of one frequency term beside that of permittivities: sums, roots, exponentials of y. */
 const ROUNDING = 16;
