@@ -110,8 +110,8 @@ export function blockSum(system: System, level: Level, quantities: Quantities): 
 		const { exact, xi, weight } = block;
 		const { parts, lattice, rounding } = tally;
 		const [first, second, third] = block.projections;
-		last.fill(0);
-		projected.fill(0);
+		for (let q = 0; q < 3; q++) last[q] = 0;
+		if (!exact) projected.fill(0);
 		// Terms that grow inside a block have passed a zero, or will not be steep.
 		let rising = false;
 		for (let i = 0; i < xi.length; i++) {
@@ -167,7 +167,7 @@ export function blockSum(system: System, level: Level, quantities: Quantities): 
 	const look = (block: FrequencyBlock, separation: number, out: Float64Array): void => {
 		clearTally(aside);
 		add(block, separation, aside, true, COARSEST);
-		out.set(last);
+		for (let q = 0; q < 3; q++) out[q] = last[q];
 	};
 	const values = (block: FrequencyBlock, separation: number, out: Float64Array): void => {
 		clearTally(aside);

@@ -6,7 +6,14 @@ import type { Dress } from '../dress.ts';
 import type { Body, System } from '../system.ts';
 import type { FrequencyBlock } from './frequency-blocks.ts';
 import { frequencyLattices } from './lattices.ts';
-import { doubledFall, LATTICE_CONSTANTS, PAIRED_CONSTANTS, singleFall, type Level } from './level.ts';
+import {
+	doubledFall,
+	LATTICE_CONSTANTS,
+	LEFT_OUT,
+	PAIRED_CONSTANTS,
+	singleFall,
+	type Level
+} from './level.ts';
 import { addPolarizationNoise, sumOf, type Quantities } from './polarization-sum.ts';
 import { UNIT_ROUNDOFF } from './tally.ts';
 
@@ -220,7 +227,10 @@ export function frequencyTerms(system: System, level: Level, quantities: Quantit
 		const relative = UNIT_ROUNDOFF * (ROUNDING + phaseUlps * y0 + 2 * (noise.relative + noiseRight.relative));
 		const silentLeft = left.silent / separation;
 		const silentRight = right.silent / separation;
-		rounding.fill(0);
+		// Three assignments cost less than a call.
+		rounding[0] = 0;
+		rounding[1] = 0;
+		rounding[2] = 0;
 		if (noise.absolute > 0 || noiseRight.absolute > 0) {
 			addPolarizationNoise(
 				lattice,
@@ -275,19 +285,21 @@ export function frequencyTerms(system: System, level: Level, quantities: Quantit
 		if (!block.doubled) {
 			for (let q = 0; q < 3; q++) {
 				open[q] *= singles[grade] * LATTICE_CONSTANTS[q];
-				open[q] += 2 * level.cut * (Math.abs(te[q]) + Math.abs(tm[q]));
+				open[q] += LEFT_OUT * level.cut * (Math.abs(te[q]) + Math.abs(tm[q]));
 			}
 			return;
 		}
-		firstTe.set(te);
-		firstTm.set(tm);
-		firstOpen.set(open);
+		for (let q = 0; q < 3; q++) {
+			firstTe[q] = te[q];
+			firstTm[q] = tm[q];
+			firstOpen[q] = open[q];
+		}
 		onLattice(block, i, separation, lattices.at(scale, 1 - odd), y0, X);
 		for (let q = 0; q < 3; q++) {
 			te[q] = (te[q] + firstTe[q]) / 2;
 			tm[q] = (tm[q] + firstTm[q]) / 2;
 			open[q] = doubled * PAIRED_CONSTANTS[q] * Math.hypot(open[q], firstOpen[q]);
-			open[q] += 2 * level.cut * (Math.abs(te[q]) + Math.abs(tm[q]));
+			open[q] += LEFT_OUT * level.cut * (Math.abs(te[q]) + Math.abs(tm[q]));
 		}
 	};
 	return { terms, at, phaseOf };

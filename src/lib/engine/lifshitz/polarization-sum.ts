@@ -81,9 +81,12 @@ export function polarizationPressure(
 		d = z < NEAR_ONE ? 1 / (1 - z) : 1 / (y + Math.abs(1 - z));
 		p1 += weight[j] * y * y * z * d;
 	}
-	out.fill(0);
+	out[0] = 0;
+	out[1] = 0;
 	out[2] = p0;
 	out[3] = p1;
+	out[4] = 0;
+	out[5] = 0;
 }
 
 /** What is computed of a separation: pressure alone costs no logarithms. */

@@ -9,7 +9,7 @@ import {
 } from '../reflection/zero-frequency.ts';
 import type { Body, System } from '../system.ts';
 import { zeroLattice } from './lattices.ts';
-import { doubledFall, PAIRED_CONSTANTS, type Level } from './level.ts';
+import { doubledFall, LEFT_OUT, PAIRED_CONSTANTS, type Level } from './level.ts';
 import { addPolarizationNoise, sumOf, type Quantities } from './polarization-sum.ts';
 import { UNIT_ROUNDOFF, type Tally } from './tally.ts';
 
@@ -93,7 +93,7 @@ export function zeroTerm(
 				// Half weight of the primed sum, and half of each of the two lattices.
 				add(tally, polarisation, q, (even + odd) / 4, UNIT_ROUNDOFF * (ROUNDING + 8 * y0));
 				open[q] = Math.hypot(open[q], even - odd);
-				tally.lattice[q] += level.cut * Math.abs(even + odd);
+				tally.lattice[q] += LEFT_OUT * level.cut * Math.abs(even + odd);
 			}
 		}
 		for (const q of wanted) {

@@ -101,7 +101,15 @@ function startInterface(
 	rTM: Float64Array,
 	rTE: Float64Array
 ): void {
-	const { epsA, epsB, muA, muB, tmK, tmX, teK, teX } = neighbours(chi, mu, b, X);
+	setNumerators(chi, mu, b, X);
+	const epsA = 1 + chi[b - 1];
+	const epsB = 1 + chi[b];
+	const muA = mu[b - 1];
+	const muB = mu[b];
+	const tmK = numerators[0];
+	const tmX = numerators[1];
+	const teK = numerators[2];
+	const teX = numerators[3];
 	const before = waves[b - 1];
 	const behind = waves[b];
 	for (let i = 0; i < count; i++) {
@@ -133,7 +141,15 @@ function addInterface(
 	rTM: Float64Array,
 	rTE: Float64Array
 ): void {
-	const { epsA, epsB, muA, muB, tmK, tmX, teK, teX } = neighbours(chi, mu, b, X);
+	setNumerators(chi, mu, b, X);
+	const epsA = 1 + chi[b - 1];
+	const epsB = 1 + chi[b];
+	const muA = mu[b - 1];
+	const muB = mu[b];
+	const tmK = numerators[0];
+	const tmX = numerators[1];
+	const teK = numerators[2];
+	const teX = numerators[3];
 	const before = waves[b - 1];
 	const behind = waves[b];
 	const coat = coats[b];
@@ -171,34 +187,17 @@ function addInterface(
 	}
 }
 
-/** What the interface between places b - 1 and b has of its own, and the numerators of half-space.ts. */
-function neighbours(chi: Float64Array, mu: Float64Array, b: number, X: number): Neighbours {
+/** Numerators of half-space.ts for the interface between places b - 1 and b; an array, because objects of doubles cost memory. */
+const numerators = new Float64Array(4);
+
+function setNumerators(chi: Float64Array, mu: Float64Array, b: number, X: number): void {
 	const a = b - 1;
 	const epsA = 1 + chi[a];
 	const epsB = 1 + chi[b];
-	const muA = mu[a];
-	const muB = mu[b];
 	const dEps = chi[b] - chi[a];
-	const dMu = muB - muA;
-	return {
-		epsA,
-		epsB,
-		muA,
-		muB,
-		tmK: dEps * (epsA + epsB),
-		tmX: epsA * epsB * X * (dEps * muA - epsA * dMu),
-		teK: dMu * (muA + muB),
-		teX: muA * muB * X * (dMu * epsA - muA * dEps)
-	};
-}
-
-interface Neighbours {
-	epsA: number;
-	epsB: number;
-	muA: number;
-	muB: number;
-	tmK: number;
-	tmX: number;
-	teK: number;
-	teX: number;
+	const dMu = mu[b] - mu[a];
+	numerators[0] = dEps * (epsA + epsB);
+	numerators[1] = epsA * epsB * X * (dEps * mu[a] - epsA * dMu);
+	numerators[2] = dMu * (mu[a] + mu[b]);
+	numerators[3] = mu[a] * mu[b] * X * (dMu * epsA - mu[a] * dEps);
 }

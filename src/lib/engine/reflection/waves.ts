@@ -28,8 +28,8 @@ const coatThickness = new Float64Array(MOST_WAVES);
 let waveCount = 0;
 let coatCount = 0;
 let nodes: LogLattice | null = null;
-let phase = Number.NaN;
-let square = Number.NaN;
+/** y0 and X of the frequency; in an array, because a double in a variable that changes is allocated anew. */
+const frequency = new Float64Array([Number.NaN, Number.NaN]);
 
 /**
  * Waves from here on belong to this frequency; those of the one before are forgotten unless it is the same.
@@ -38,13 +38,13 @@ let square = Number.NaN;
  */
 export function startWaves(lattice: LogLattice, y0: number, X: number): void {
 	const room = waveCount + MOST_INTERFACES < MOST_WAVES && coatCount + MOST_INTERFACES < MOST_WAVES;
-	if (lattice === nodes && y0 === phase && X === square && room) return;
+	if (lattice === nodes && y0 === frequency[0] && X === frequency[1] && room) return;
 	const { count, s } = lattice;
 	if (count > MOST_NODES)
 		throw new RangeError(`a lattice of ${count} nodes; there is room for ${MOST_NODES}`);
 	nodes = lattice;
-	phase = y0;
-	square = X;
+	frequency[0] = y0;
+	frequency[1] = X;
 	waveCount = 0;
 	coatCount = 0;
 	for (let i = 0; i < count; i++) squares[i] = s[i] * (2 * y0 + s[i]);
@@ -55,7 +55,7 @@ export function waveAt(chi: number, mu: number): number {
 	for (let w = 0; w < waveCount; w++) if (waveChi[w] === chi && waveMu[w] === mu) return w * MOST_NODES;
 	const count = nodes?.count ?? 0;
 	const at = waveCount * MOST_NODES;
-	const index = (1 + chi) * mu * square;
+	const index = (1 + chi) * mu * frequency[1];
 	for (let i = 0; i < count; i++) kappas[at + i] = Math.sqrt(squares[i] + index);
 	waveChi[waveCount] = chi;
 	waveMu[waveCount] = mu;
