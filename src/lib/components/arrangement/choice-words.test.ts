@@ -11,6 +11,7 @@ function facts(ref: string, slug: string, name: string, datasetTitle: string): V
 			supersededBy: null,
 			staticLimit: 'finite',
 			hazards: null,
+			measuredRangeEv: null,
 			sources: [],
 			reliance: null
 		},

@@ -1,4 +1,4 @@
-import type { Equilibrium, ForcePoint, Warning } from '../../engine/contract.ts';
+import type { Equilibrium, ForcePoint, NonRetardedLimit, Warning } from '../../engine/contract.ts';
 import type { ForceRequestInput } from '../../schemas/force.ts';
 import { computeForces, ForcesRefused } from './forces-stream.ts';
 
@@ -29,6 +29,8 @@ export class Curve {
 	slow = $state(false);
 	equilibria = $state.raw<Equilibrium[]>([]);
 	warnings = $state.raw<Warning[]>([]);
+	/** Where it was asked for. */
+	nonRetarded = $state.raw<NonRetardedLimit>();
 	engine = $state('');
 	checksum = $state('');
 	/** ISO, in UTC. */
@@ -109,6 +111,7 @@ export class Curve {
 			);
 			this.equilibria = end.equilibria;
 			this.warnings = end.warnings;
+			this.nonRetarded = end.nonRetarded;
 			this.computedAt = end.receivedAt;
 			this.previous = [];
 			this.state = 'complete';

@@ -54,6 +54,7 @@ export function factsOf(version: ResolvedVersion, sharesOf: SharesOf): VersionFa
 			signalWord: material.hazards.signalWord,
 			caution: material.hazards.caution
 		},
+		measuredRangeEv: version.measuredRangeEv,
 		sources: sources.map(shortCitation),
 		reliance: reliance(version.model, sharesOf)
 	};

@@ -1,4 +1,4 @@
-import type { Equilibrium, ForcePoint, Warning } from '../../engine/contract.ts';
+import type { Equilibrium, ForcePoint, Warning, WholeAnalysis } from '../../engine/contract.ts';
 import type { ErrorAnswer } from '../../schemas/force-answer.ts';
 import type { ForceRequestInput } from '../../schemas/force.ts';
 
@@ -12,7 +12,7 @@ export interface StreamStart {
 	separationsNm: number[];
 }
 
-export interface StreamEnd {
+export interface StreamEnd extends WholeAnalysis {
 	/** ISO, in UTC; by the clock of the reader. */
 	receivedAt: string;
 	equilibria: Equilibrium[];

@@ -1,5 +1,5 @@
 import { encodeStudy } from '../../schemas/study-encode.ts';
-import { choiceRequest, closestNm } from '../../schemas/study-request.ts';
+import { choiceRequest, closestNm, detailsFor } from '../../schemas/study-request.ts';
 import { CHOICES_MAX } from '../../schemas/study-limits.ts';
 import type { Study } from '../../schemas/study.ts';
 import type { Edit } from '../arrangement/edits.ts';
@@ -30,6 +30,10 @@ export class StudySession {
 	/** One computation a choice: its curve, and the numbers exactly under the hairlines. */
 	readonly curves = Array.from({ length: CHOICES_MAX }, () => new Curve());
 	readonly exact = Array.from({ length: CHOICES_MAX }, () => new Curve());
+
+	/** The long answers for the red hairline, computed while somebody looks at them. */
+	readonly details = Array.from({ length: CHOICES_MAX }, () => new Curve());
+	detailed = $state(false);
 
 	#bar: AddressBar;
 	#past: Study[] = [];
@@ -133,8 +137,22 @@ export class StudySession {
 		});
 	}
 
+	/** Terms, sensitivities and what uncertain data do, at the red hairline once it rests. */
+	computeDetails(): void {
+		const { atNm, choices } = this.study;
+		const wanted = this.detailed && atNm >= closestNm(this.study);
+		this.details.forEach((curve, index) => {
+			const choice = choices[index];
+			if (choice && wanted)
+				curve.ask(choiceRequest(this.study, choice, [atNm], detailsFor(this.study, choice)), {
+					keepPrevious: false
+				});
+			else curve.clear();
+		});
+	}
+
 	stop(): void {
 		clearTimeout(this.#rest);
-		for (const curve of [...this.curves, ...this.exact]) curve.clear();
+		for (const curve of [...this.curves, ...this.exact, ...this.details]) curve.clear();
 	}
 }

@@ -21,6 +21,7 @@ function facts(ref: string, name: string, more: Partial<VersionFacts> = {}): Ver
 			supersededBy: null,
 			staticLimit: 'finite',
 			hazards: null,
+			measuredRangeEv: null,
 			sources: [],
 			reliance: null
 		},

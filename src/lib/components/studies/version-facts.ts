@@ -15,6 +15,8 @@ export interface VersionFacts {
 	supersededBy: string | null;
 	staticLimit: StaticLimit;
 	hazards: { codes: string[]; texts: string[]; signalWord: string | null; caution: string } | null;
+	/** Energies between which the table was measured, eV; null for closed forms. */
+	measuredRangeEv: { low: number; high: number } | null;
 	/** Short citations. */
 	sources: string[];
 	/** Share of eps(i xi) - 1 that lies outside the measured table; null for closed forms, which have no table. */
