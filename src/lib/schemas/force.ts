@@ -1,30 +1,22 @@
 import { z } from 'zod';
 import type { ForceRequestOf, PermittivityModel, SheetModel } from '../engine/contract.ts';
+import { LAYERS_MAX, shape, versionRef, zeroFrequencyRule } from './arrangement.ts';
 import { permeabilityModel, permittivityModel } from './permittivity.ts';
 
 /** The contract's request to the engine, for callers outside: a material is a pinned version or a model in place. */
+
+export { LAYERS_MAX, shape, versionRef, zeroFrequencyRule };
 
 /** What a request gets where it is silent. */
 export const FORCE_DEFAULTS = { relativeAccuracy: 1e-6, temperatureK: 300 } as const;
 
 export const SEPARATIONS_MAX = 2000;
-export const LAYERS_MAX = 40;
 export const HEIGHT_BINS_MAX = 200;
 export const TABLE_ROWS_MAX = 20_000;
 export const PARAMETERS_MAX = 60;
 export const RIVALS_MAX = 20;
 /** Optional parts of an answer. */
 export const EXTRAS = ['breakdown', 'analysis', 'terms', 'sensitivity', 'uncertainty'] as const;
-
-export const versionRef = z
-	.string()
-	.max(120)
-	.regex(/^[a-z0-9]+(-[a-z0-9]+)*@\d+\.\d+$/, 'a version is named slug@major.minor, as gold-drude@1.0')
-	.meta({ id: 'VersionRef', example: 'gold-drude@1.0' });
-
-export const zeroFrequencyRule = z
-	.enum(['drude', 'plasma', 'ideal', 'dcCounted', 'dcIgnored'])
-	.meta({ id: 'ZeroFrequencyRule' });
 
 export const uncertainty = z
 	.discriminatedUnion('kind', [
@@ -173,19 +165,6 @@ export const body = z.strictObject({
 		.default([]),
 	substrate: materialChoice
 });
-
-const radiusUm = z.number().positive().max(1e6);
-
-export const shape = z
-	.discriminatedUnion('kind', [
-		z.strictObject({ kind: z.literal('plates') }),
-		z.strictObject({ kind: z.literal('spherePlate'), radiusUm }),
-		z.strictObject({ kind: z.literal('spheres'), leftRadiusUm: radiusUm, rightRadiusUm: radiusUm }),
-		z.strictObject({ kind: z.literal('crossedCylinders'), leftRadiusUm: radiusUm, rightRadiusUm: radiusUm }),
-		z.strictObject({ kind: z.literal('cylinderPlate'), radiusUm }),
-		z.strictObject({ kind: z.literal('parallelCylinders'), leftRadiusUm: radiusUm, rightRadiusUm: radiusUm })
-	])
-	.meta({ id: 'Shape' });
 
 export const salt = z
 	.strictObject({

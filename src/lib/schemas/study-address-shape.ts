@@ -1,5 +1,5 @@
 import type { Shape } from '../engine/contract.ts';
-import { shape as shapeSchema } from './force.ts';
+import { shape as shapeSchema } from './arrangement.ts';
 import { radiusFields, SHAPE_KINDS } from './study-encode.ts';
 
 /** A shape in an address: `spherePlate:100`, `spheres:50,80`; radii in micrometres. */

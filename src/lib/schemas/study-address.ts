@@ -1,4 +1,4 @@
-import { versionRef, zeroFrequencyRule } from './force.ts';
+import { versionRef, zeroFrequencyRule } from './arrangement.ts';
 import {
 	CHOICE_NAME_MAX,
 	CHOICES_MAX,

@@ -1,5 +1,5 @@
 import { z } from 'zod';
-import { LAYERS_MAX, shape, versionRef, zeroFrequencyRule } from './force.ts';
+import { LAYERS_MAX, shape, versionRef, zeroFrequencyRule } from './arrangement.ts';
 import {
 	CHOICE_NAME_MAX,
 	CHOICES_MAX,
