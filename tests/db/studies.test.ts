@@ -1,8 +1,9 @@
 import { beforeAll, describe, expect, it } from 'vitest';
-import { Conflict, Forbidden, InvalidInput, NotFound } from '../../src/lib/server/errors.ts';
+import { Conflict, Forbidden, InvalidInput, NotFound, StateError } from '../../src/lib/server/errors.ts';
 import { deleteAccount, exportData } from '../../src/lib/server/people/account.ts';
 import { list as told } from '../../src/lib/server/notifications/list.ts';
 import { impactOf } from '../../src/lib/server/studies/impact.ts';
+import * as comments from '../../src/lib/server/studies/comments.ts';
 import * as studies from '../../src/lib/server/studies/studies.ts';
 import { approve, submit, withdraw } from '../../src/lib/server/library/curation.ts';
 import { candidate } from '../../src/lib/server/library/reviewing.ts';
@@ -238,11 +239,57 @@ describe('the impact of a version under review', () => {
 	}, 60_000);
 });
 
+describe('comments', () => {
+	const comment = (text: string) => ({ text, choice: null, separationNm: null });
+
+	it('are for who sees the study; whoever is named and may see it is told, and nobody else', async () => {
+		const { lead, researcher, curator, 'researcher-2': stranger } = people;
+		const { id } = await studies.create(
+			lead,
+			fields({ name: 'Talked about', visibility: 'group', group: 'cantilevers' })
+		);
+		await expect(comments.add(stranger, id, comment('Hello'))).rejects.toBeInstanceOf(NotFound);
+		await expect(comments.list(stranger, id)).rejects.toBeInstanceOf(NotFound);
+		const before = (await told(stranger)).told.length;
+		await comments.add(researcher, id, {
+			text: 'See B, @Larkmoor curator and @Larkmoor researcher 2.',
+			choice: 1,
+			separationNm: 38
+		});
+		expect((await told(curator)).told[0].subject).toBe(
+			'Larkmoor researcher names you in a comment on "Talked about"'
+		);
+		expect((await told(lead)).told[0].subject).toBe(
+			'Larkmoor researcher commented on your study "Talked about"'
+		);
+		// A name in the text opens nothing to somebody who may not see the study.
+		expect((await told(stranger)).told).toHaveLength(before);
+		const [first] = await comments.list(lead, id);
+		expect(first).toMatchObject({ by: 'Larkmoor researcher', choice: 1, separationNm: 38, resolved: null });
+		await comments.resolve(lead, id, first.id);
+		await expect(comments.resolve(researcher, id, first.id)).rejects.toBeInstanceOf(StateError);
+		expect(await comments.countOpen(id)).toBe(0);
+		await expect(
+			database.applicationSql`update study_comment set text = 'Other' where id = ${first.id}`
+		).rejects.toMatchObject({ constraint_name: 'study_comment_permanent' });
+	});
+
+	it('take a longer name for what it is', async () => {
+		const { lead, curator } = people;
+		const { id } = await studies.create(lead, fields({ name: 'Names', visibility: 'signed-in' }));
+		const before = (await told(curator)).told.length;
+		await comments.add(lead, id, comment('@Larkmoor curator 2, please look.'));
+		expect((await told(curator)).told).toHaveLength(before);
+		expect((await told(people['curator-2'])).told[0].subject).toContain('names you');
+	});
+});
+
 describe('deleting an account', () => {
 	it('takes the private studies with every state of them, and leaves what is shared', async () => {
 		const { 'reader-2': person, reader } = people;
 		const own = await studies.create(person, fields({ name: 'Only mine' }));
 		await studies.change(person, own.id, { revision: 1, notes: 'Changed' });
+		await comments.add(person, own.id, { text: 'To myself', choice: null, separationNm: null });
 		const shared = await studies.create(person, fields({ name: 'For all', visibility: 'signed-in' }));
 		await expect(database.applicationSql`delete from study where id = ${own.id}`).rejects.toThrow();
 		await expect(

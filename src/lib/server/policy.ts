@@ -77,6 +77,7 @@ export const POLICY: Readonly<Record<string, Row>> = {
 	'/studies': { GET: 'people', '?/create': 'people' },
 	'/studies/[id]': { GET: 'people', '?/describe': 'people', '?/duplicate': 'people', '?/archive': 'people' },
 	'/studies/[id]/state': { PUT: 'people' },
+	'/studies/[id]/comments': { GET: 'people', '?/add': 'people', '?/resolve': 'people' },
 	'/studies/[id]/history': { GET: 'people', '?/restore': 'people' },
 	'/notifications': { GET: 'people', '?/read': 'people', '?/all': 'people' },
 	'/administration': administered,

@@ -18,7 +18,9 @@ const shapes = {
 	'version-published': z.object({ ...base, reason: z.string().nullable() }),
 	'version-withdrawn': z.object({ ...base, reason: z.string() }),
 	'study-input-published': z.object({ ...base, study: z.string(), studyId: z.string() }),
-	'study-input-withdrawn': z.object({ ...base, reason: z.string(), study: z.string(), studyId: z.string() })
+	'study-input-withdrawn': z.object({ ...base, reason: z.string(), study: z.string(), studyId: z.string() }),
+	'study-comment': z.object({ by: z.string(), study: z.string(), studyId: z.string(), text: z.string() }),
+	'study-mention': z.object({ by: z.string(), study: z.string(), studyId: z.string(), text: z.string() })
 };
 
 export type ReviewLetterKind = keyof typeof shapes;
@@ -101,6 +103,16 @@ export function writeReviewLetter(kind: ReviewLetterKind, data: unknown, origin:
 					'The study can still be computed as it was.'
 				],
 				link: { text: 'Open the study', href: `${origin}/studies/${studyId}` }
+			};
+		}
+		case 'study-comment':
+		case 'study-mention': {
+			const { by, study, studyId, text } = shapes[kind].parse(data);
+			const what = kind === 'study-mention' ? 'names you in a comment on' : 'commented on your study';
+			return {
+				subject: `${by} ${what} "${study}"`,
+				paragraphs: [text],
+				link: { text: 'Read the comments', href: `${origin}/studies/${studyId}/comments` }
 			};
 		}
 	}

@@ -1,7 +1,7 @@
 import { and, eq, inArray } from 'drizzle-orm';
 import { appendAudit } from '../audit/append.ts';
 import type { Transaction } from '../db/client.ts';
-import { study, studyChange, studyPin } from '../db/schema/study.ts';
+import { study, studyChange, studyComment, studyPin } from '../db/schema/study.ts';
 
 /** With an account go the studies that nobody else could see; shared ones stay under its name. */
 export async function forgetStudies(tx: Transaction, personId: string): Promise<void> {
@@ -11,6 +11,7 @@ export async function forgetStudies(tx: Transaction, personId: string): Promise<
 		.where(and(eq(study.ownerId, personId), eq(study.visibility, 'private')));
 	const ids = own.map(({ id }) => id);
 	if (ids.length === 0) return;
+	await tx.delete(studyComment).where(inArray(studyComment.studyId, ids));
 	await tx.delete(studyPin).where(inArray(studyPin.studyId, ids));
 	await tx.delete(studyChange).where(inArray(studyChange.studyId, ids));
 	await tx.delete(study).where(inArray(study.id, ids));

@@ -1,5 +1,15 @@
 import { sql } from 'drizzle-orm';
-import { check, index, integer, jsonb, pgTable, primaryKey, text, uuid } from 'drizzle-orm/pg-core';
+import {
+	check,
+	doublePrecision,
+	index,
+	integer,
+	jsonb,
+	pgTable,
+	primaryKey,
+	text,
+	uuid
+} from 'drizzle-orm/pg-core';
 import { instant, isOneOf } from './columns.ts';
 import { version } from './dataset.ts';
 import { group } from './group.ts';
@@ -81,5 +91,40 @@ export const studyPin = pgTable(
 	(table) => [
 		primaryKey({ name: 'study_pin_pkey', columns: [table.studyId, table.versionId] }),
 		index('study_pin_version_index').on(table.versionId)
+	]
+);
+
+/** What people say to each other about a study, one of its choices, or one separation. */
+export const studyComment = pgTable(
+	'study_comment',
+	{
+		id: uuid().primaryKey().defaultRandom(),
+		studyId: uuid()
+			.notNull()
+			.references(() => study.id, { onDelete: 'restrict' }),
+		personId: uuid()
+			.notNull()
+			.references(() => person.id, { onDelete: 'restrict' }),
+		text: text().notNull(),
+		/** Place of the choice that is meant; null for the study as a whole. */
+		choice: integer(),
+		/** The separation that is meant. */
+		separationNm: doublePrecision(),
+		createdAt: instant().notNull(),
+		resolvedAt: instant(),
+		resolvedBy: uuid().references(() => person.id, { onDelete: 'restrict' })
+	},
+	(table) => [
+		check('study_comment_given', sql`length(trim(${table.text})) between 1 and 4000`),
+		check('study_comment_choice_range', sql`${table.choice} between 0 and 4`),
+		check(
+			'study_comment_separation_range',
+			sql`${table.separationNm} > 0 and ${table.separationNm} < 'Infinity'`
+		),
+		check(
+			'study_comment_resolved_whole',
+			sql`num_nonnulls(${table.resolvedAt}, ${table.resolvedBy}) in (0, 2)`
+		),
+		index('study_comment_study_index').on(table.studyId, table.createdAt)
 	]
 );

@@ -2,6 +2,7 @@ import { fail, redirect } from '@sveltejs/kit';
 import { studyChange } from '$lib/schemas/saved-study.ts';
 import { personOf } from '$lib/server/auth/require.ts';
 import { attempt, field, parseForm } from '$lib/server/people/attempt.ts';
+import * as comments from '$lib/server/studies/comments.ts';
 import { notesTree } from '$lib/server/studies/notes.ts';
 import * as studies from '$lib/server/studies/studies.ts';
 import { answered } from '../../../(library)/answered.ts';
@@ -20,6 +21,7 @@ export const load: PageServerLoad = async ({ locals, params, url }) => {
 		mayEdit: saved.mayEdit,
 		own: saved.own,
 		notes: notesTree(saved.study.notes),
+		openComments: await comments.countOpen(params.id),
 		groups: actor.groups.map(({ slug, name }) => ({ slug, name }))
 	};
 };
