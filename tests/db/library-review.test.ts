@@ -29,7 +29,8 @@ const draft = (change: object = {}, energy = 5) =>
 	db.database.transaction((tx) =>
 		draftFromModel(
 			tx,
-			{ datasetSlug: 'vanadium-drude', actor: RESEARCHER },
+			// A plasma agrees with no other vanadium of the library, and is meant to.
+			{ datasetSlug: 'vanadium-drude', actor: RESEARCHER, answers: { agreement: 'A test.' } },
 			plasma(energy),
 			description(change)
 		)
