@@ -39,7 +39,7 @@ test('salt screens, and roughness ends the curve where peaks come too near', asy
 	await page.getByText('Roughness and uncertainty of data').click();
 	await page.getByRole('textbox', { name: 'Left surface, rms' }).fill('2 nm');
 	await expect(page).toHaveURL(/rough=2,0/);
-	await expect(page.getByText('Computed from 18 nm upwards', { exact: false })).toBeVisible();
+	await expect(page.getByText('Computed from 18.0 nm upwards', { exact: false })).toBeVisible();
 	await computed(page);
 	await expectAccessible(page);
 });
