@@ -135,6 +135,22 @@ test('a lead shares a study; a member duplicates it and sees that nothing of the
 	await expectAccessible(other);
 	await other.getByRole('link', { name }).click();
 	await expect(other.getByRole('region', { name: 'Saved study' })).toContainText('Larkmoor lead');
+	const shared = other.url();
+	await other.getByRole('link', { name: 'Comments' }).click();
+	await other.getByLabel('Comment', { exact: true }).fill('Is B the newer set, @Larkmoor lead?');
+	await other.getByRole('combobox', { name: /^About/ }).selectOption('1');
+	await other.getByLabel('At a separation, nm').fill('38');
+	await other.getByRole('button', { name: 'Add the comment' }).click();
+	await expect(other.getByText('choice B, at 38.0 nm')).toBeVisible();
+	await expectAccessible(other);
+	await page.goto('/notifications');
+	await expect(page.getByText(`Larkmoor researcher names you in a comment on "${name}"`)).toBeVisible();
+	await page.getByRole('link', { name: 'Read the comments' }).first().click();
+	await page.getByRole('button', { name: 'Mark the comment of Larkmoor researcher as settled' }).click();
+	await expect(page.getByText('Settled by Larkmoor lead')).toBeVisible();
+	await page.goto(shared);
+
+	await other.goto(shared);
 	await other.getByRole('button', { name: 'Duplicate it' }).click();
 	await expect(other.getByRole('region', { name: 'Saved study' })).toContainText(`${name} (copy)`);
 	await enter(other, 'Larkmoor researcher 2');
