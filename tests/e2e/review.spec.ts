@@ -100,6 +100,11 @@ test('a file becomes a version: a wrong guess mended, a warning answered, sent b
 	await page.getByRole('link', { name: `${slug}@1.0` }).click();
 	await expect(page.getByRole('heading', { name: /^Review: Lead/ })).toBeVisible();
 	await expectAccessible(page);
+	await page.setViewportSize({ width: 390, height: 844 });
+	const sideways = () =>
+		page.evaluate(() => document.documentElement.scrollWidth - document.documentElement.clientWidth);
+	expect(await sideways()).toBe(0);
+	await page.setViewportSize({ width: 1280, height: 800 });
 	await page.getByRole('button', { name: 'Send it back' }).click();
 	await expect(page.getByText('Look at the marked fields again.')).toBeVisible();
 	await page.getByLabel('Reason').fill('Say which substrate.');
