@@ -5,6 +5,7 @@ import { tableCsv } from '../../src/lib/server/library/downloads.ts';
 import * as versions from '../../src/lib/server/library/versions.ts';
 import * as materials from '../../src/lib/server/library/materials.ts';
 import { candidate, queue, waitingFor } from '../../src/lib/server/library/reviewing.ts';
+import { compare, comparisonQuery } from '../../src/lib/server/library/comparison.ts';
 import * as uploads from '../../src/lib/server/library/uploads.ts';
 import { list, markRead, unread } from '../../src/lib/server/notifications/list.ts';
 import type { SignedIn } from '../../src/lib/schemas/person.ts';
@@ -190,6 +191,44 @@ describe('a table that leaves the library', () => {
 			const again = await candidate(maker, slug, made.number);
 			expect([slug, again.version.checksum]).toEqual([slug, original.checksum]);
 			expect([slug, again.version.fingerprint]).toEqual([slug, original.fingerprint]);
+		}
+	});
+});
+
+describe('a wrong listing entered as a new version', () => {
+	/**
+	 * Slips that were found between public listings of the fits of Rakic et al. 1998 (Applied Optics 37, 5271): the right figure, the
+	 * wrong one, and what the comparison takes it for.
+	 */
+	it.each([
+		['titanium-lorentz-drude', 19.43, 1.943, 'decimal point'],
+		['copper-lorentz-drude', 2.957, 2.597, 'digits exchanged'],
+		['aluminium-lorentz-drude', null, null, null],
+		['nickel-brendel-bormann', 8.825, 6.637, null],
+		['tungsten-brendel-bormann', 0.277, 0.227, 'one digit'],
+		['aluminium-brendel-bormann', 2.145, 0.172, null]
+	] as const)('is found in %s', async (slug, right, wrong, slip) => {
+		const { model } = await versions.get(slug, '1.0');
+		const text = JSON.stringify(model);
+		const change =
+			right === null ? null : new RegExp(`(?<=[:,])${String(right).replace('.', '\\.')}(?=[,}\\]])`);
+		if (change) expect(text).toMatch(change);
+		const id = await uploads.start(maker, {
+			form: {
+				dataset: slug,
+				source: 'rakic-1998',
+				model: change ? text.replace(change, String(wrong)) : text
+			}
+		});
+		const made = await uploads.makeDraft(maker, id);
+		const viewer = { personId: maker.id, isCurator: true };
+		const query = comparisonQuery.parse({ a: `${slug}@1.0`, b: `${slug}@${made.number}` });
+		const { difference, changes } = await compare(query, viewer);
+		if (change) {
+			expect(difference.figures).toEqual([expect.objectContaining({ from: right, to: wrong, slip })]);
+			expect(changes.some(({ points }) => points.some(({ beyondBound }) => beyondBound))).toBe(true);
+		} else {
+			expect(difference.figures).toEqual([]);
 		}
 	});
 });
