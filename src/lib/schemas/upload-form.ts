@@ -81,6 +81,7 @@ export function readingOf(form: UploadForm): Record<string, unknown> {
 		abscissa: { column: abscissa, unit: textual(form.abscissaUnit) },
 		ordinates,
 		duplicates: textual(form.duplicates),
+		joined: form.joined?.trim() ? form.joined : undefined,
 		lowEnd: lowEndOf(form),
 		highEnd: highEndOf(form)
 	};

@@ -24,9 +24,10 @@ export interface FileIssue {
 
 /** How far a stated end of a table misses the table where they meet. */
 export interface JointMismatch {
-	end: 'low';
+	/** Of the low end with the table, or of a second table with the first. */
+	end: 'low' | 'joined';
 	energyEv: number;
-	/** eps'' of the end over that of the table, less one, in per cent. */
+	/** eps'' of the end, or of the second table, over what it meets, less one, in per cent. */
 	percent: number;
 }
 

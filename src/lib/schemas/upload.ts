@@ -30,6 +30,12 @@ export const tableReading = z.strictObject({
 	abscissa: z.strictObject({ column, unit: abscissaUnit }),
 	ordinates: z.array(ordinate).min(1).max(4),
 	duplicates: z.enum(['refuse', 'merge-equal']).default('refuse'),
+	/** Rows of a second table that continues the file, in the same columns and units. */
+	joined: z
+		.string()
+		.max(200_000)
+		.regex(/^(?:[^\p{Cc}\p{Cs}]|[\n\r\t])*$/u, 'no control characters')
+		.optional(),
 	lowEnd: lowEnd.default({ kind: 'none' }),
 	highEnd: highEnd.default({ kind: 'none' })
 });

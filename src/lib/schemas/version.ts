@@ -98,6 +98,8 @@ export const versionDetail = versionSummary
 				abscissaUnit: z.string(),
 				quantities: z.array(z.string()),
 				rowCount: z.int(),
+				/** A second table that was joined to the file, as it was typed. */
+				joined: z.string().optional(),
 				/** Bytes as uploaded. */
 				raw: z.object({ name: z.string(), sha256: z.string(), bytes: z.int() }).nullable()
 			})

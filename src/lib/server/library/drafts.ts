@@ -150,7 +150,10 @@ function contentRow({ model, table, raw, description }: Content) {
 		note: description.note,
 		givenColumns: table && {
 			abscissaUnit: table.given.abscissaUnit,
-			quantities: table.given.quantities
+			quantities: table.given.quantities,
+			...('joined' in description && typeof description.joined === 'string'
+				? { joined: description.joined }
+				: {})
 		},
 		givenAbscissa: table?.given.abscissa ?? null,
 		givenFirst: table?.given.ordinates[0] ?? null,

@@ -274,7 +274,12 @@ export async function startFrom(actor: SignedIn, slug: string, number: string): 
 	};
 	if (earlier.table?.raw) {
 		const { name, bytes } = await versions.rawFile(slug, number);
-		return start(actor, { raw: { name, bytes } }, { ...form, ...endsForm(earlier.model) });
+		const { joined } = earlier.table;
+		return start(
+			actor,
+			{ raw: { name, bytes } },
+			{ ...form, ...endsForm(earlier.model), ...(joined ? { joined } : {}) }
+		);
 	}
 	const model = JSON.stringify(earlier.model, null, '\t');
 	return start(actor, { form: { ...form, model, ...rangeForm('measuredRange', earlier.measuredRangeEv) } });

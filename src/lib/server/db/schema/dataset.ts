@@ -52,6 +52,8 @@ export const dataset = pgTable(
 export interface GivenColumns {
 	abscissaUnit: string;
 	quantities: string[];
+	/** A second table that was joined to the file, as it was typed. */
+	joined?: string;
 }
 
 /** Stated uncertainties of a column, row by row as the numbers themselves. */

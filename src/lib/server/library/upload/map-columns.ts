@@ -3,6 +3,7 @@ import type { FileIssue } from '../../../schemas/upload-preview.ts';
 import type { Ordinate, Quantity, TableReading } from '../../../schemas/upload.ts';
 import { InvalidInput } from '../../errors.ts';
 import { readNumber } from './number.ts';
+import { joinTables } from './join-tables.ts';
 import type { Sheet } from './parse.ts';
 import { PHOTON_ENERGY_EV, angularFrequency } from './photon-energy.ts';
 import { RefusedFile } from './refused-file.ts';
@@ -42,9 +43,13 @@ interface Columns {
 	uncertain: UncertaintyColumn[];
 }
 
-type MapReading = Pick<TableReading, 'abscissa' | 'ordinates' | 'duplicates' | 'lowEnd' | 'highEnd'>;
+type MapReading = Pick<
+	TableReading,
+	'abscissa' | 'ordinates' | 'duplicates' | 'joined' | 'lowEnd' | 'highEnd'
+>;
 
-export function mapColumns(sheet: Sheet, reading: MapReading): MappedTable {
+export function mapColumns(file: Sheet, reading: MapReading): MappedTable {
+	const sheet = reading.joined ? joinTables(file, reading.joined, reading.abscissa.column) : file;
 	const columns = columnsOf(reading);
 	const quantities = columns.values.map(({ quantity }) => quantity);
 	checkQuantities(quantities);

@@ -52,6 +52,41 @@ describe('previewOf', () => {
 		expect(joint.percent).toBeCloseTo(100 * (drude / (2 * 0.18 * 5.11) - 1), 4);
 	});
 
+	describe('with a second table', () => {
+		// The file falls in wavelength, so energies rise along it: 1.55, 2.07, 3.10 eV.
+		it('joins it after the file, in whichever order it was typed, and measures the step', () => {
+			for (const joined of ['200;1,43;1,4\n100;1,2;0,5', '100;1,2;0,5\n200;1,43;1,4']) {
+				const { thumbnail, joints, fileIssues } = previewOf(bytes(GERMAN), { joined });
+				expect(fileIssues).toEqual([]);
+				expect(thumbnail?.points?.map(([energy]) => Number(energy.toFixed(3)))).toEqual([
+					1.55, 2.066, 3.1, 6.199, 12.398
+				]);
+				const [joint] = joints;
+				const [b, c] = [2 * 0.25 * 3, 2 * 1.66 * 1.96];
+				const slope = Math.log(c / b) / Math.log(600 / 400);
+				expect(joint).toMatchObject({ end: 'joined' });
+				expect(joint.percent).toBeCloseTo(100 * ((2 * 1.43 * 1.4) / (c * 2 ** slope) - 1), 6);
+			}
+		});
+
+		it('joins it before the file as well', () => {
+			const { thumbnail, joints } = previewOf(bytes(GERMAN), { joined: '2000;0,9;13\n1000;0,3;6,8' });
+			expect(thumbnail?.points?.[0][0]).toBeCloseTo(1239.841984 / 2000, 6);
+			expect(joints[0].energyEv).toBeCloseTo(1239.841984 / 800, 6);
+		});
+
+		it('refuses one that overlaps or has other columns, naming the line', () => {
+			expect(previewOf(bytes(GERMAN), { joined: '500;1;1\n200;1;1' }).fileIssues[0]).toMatchObject({
+				rule: 'order',
+				line: 5
+			});
+			expect(previewOf(bytes(GERMAN), { joined: '200;1\n100;1' }).fileIssues[0]).toMatchObject({
+				rule: 'join',
+				line: 5
+			});
+		});
+	});
+
 	it('names the field of an end that is not whole', () => {
 		const { problems } = previewOf(bytes(GERMAN), { 'lowEnd.kind': 'drude', 'lowEnd.dampingEv': 'x' });
 		expect(problems.map(({ field }) => field).sort()).toEqual(['lowEnd.dampingEv', 'lowEnd.plasmaEnergyEv']);

@@ -2,14 +2,16 @@ import { z } from 'zod';
 import { Refusal } from '../../../engine/refusal.ts';
 import { fieldOf, layoutOf, readingOf, type UploadForm } from '../../../schemas/upload-form.ts';
 import type { ColumnGuess, UploadPreview } from '../../../schemas/upload-preview.ts';
-import { tableReading } from '../../../schemas/upload.ts';
+import { tableReading, type AbscissaUnit } from '../../../schemas/upload.ts';
 import { InvalidInput } from '../../errors.ts';
 import { issuesOf } from '../../api/issues.ts';
 import { decode } from './decode.ts';
 import { guessColumns } from './guess-columns.ts';
-import { jointMismatches } from './joints.ts';
+import { jointMismatches, tableJoint } from './joints.ts';
 import { mapColumns, type MappedTable } from './map-columns.ts';
 import { parseSheet, type Sheet, type SheetOptions } from './parse.ts';
+import { readNumber } from './number.ts';
+import { PHOTON_ENERGY_EV } from './photon-energy.ts';
 import { RefusedFile } from './refused-file.ts';
 import { readModelJson } from './model-json.ts';
 import { modelThumbnail, thumbnail } from './thumbnail.ts';
@@ -57,10 +59,23 @@ export function previewOf(raw: Uint8Array, form: UploadForm): UploadPreview {
 	const read = { ...EMPTY, sheet: shown(sheet), guess };
 	try {
 		const table = mapSheet(sheet, withGuess(form, guess));
-		return { ...read, joints: jointMismatches(table.model), thumbnail: thumbnail(table) };
+		const joints = [...jointMismatches(table.model), ...jointOf(sheet, table)];
+		return { ...read, joints, thumbnail: thumbnail(table) };
 	} catch (error) {
 		return { ...read, ...toldBy(error) };
 	}
+}
+
+/** The file's rows lie at one end of the joined table; which one, its first row tells. */
+function jointOf(sheet: Sheet, { model, given }: MappedTable) {
+	if (model.kind !== 'table' || given.abscissa.length <= sheet.rows.length) return [];
+	const first = sheet.rows[0].cells.map((cell) => readNumber(cell, sheet.decimal));
+	const startsFile = first.some((read) => 'value' in read && read.value === given.abscissa[0]);
+	const isRising =
+		PHOTON_ENERGY_EV[given.abscissaUnit as AbscissaUnit](given.abscissa[0]) === model.energiesEv[0];
+	const fileIsLower = startsFile === isRising;
+	const total = model.energiesEv.length;
+	return tableJoint(model, fileIsLower ? sheet.rows.length : total - sheet.rows.length);
 }
 
 function layoutFrom(form: UploadForm): SheetOptions {
