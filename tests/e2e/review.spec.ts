@@ -66,6 +66,9 @@ test('a file becomes a version: a wrong guess mended, a warning answered, sent b
 	await expect(page.getByLabel('Columns are parted by')).toContainText('found: semicolon');
 	await expect(page.getByLabel('Dataset')).toHaveValue(slug);
 
+	// Where the check of spacing will speak is on the picture already.
+	await expect(page.getByText('8 gaps are wider than 10 % and marked at the top.')).toBeVisible();
+
 	// The fourth column is taken for the uncertainty of n; here it is of k.
 	await page.getByLabel('Column 4 is').selectOption('uncertainty:3');
 	await expect(page.getByText('set by you')).toBeVisible();
