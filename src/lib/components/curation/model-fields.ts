@@ -1,15 +1,22 @@
 import type { PermittivityModel } from '$lib/engine/contract.ts';
 
-/** Every closed form that can be typed in: its fields with their units. A new kind of model is one more entry. */
+/**
+ * Every closed form that can be typed in: its fields with their units. A new kind of model is one more entry. Models of models
+ * (mixtures, laws of temperature) and tables are written as JSON.
+ */
 
 export interface FigureField {
+	/** In the contract; `bandUm.from` stands in an object of its own. */
 	name: string;
 	label: string;
 	unit: string;
 }
 
 export interface ClosedForm {
-	kind: Exclude<PermittivityModel['kind'], 'sum' | 'table' | 'imaginaryTable'>;
+	kind: Exclude<
+		PermittivityModel['kind'],
+		'sum' | 'table' | 'imaginaryTable' | 'maxwellGarnett' | 'bruggeman' | 'temperatureDependent'
+	>;
 	title: string;
 	/** Figures of the form itself. */
 	figures: FigureField[];
@@ -18,6 +25,13 @@ export interface ClosedForm {
 }
 
 const ENERGY = 'eV';
+
+const BAND: FigureField[] = [
+	{ name: 'amplitudeEv', label: 'Amplitude', unit: ENERGY },
+	{ name: 'energyEv', label: 'Energy', unit: ENERGY },
+	{ name: 'broadeningEv', label: 'Broadening', unit: ENERGY },
+	{ name: 'gapEv', label: 'Gap', unit: ENERGY }
+];
 
 export const CLOSED_FORMS: readonly ClosedForm[] = [
 	{
@@ -46,6 +60,37 @@ export const CLOSED_FORMS: readonly ClosedForm[] = [
 		terms: [
 			{ name: 'strength', label: 'Strength', unit: '1' },
 			{ name: 'relaxationTimePs', label: 'Relaxation time', unit: 'ps' }
+		]
+	},
+	{
+		kind: 'brendelBormann',
+		title: 'Brendel-Bormann oscillators',
+		figures: [],
+		terms: [
+			{ name: 'strengthEv2', label: 'Strength', unit: 'eV²' },
+			{ name: 'energyEv', label: 'Energy', unit: ENERGY },
+			{ name: 'dampingEv', label: 'Damping', unit: ENERGY },
+			{ name: 'widthEv', label: 'Width', unit: ENERGY }
+		]
+	},
+	{ kind: 'taucLorentz', title: 'Tauc-Lorentz bands', figures: [], terms: BAND },
+	{
+		kind: 'codyLorentz',
+		title: 'Cody-Lorentz bands',
+		figures: [],
+		terms: [...BAND, { name: 'transitionEv', label: 'Transition above the gap', unit: ENERGY }]
+	},
+	{
+		kind: 'sellmeier',
+		title: 'Sellmeier index formula',
+		figures: [
+			{ name: 'constant', label: 'Constant', unit: '1' },
+			{ name: 'bandUm.from', label: 'Fitted from', unit: 'µm' },
+			{ name: 'bandUm.to', label: 'Fitted to', unit: 'µm' }
+		],
+		terms: [
+			{ name: 'strength', label: 'Strength', unit: '1' },
+			{ name: 'wavelengthUm', label: 'Wavelength', unit: 'µm' }
 		]
 	},
 	{
@@ -121,7 +166,7 @@ function partOf(model: unknown): TypedPart | null {
 	if (!form) return null;
 	const known = [
 		'kind',
-		...form.figures.map(({ name }) => name),
+		...form.figures.map(({ name }) => name.split('.')[0]),
 		...(form.terms.length > 0 ? ['terms'] : [])
 	];
 	if (Object.keys(model).some((name) => !known.includes(name))) return null;
@@ -135,7 +180,17 @@ function partOf(model: unknown): TypedPart | null {
 }
 
 const textsOf = (fields: FigureField[], from: Record<string, unknown>) =>
-	Object.fromEntries(fields.map(({ name }) => [name, from[name] === undefined ? '' : String(from[name])]));
+	Object.fromEntries(
+		fields.map(({ name }) => {
+			const value = valueAt(from, name.split('.'));
+			return [name, value === undefined ? '' : String(value)];
+		})
+	);
+
+function valueAt(from: unknown, [name, ...rest]: string[]): unknown {
+	const value = isRecord(from) ? from[name] : undefined;
+	return rest.length === 0 ? value : valueAt(value, rest);
+}
 
 const isRecord = (value: unknown): value is Record<string, unknown> =>
 	typeof value === 'object' && value !== null && !Array.isArray(value);
@@ -153,7 +208,13 @@ export function jsonOf(parts: readonly TypedPart[]): string {
 	return JSON.stringify(models.length === 1 ? models[0] : { kind: 'sum', of: models }, null, '\t');
 }
 
-const numbersOf = (texts: Record<string, string>) =>
-	Object.fromEntries(
-		Object.entries(texts).map(([name, text]) => [name, NUMBER.test(text.trim()) ? Number(text) : text])
-	);
+function numbersOf(texts: Record<string, string>): Record<string, unknown> {
+	const numbers: Record<string, unknown> = {};
+	for (const [name, text] of Object.entries(texts)) {
+		const value = NUMBER.test(text.trim()) ? Number(text) : text;
+		const [first, inner] = name.split('.');
+		if (inner === undefined) numbers[first] = value;
+		else numbers[first] = { ...(numbers[first] as object | undefined), [inner]: value };
+	}
+	return numbers;
+}
