@@ -45,6 +45,14 @@ const boundaries = [
 		forbid: [['(^|/)(server|components|routes)(/|$)', 'format serves both sides and imports neither']]
 	},
 	{
+		files: ['src/lib/study-sheet/**'],
+		ignores: ['**/*.test.ts'],
+		forbid: [
+			['(^|/)(server|components|routes)(/|$)', 'the sheet serves page and server and imports neither'],
+			['^\\$app|^\\$env|^svelte', 'the sheet knows no framework']
+		]
+	},
+	{
 		files: ['src/lib/components/**'],
 		ignores: ['**/*.test.ts'],
 		forbid: [

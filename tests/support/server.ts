@@ -9,6 +9,8 @@ export interface TestServer {
 	origin: string;
 	/** Into its database, as superuser. */
 	sql: postgres.Sql;
+	/** Ends the process and starts another one on the same database and address. */
+	restart: () => Promise<void>;
 	stop: () => Promise<void>;
 }
 
@@ -30,7 +32,7 @@ export async function startTestServer(environment: Record<string, string> = {}):
 		await sql`grant select, insert, update, delete on rate_counter to hairsbreadth_app`;
 		const port = await freePort();
 		const origin = `http://localhost:${port}`;
-		const server = await startServer({
+		const options = {
 			args: ['build/index.js'],
 			env: {
 				...process.env,
@@ -48,9 +50,14 @@ export async function startTestServer(environment: Record<string, string> = {}):
 				...environment
 			},
 			healthUrl: `${origin}/api/v1/health`
-		});
-		stops.push(server.stop);
-		return { origin, sql, stop };
+		};
+		let server = await startServer(options);
+		stops.push(() => server.stop());
+		const restart = async () => {
+			await server.stop();
+			server = await startServer(options);
+		};
+		return { origin, sql, restart, stop };
 	} catch (error) {
 		await stop();
 		throw error;

@@ -1,5 +1,13 @@
 import { error } from '@sveltejs/kit';
-import { Conflict, Forbidden, InvalidInput, NotFound, StateError } from '$lib/server/errors.ts';
+import {
+	Conflict,
+	Forbidden,
+	InvalidInput,
+	NotFound,
+	StateError,
+	TooManyRequests
+} from '$lib/server/errors.ts';
+import { Unavailable } from '$lib/server/limits/refusals.ts';
 
 /** Calls a service and answers its refusals as pages; anything unforeseen goes on to the hook that logs it. */
 
@@ -8,7 +16,9 @@ const STATUS: readonly [new (...args: never[]) => Error, number][] = [
 	[Forbidden, 403],
 	[Conflict, 409],
 	[StateError, 409],
-	[InvalidInput, 422]
+	[InvalidInput, 422],
+	[TooManyRequests, 429],
+	[Unavailable, 503]
 ];
 
 export async function answered<T>(call: () => Promise<T>): Promise<T> {

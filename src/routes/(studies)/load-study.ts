@@ -1,4 +1,4 @@
-import { factsOf } from '$lib/components/studies/facts-of.ts';
+import { factsOf } from '$lib/server/library/facts-of.ts';
 import { epsilonShares } from '$lib/engine/index.ts';
 import { decodeStudy } from '$lib/schemas/study-address.ts';
 import { versionsOf } from '$lib/schemas/study-slots.ts';

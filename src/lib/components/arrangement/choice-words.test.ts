@@ -1,5 +1,5 @@
 import { describe, expect, it } from 'vitest';
-import type { VersionFacts } from '../studies/version-facts.ts';
+import type { VersionFacts } from '../../study-sheet/version-facts.ts';
 import { WORKED_STUDY } from '../../schemas/study-worked.ts';
 import { changeWords, overrideWords, placeWords } from './choice-words.ts';
 

@@ -1,7 +1,7 @@
 import { choiceLetter, materialAt } from '../../schemas/study-slots.ts';
 import type { ModelChoice, Study } from '../../schemas/study.ts';
-import type { VersionFacts } from '../studies/version-facts.ts';
-import { ruleWords } from './conduction.ts';
+import type { VersionFacts } from '../../study-sheet/version-facts.ts';
+import { ruleWords } from '../../study-sheet/conduction.ts';
 
 /** What a model choice changes, in words. */
 

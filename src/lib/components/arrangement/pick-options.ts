@@ -15,13 +15,7 @@ export interface PickOption {
 }
 
 /** Short citation: the first two authors' family names and the year. */
-export function shortCitation({
-	authors,
-	year
-}: {
-	authors: readonly string[];
-	year: number | null;
-}): string {
+function shortCitation({ authors, year }: { authors: readonly string[]; year: number | null }): string {
 	const family = (author: string) =>
 		author.includes(',') ? author.split(',')[0] : author.split(' ').slice(-1)[0];
 	const names = authors.slice(0, 2).map(family).join(', ');

@@ -2,7 +2,7 @@ import { describe, expect, it } from 'vitest';
 import type { PermittivityModel } from '../../engine/contract.ts';
 import { mathRuns } from './math-runs.ts';
 import { modelParts } from './model-words.ts';
-import { staticLimit } from '../arrangement/conduction.ts';
+import { staticLimit } from '../../study-sheet/conduction.ts';
 
 const gold: PermittivityModel = { kind: 'drude', plasmaEnergyEv: 9, dampingEv: 0.035 };
 const glass: PermittivityModel = { kind: 'constant', value: 2.1 };

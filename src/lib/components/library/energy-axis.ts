@@ -1,6 +1,6 @@
 import { ENERGY, quantityLine } from '../../format/quantity.ts';
 import type { EnergyRangeEv } from '../../schemas/version.ts';
-import { logScale } from '../plot/log-scale.ts';
+import { logScale } from '../../study-sheet/log-scale.ts';
 
 /** The one axis that every range bar of the library shares: photon energy, 1 meV to 10 keV, in per cent of its width. */
 

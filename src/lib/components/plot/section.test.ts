@@ -1,5 +1,5 @@
 import { describe, expect, it } from 'vitest';
-import { logScale } from './log-scale.ts';
+import { logScale } from '../../study-sheet/log-scale.ts';
 import { sectionParts } from './section.ts';
 
 const x = logScale([1, 10_000], [70, 470]);

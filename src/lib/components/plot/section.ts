@@ -1,5 +1,5 @@
 import type { MaterialClass } from '../ui/hatch.ts';
-import type { LogScale } from './log-scale.ts';
+import type { LogScale } from '../../study-sheet/log-scale.ts';
 
 /** Places of the parts of a cross-section, in pixels. */
 

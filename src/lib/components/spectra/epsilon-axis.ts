@@ -1,4 +1,4 @@
-import { logScale, type LogScale } from '../plot/log-scale.ts';
+import { logScale, type LogScale } from '../../study-sheet/log-scale.ts';
 
 /** The vertical axis of eps(i xi): logarithmic from 1 upwards, in pixels of a strip. */
 

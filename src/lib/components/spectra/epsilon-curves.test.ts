@@ -1,6 +1,6 @@
 import { describe, expect, it } from 'vitest';
 import { evFromRadPerS, radPerSFromEv } from '../../engine/units.ts';
-import { logScale } from '../plot/log-scale.ts';
+import { logScale } from '../../study-sheet/log-scale.ts';
 import {
 	epsilonAt,
 	epsilonPaths,

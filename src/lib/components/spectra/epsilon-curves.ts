@@ -1,7 +1,7 @@
 import { evFromRadPerS } from '../../engine/units.ts';
 import type { EnergyRangeEv, Spectrum } from '../../schemas/version.ts';
-import type { LogScale } from '../plot/log-scale.ts';
-import { interpolate } from '../plot/series.ts';
+import type { LogScale } from '../../study-sheet/log-scale.ts';
+import { interpolate } from '../../study-sheet/series.ts';
 
 /** Permittivity on the imaginary axis as curves over log xi: pure, in pixels of the strip. */
 

@@ -1,5 +1,5 @@
 import { describe, expect, it } from 'vitest';
-import { logScale } from '../plot/log-scale.ts';
+import { logScale } from '../../study-sheet/log-scale.ts';
 import { XI_DOMAIN } from './epsilon-curves.ts';
 import { matsubaraComb } from './matsubara-comb.ts';
 

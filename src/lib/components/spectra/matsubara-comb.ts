@@ -1,4 +1,4 @@
-import type { LogScale } from '../plot/log-scale.ts';
+import type { LogScale } from '../../study-sheet/log-scale.ts';
 import { matsubaraXi } from './frequency.ts';
 
 /** The Matsubara frequencies as the teeth of a comb along the axis of log xi. */

@@ -1,7 +1,7 @@
 import type { Annotation, Data, Layout, LayoutAxis } from 'plotly.js-dist-min';
 import { numberLine } from '../../format/number.ts';
 import { ENERGY, quantityLine } from '../../format/quantity.ts';
-import { spreadLabels } from '../plot/curve-data.ts';
+import { spreadLabels } from '../../study-sheet/curve-data.ts';
 import {
 	abscissaOf,
 	PANELS,

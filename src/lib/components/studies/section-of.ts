@@ -2,8 +2,8 @@ import { lengthText } from '../../format/length.ts';
 import { materialIn } from '../../schemas/study-slots.ts';
 import type { ModelChoice, Side, Study } from '../../schemas/study.ts';
 import type { SectionBody, SectionMaterial } from '../plot/section.ts';
-import { plainName } from './title-block.ts';
-import type { VersionFacts } from './version-facts.ts';
+import { plainName } from '../../study-sheet/title-block.ts';
+import type { VersionFacts } from '../../study-sheet/version-facts.ts';
 
 /** The cross-section of the arrangement; materials that only a choice has are not drawn. */
 export function sectionOf(

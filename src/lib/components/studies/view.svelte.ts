@@ -4,9 +4,9 @@ import { scaleFor } from '../../format/units.ts';
 import { encodeStudy } from '../../schemas/study-encode.ts';
 import { choiceLetter } from '../../schemas/study-slots.ts';
 import { otherMessages } from '../arrangement/issues.ts';
-import { drawnChoices } from './drawn.ts';
-import { quantityFacts, quantityHeading, quantityWord, shapeName } from './quantities.ts';
-import { differencesFrom, readingAt, spreadOf, type Reading } from './readings.ts';
+import { drawnChoices } from '../../study-sheet/drawn.ts';
+import { quantityFacts, quantityHeading, quantityWord, shapeName } from '../../study-sheet/quantities.ts';
+import { differencesFrom, readingAt, spreadOf, type Reading } from '../../study-sheet/readings.ts';
 import type { StudySession } from './session.svelte.ts';
 import {
 	conditionWords,
@@ -15,9 +15,9 @@ import {
 	relianceWords,
 	studyTitle,
 	type TitleFacts
-} from './title-block.ts';
+} from '../../study-sheet/title-block.ts';
 import type { UnitMemory } from './units.svelte.ts';
-import { worstState, type VersionFacts } from './version-facts.ts';
+import { worstState, type VersionFacts } from '../../study-sheet/version-facts.ts';
 
 /**
  * What the page shows of a session. Everything that depends on the curves alone is kept apart from what follows the

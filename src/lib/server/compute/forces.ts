@@ -1,5 +1,5 @@
 import { ENGINE_VERSION, Refusal, estimateCost } from '../../engine/index.ts';
-import type { ForceAnswer, ForceRequest } from '../../engine/contract.ts';
+import type { ForceAnswer, ForcePoint, ForceRequest } from '../../engine/contract.ts';
 import { checkRequest } from '../../engine/validate.ts';
 import type { ForceRequestComplete } from '../../schemas/force.ts';
 import type { ResolvedVersion } from '../../schemas/version.ts';
@@ -113,4 +113,13 @@ export async function runForces(
 	);
 	const { engine, runtime, inputChecksum, versions } = plan;
 	return { engine, runtime, inputChecksum, versions, separationsNm, points, ...end };
+}
+
+/** The same question computed once more, whatever was kept of it. */
+export async function computeAfresh({ request }: ForcePlan, signal: AbortSignal): Promise<ForcePoint[]> {
+	const points: ForcePoint[] = [];
+	const onPoints = ({ indices, points: some }: { indices: number[]; points: ForcePoint[] }) =>
+		indices.forEach((index, place) => (points[index] = some[place]));
+	await enginePool().run(request, { onStart: () => undefined, onPoints }, signal);
+	return points;
 }

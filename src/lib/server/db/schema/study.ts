@@ -8,6 +8,7 @@ import {
 	pgTable,
 	primaryKey,
 	text,
+	unique,
 	uuid
 } from 'drizzle-orm/pg-core';
 import { instant, isOneOf } from './columns.ts';
@@ -126,5 +127,30 @@ export const studyComment = pgTable(
 			sql`num_nonnulls(${table.resolvedAt}, ${table.resolvedBy}) in (0, 2)`
 		),
 		index('study_comment_study_index').on(table.studyId, table.createdAt)
+	]
+);
+
+/** Addresses by which anybody reads a study without signing in, until they run out or are taken back. */
+export const studyLink = pgTable(
+	'study_link',
+	{
+		id: uuid().primaryKey().defaultRandom(),
+		studyId: uuid()
+			.notNull()
+			.references(() => study.id, { onDelete: 'restrict' }),
+		/** SHA-256 of the secret in the address, which is shown once and not kept. */
+		secretHash: text().notNull(),
+		createdBy: uuid()
+			.notNull()
+			.references(() => person.id, { onDelete: 'restrict' }),
+		createdAt: instant().notNull(),
+		expiresAt: instant().notNull(),
+		revokedAt: instant()
+	},
+	(table) => [
+		unique('study_link_secret_key').on(table.secretHash),
+		check('study_link_secret_form', sql`${table.secretHash} ~ '^[0-9a-f]{64}$'`),
+		check('study_link_expires_later', sql`${table.expiresAt} > ${table.createdAt}`),
+		index('study_link_study_index').on(table.studyId, table.createdAt)
 	]
 );
