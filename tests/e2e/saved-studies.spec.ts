@@ -95,7 +95,7 @@ test('a study keeps the version that it names, marks the newer one, and its owne
 	await page.getByRole('link', { name: 'Open the study' }).first().click();
 	await expect(page.getByRole('region', { name: 'Saved study' })).toContainText(slug);
 	await expect(block.getByRole('img', { name: 'Revision' })).toBeVisible();
-	await expect(block).toContainText('Lead has version 2.0');
+	await expect(block).toContainText(/Lead has version 2\.0, which changes A by [−+][\d.]+ % at 100 nm/);
 	expect(page.url()).not.toContain('@2.0');
 	await expect(async () => {
 		await page.goto('/demo/mail');

@@ -1,4 +1,7 @@
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
+import { curveSnippets } from '../../src/lib/components/studies/snippets.ts';
+import { decodeStudy } from '../../src/lib/schemas/study-address.ts';
+import { choiceRequest } from '../../src/lib/schemas/study-request.ts';
 import type { Recomputation, SavedRecord } from '../../src/lib/schemas/record.ts';
 import { startPeopleServer } from '../support/people-server.ts';
 import { signedInAs, visitor, type Visitor } from '../support/visitor.ts';
@@ -119,5 +122,45 @@ describe('a record over the wire', () => {
 		});
 		expect(refused.status).toBe(422);
 		expect(await refused.text()).toContain('name at least one author');
+	});
+});
+
+describe('files of a study in an address', () => {
+	it('are computed for whoever may compute, and say what is wrong with an address', async () => {
+		const stranger = visitor(server.origin);
+		const answer = async (file: string, query = QUERY) => stranger.get(`/study/${file}${query}`);
+		expect(
+			(await (await answer('curves.csv')).text()).split('\r\n').find((line) => !line.startsWith('#'))
+		).toMatch(/^separation,free_energy_A,free_energy_bound_A,pressure_A,/);
+		const columns = (await (await answer('curves.json')).json()) as { columns: Record<string, number[]> };
+		expect(columns.columns.separation).toContain(50);
+		const pdf = Buffer.from(await (await answer('sheet.pdf')).arrayBuffer()).toString('latin1');
+		expect(pdf.slice(0, 5)).toBe('%PDF-');
+		expect(pdf.match(/\/Type \/Page\b/g)).toHaveLength(1);
+		expect(await (await answer('citation.bib')).text()).toContain('@article{johnson-christy-1972,');
+		expect(await (await answer('citation.ris')).text()).toMatch(/^TY {2}- DATA/);
+		expect((await answer('sheet.pdf', '?left=nonsense')).status).toBe(422);
+		expect((await answer('curves.csv', QUERY.replace('vacuum@1.0', 'vacuum@9.0'))).status).toBe(422);
+		expect((await answer('sheet.docx')).status).toBe(404);
+	});
+
+	it('can be fetched with a token, as the page’s own lines do', async () => {
+		const made = await post(researcher, '/api/v1/tokens', {
+			name: 'snippet',
+			scopes: ['read', 'compute'],
+			days: 1
+		});
+		const { secret } = (await made.json()) as { secret: string };
+		const { study } = decodeStudy(new URLSearchParams(QUERY));
+		const [, shell] = curveSnippets(server.origin, choiceRequest(study, study.choices[0]));
+		const [, body] = /--data '([\s\S]*)'\n$/.exec(shell.text) ?? [];
+		const [, address] = /"(http[^"]+)"/.exec(shell.text) ?? [];
+		const answer = await visitor(server.origin).request(address, {
+			method: 'POST',
+			body,
+			headers: { 'content-type': 'application/json', authorization: `Bearer ${secret}` }
+		});
+		expect(answer.status).toBe(200);
+		expect(((await answer.json()) as { points: unknown[] }).points.length).toBeGreaterThan(20);
 	});
 });

@@ -67,6 +67,17 @@ export const savedStudy = z
 	})
 	.meta({ id: 'Study' });
 
+/** How long a link may stand, in days. */
+export const linkDays = z.coerce.number().int().min(1, 'one day at least').max(365, 'a year at most');
+
+export interface StudyLink {
+	id: string;
+	by: string;
+	createdAt: string;
+	expiresAt: string;
+	state: 'open' | 'run out' | 'taken back';
+}
+
 export const studyQuery = z.object({
 	search: z.string().trim().max(200).default(''),
 	show: z.enum(['mine', 'group', 'shared', 'archived']).default('mine'),

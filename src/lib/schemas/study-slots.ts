@@ -19,6 +19,18 @@ export function materialAt(study: Study, slot: string): SlotMaterial | undefined
 	return layer === 0 ? study[side].substrate : study[side].layers[layer - 1]?.of;
 }
 
+/** The arrangement with another material at a place that exists. */
+export function withMaterial(study: Study, slot: string, material: SlotMaterial): Study {
+	if (slot === 'medium') return { ...study, medium: material };
+	const side: Side = slot.startsWith('left') ? 'left' : 'right';
+	const layer = Number(slot.slice(side.length));
+	if (layer === 0) return { ...study, [side]: { ...study[side], substrate: material } };
+	const layers = study[side].layers.map((old, index) =>
+		index === layer - 1 ? { ...old, of: material } : old
+	);
+	return { ...study, [side]: { ...study[side], layers } };
+}
+
 /** What a choice puts at a place: the arrangement's material with the choice's change laid over it. */
 export function materialIn(study: Study, choice: ModelChoice, slot: string): SlotMaterial | undefined {
 	const base = materialAt(study, slot);

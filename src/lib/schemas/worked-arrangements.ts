@@ -21,7 +21,7 @@ export const WORKED_ARRANGEMENTS: readonly WorkedArrangement[] = [
 	{
 		name: 'Gold against gold in vacuum',
 		shows: 'the static term by Drude and by plasma, apart by tens of per cent beyond a micrometre',
-		query: `?left=gold-drude@1.0&medium=vacuum@1.0&right=gold-drude@1.0&choice=Drude&choice=Plasma;left:!plasma;right:!plasma&from=100&to=10000&at=1000`
+		query: `?left=gold-drude@1.0&medium=vacuum@1.0&right=gold-drude@1.0&choice=Drude;left:!drude;right:!drude&choice=Plasma;left:!plasma;right:!plasma&from=100&to=10000&at=1000`
 	},
 	{
 		name: 'Silica against silica in salt water',

@@ -71,14 +71,26 @@ export const POLICY: Readonly<Record<string, Row>> = {
 		'?/rename': 'people',
 		'?/invite': 'people',
 		'?/revoke': 'people',
+		'?/defaults': 'people',
 		'?/lead': 'people',
 		'?/remove': 'people'
 	},
 	'/studies': { GET: 'people', '?/create': 'people' },
-	'/studies/[id]': { GET: 'people', '?/describe': 'people', '?/duplicate': 'people', '?/archive': 'people' },
+	'/studies/new': { GET: 'people', POST: 'people' },
+	'/studies/[id]': {
+		GET: 'people',
+		'?/decide': 'people',
+		'?/describe': 'people',
+		'?/duplicate': 'people',
+		'?/archive': 'people'
+	},
 	'/studies/[id]/state': { PUT: 'people' },
 	'/studies/[id]/comments': { GET: 'people', '?/add': 'people', '?/resolve': 'people' },
 	'/studies/[id]/freeze': { GET: 'people', POST: 'people' },
+	'/studies/[id]/share': { GET: 'people', '?/link': 'people', '?/revoke': 'people', '?/give': 'people' },
+	/** The secret in the address is what lets one in. */
+	'/shared/[secret]': open,
+	'/shared/[secret]/[file]': open,
 	'/study/[file]': { GET: 'computing' },
 	'/records': readable,
 	'/records/[checksum]': { GET: 'readers', '?/recompute': 'computing', '?/share': 'people' },

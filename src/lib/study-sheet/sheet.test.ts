@@ -1,7 +1,7 @@
 import { describe, expect, it } from 'vitest';
 import { signRuns } from './sign-runs.ts';
 import type { DrawnChoice } from './strip.ts';
-import { sheetSvg, type Sheet } from './sheet.ts';
+import { brokenLines, sheetSvg, type Sheet } from './sheet.ts';
 
 function choice(letter: string, ink: number, values: number[]): DrawnChoice {
 	const separationsNm = [1, 100, 10_000].slice(0, values.length);
@@ -59,5 +59,16 @@ describe('the picture to take away', () => {
 
 	it('refers to nothing outside', () => {
 		expect(svg.replace('xmlns="http://www.w3.org/2000/svg"', '')).not.toMatch(/(href|src|url\()/);
+	});
+});
+
+describe('brokenLines', () => {
+	it('breaks at blanks, and inside what has none, without losing a letter of it', () => {
+		expect(brokenLines(['one two three four'], 10)).toEqual(['one two', 'three four']);
+		const address = `https://gap.larkmoor.example/?${'left=gold&'.repeat(30)}`;
+		const lines = brokenLines([address], 100);
+		expect(lines.every((line) => line.length <= 100)).toBe(true);
+		expect(lines.join('')).toBe(address);
+		expect(brokenLines(['short'])).toEqual(['short']);
 	});
 });

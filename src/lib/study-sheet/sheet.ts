@@ -187,7 +187,26 @@ function axis(sheet: Sheet, x: LogScale, top: number): string {
 	return tag('path', { d: d.join(''), stroke: ink, fill: 'none' }) + labels.join('');
 }
 
-export function sheetSvg(sheet: Sheet): string {
+/** Characters of a line of the block, at the size it is set in. */
+const LINE_CHARACTERS = 106;
+
+/** Long lines broken at a blank, or inside an address, which has none. */
+export function brokenLines(lines: readonly string[], most = LINE_CHARACTERS): string[] {
+	return lines.flatMap((line) => {
+		const pieces: string[] = [];
+		let rest = line;
+		while (rest.length > most) {
+			const blank = rest.lastIndexOf(' ', most);
+			const at = blank > most / 2 ? blank + 1 : most;
+			pieces.push(rest.slice(0, at).trimEnd());
+			rest = rest.slice(at);
+		}
+		return [...pieces, rest];
+	});
+}
+
+export function sheetSvg(given: Sheet): string {
+	const sheet = { ...given, block: brokenLines(given.block) };
 	const { colour } = sheet;
 	const x = logScale([sheet.fromNm, sheet.toNm], [LEFT, WIDTH - RIGHT]);
 	const heading = { fill: colour('ink'), 'font-weight': 640 };

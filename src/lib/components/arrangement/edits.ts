@@ -1,6 +1,6 @@
 import type { ZeroFrequencyRule } from '../../engine/contract.ts';
 import { CHOICES_MAX } from '../../schemas/study-limits.ts';
-import { materialIn, slotsOf } from '../../schemas/study-slots.ts';
+import { materialIn, slotsOf, withMaterial } from '../../schemas/study-slots.ts';
 import type {
 	ModelChoice,
 	Side,
@@ -81,17 +81,6 @@ export function setThickness(side: Side, index: number, thicknessNm: number): Ed
 		const layers = study[side].layers.map((layer, at) => (at === index ? { ...layer, thicknessNm } : layer));
 		return { ...study, [side]: { ...study[side], layers } };
 	};
-}
-
-function withMaterial(study: Study, slot: string, material: SlotMaterial): Study {
-	if (slot === 'medium') return { ...study, medium: material };
-	const side: Side = slot.startsWith('left') ? 'left' : 'right';
-	const layer = Number(slot.slice(side.length));
-	if (layer === 0) return { ...study, [side]: { ...study[side], substrate: material } };
-	const layers = study[side].layers.map((old, index) =>
-		index === layer - 1 ? { ...old, of: material } : old
-	);
-	return { ...study, [side]: { ...study[side], layers } };
 }
 
 /**
@@ -237,6 +226,18 @@ export function setChoiceIons(index: number, debyeLengthNm: ModelChoice['debyeLe
 			changes,
 			...(debyeLengthNm === undefined ? {} : { debyeLengthNm })
 		}));
+}
+
+/** Two choices that differ in nothing but how the static term of every conductor is taken. */
+export function addConductionPair(slots: readonly string[]): Edit {
+	return (study) => {
+		if (study.choices.length + 2 > CHOICES_MAX || slots.length === 0) return study;
+		const choice = (name: string, zeroFrequency: ZeroFrequencyRule): ModelChoice => ({
+			name,
+			changes: Object.fromEntries(slots.map((slot) => [slot, { zeroFrequency }]))
+		});
+		return { ...study, choices: [...study.choices, choice('Drude', 'drude'), choice('Plasma', 'plasma')] };
+	};
 }
 
 /** A newer version of an input, set beside the present one as a further choice. */

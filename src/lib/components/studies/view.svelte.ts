@@ -11,6 +11,7 @@ import type { StudySession } from './session.svelte.ts';
 import {
 	conditionWords,
 	conductionOfAll,
+	conductionWords,
 	ingredients,
 	relianceWords,
 	studyTitle,
@@ -114,6 +115,10 @@ export class StudyView {
 
 	used = $derived(ingredients(this.study, this.facts, this.letters));
 	conduction = $derived(conductionOfAll(this.study, this.facts, this.letters));
+	/** How the static term is taken in each choice, to stand beside its number. */
+	conductionBeside = $derived(
+		this.choices.map((choice) => conductionWords(this.study, choice, this.facts).join('; '))
+	);
 	titleFacts = $derived.by((): TitleFacts => ({
 		heading: quantityHeading(this.quantity, this.shape),
 		atNm: this.#session.atNm,

@@ -20,7 +20,8 @@ const shapes = {
 	'study-input-published': z.object({ ...base, study: z.string(), studyId: z.string() }),
 	'study-input-withdrawn': z.object({ ...base, reason: z.string(), study: z.string(), studyId: z.string() }),
 	'study-comment': z.object({ by: z.string(), study: z.string(), studyId: z.string(), text: z.string() }),
-	'study-mention': z.object({ by: z.string(), study: z.string(), studyId: z.string(), text: z.string() })
+	'study-mention': z.object({ by: z.string(), study: z.string(), studyId: z.string(), text: z.string() }),
+	'study-given': z.object({ by: z.string(), study: z.string(), studyId: z.string() })
 };
 
 export type ReviewLetterKind = keyof typeof shapes;
@@ -102,6 +103,14 @@ export function writeReviewLetter(kind: ReviewLetterKind, data: unknown, origin:
 					reason,
 					'The study can still be computed as it was.'
 				],
+				link: { text: 'Open the study', href: `${origin}/studies/${studyId}` }
+			};
+		}
+		case 'study-given': {
+			const { by, study, studyId } = shapes[kind].parse(data);
+			return {
+				subject: `${by} gave you the study "${study}"`,
+				paragraphs: [`You own it now: you decide who sees it, and you are told of what it rests on.`],
 				link: { text: 'Open the study', href: `${origin}/studies/${studyId}` }
 			};
 		}

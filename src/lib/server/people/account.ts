@@ -13,6 +13,7 @@ import { NotFound } from '../errors.ts';
 import { list as listUploads } from '../library/uploads.ts';
 import { enqueue } from '../outbox/enqueue.ts';
 import { forgetStudies } from '../studies/forget.ts';
+import { ownRecords } from '../records/records.ts';
 import { ownStudies } from '../studies/studies.ts';
 import { exitAll } from './groups.ts';
 import { keepingAnAdministrator } from './people.ts';
@@ -66,6 +67,7 @@ export async function exportData(actor: SignedIn): Promise<Record<string, unknow
 		sessions: await listSessions(actor.id, null),
 		tokens: await listTokens(actor),
 		mails,
+		records: await ownRecords(actor),
 		studies: await ownStudies(actor),
 		uploads: await listUploads(actor),
 		trail

@@ -183,3 +183,8 @@ export async function share(actor: SignedIn, checksum: string, visibility: Recor
 		});
 	});
 }
+
+/** Names of everything that somebody owns, for the copy of their data; the records themselves are at their addresses. */
+export async function ownRecords(owner: SignedIn): Promise<RecordSummary[]> {
+	return (await select(eq(recordAccess.ownerId, owner.id), undefined, 10_000)).map(toSummary);
+}

@@ -67,6 +67,13 @@ export async function get(
 	return { study: toSaved(found), mayEdit: mayEdit(actor, found.row), own: found.row.ownerId === actor.id };
 }
 
+/** Without asking who reads: for those whom a link let in. */
+export async function read(id: string): Promise<SavedStudy> {
+	const [found] = UUID.test(id) ? await select(database(), eq(study.id, id)) : [];
+	if (!found) throw new NotFound('There is no such study.');
+	return toSaved(found);
+}
+
 /** @throws InvalidInput for a group that is not one's own */
 function groupOf(actor: SignedIn, slug: string | null, visibility: string): string | null {
 	const found = actor.groups.find((one) => one.slug === slug);
@@ -133,22 +140,7 @@ const audited = (
  */
 export async function change(actor: SignedIn, id: string, wanted: StudyChange): Promise<SavedStudy> {
 	return database().transaction(async (tx) => {
-		const [locked] = UUID.test(id)
-			? await tx
-					.select()
-					.from(study)
-					.where(and(eq(study.id, id), seenBy(actor)))
-					.for('update')
-			: [];
-		if (!locked) throw new NotFound('There is no such study, or it is not shared with you.');
-		if (!mayEdit(actor, locked))
-			throw new Forbidden('You may read this study. Duplicate it to have one of your own.');
-		if (locked.revision !== wanted.revision) {
-			const { savedBy } = await find(tx, actor, id);
-			throw new Conflict(
-				`${savedBy} saved this study at ${locked.savedAt.toISOString().slice(11, 19)} UTC. Load it again, or keep yours as a copy.`
-			);
-		}
+		const locked = await lockedState(tx, actor, id, wanted.revision);
 		const decides =
 			wanted.visibility !== undefined || wanted.group !== undefined || wanted.archived !== undefined;
 		if (decides && locked.ownerId !== actor.id)
@@ -165,34 +157,79 @@ export async function change(actor: SignedIn, id: string, wanted: StudyChange): 
 				: wanted.archived
 					? (locked.archivedAt ?? now())
 					: null;
-		const [row] = await tx
-			.update(study)
-			.set({
-				name: wanted.name ?? locked.name,
-				query: wanted.query ?? locked.query,
-				notes: wanted.notes ?? locked.notes,
-				reasons: wanted.reasons ?? locked.reasons,
-				visibility,
-				groupId,
-				archivedAt,
-				revision: locked.revision + 1,
-				savedAt: now(),
-				savedBy: actor.id
-			})
-			.where(eq(study.id, id))
-			.returning();
-		if (row.query !== locked.query) await pin(tx, id, row.query);
-		await remember(tx, actor, row);
-		await audited(tx, actor, 'change', id, changedNames(locked, row));
-		return toSaved(await find(tx, actor, id));
+		const row = await store(tx, actor, locked, 'change', {
+			name: wanted.name ?? locked.name,
+			query: wanted.query ?? locked.query,
+			notes: wanted.notes ?? locked.notes,
+			reasons: wanted.reasons ?? locked.reasons,
+			...{ visibility, groupId, archivedAt }
+		});
+		return toSaved(await find(tx, actor, row.id));
 	});
+}
+
+type Row = typeof study.$inferSelect;
+
+/** @throws Conflict naming who saved since `revision` */
+async function lockedState(tx: Transaction, actor: SignedIn, id: string, revision: number): Promise<Row> {
+	const [locked] = UUID.test(id)
+		? await tx
+				.select()
+				.from(study)
+				.where(and(eq(study.id, id), seenBy(actor)))
+				.for('update')
+		: [];
+	if (!locked) throw new NotFound('There is no such study, or it is not shared with you.');
+	if (!mayEdit(actor, locked))
+		throw new Forbidden('You may read this study. Duplicate it to have one of your own.');
+	if (locked.revision !== revision) {
+		const { savedBy } = await find(tx, actor, id);
+		throw new Conflict(
+			`${savedBy} saved this study at ${locked.savedAt.toISOString().slice(11, 19)} UTC. Load it again, or keep yours as a copy.`
+		);
+	}
+	return locked;
+}
+
+/** The next state, remembered and audited. */
+async function store(
+	tx: Transaction,
+	actor: SignedIn,
+	locked: Row,
+	verb: string,
+	change: Partial<Row>
+): Promise<Row> {
+	const [row] = await tx
+		.update(study)
+		.set({ ...change, revision: locked.revision + 1, savedAt: now(), savedBy: actor.id })
+		.where(eq(study.id, locked.id))
+		.returning();
+	if (row.query !== locked.query) await pin(tx, row.id, row.query);
+	await remember(tx, actor, row);
+	await audited(tx, actor, verb, row.id, changedNames(locked, row));
+	return row;
+}
+
+/** A step of another service, under the same lock and with the same history. */
+export async function changeIn(
+	tx: Transaction,
+	actor: SignedIn,
+	id: string,
+	revision: number,
+	verb: string,
+	step: (row: Row) => Partial<Row>
+): Promise<void> {
+	const locked = await lockedState(tx, actor, id, revision);
+	await store(tx, actor, locked, verb, step(locked));
 }
 
 const groupSlug = (actor: SignedIn, id: string | null) =>
 	actor.groups.find((one) => one.id === id)?.slug ?? null;
 
-function changedNames(before: typeof study.$inferSelect, after: typeof study.$inferSelect) {
-	const names = ['name', 'query', 'notes', 'reasons', 'visibility', 'groupId', 'archivedAt'] as const;
+function changedNames(before: Row, after: Row) {
+	const names = [
+		...(['name', 'query', 'notes', 'reasons', 'visibility', 'groupId', 'archivedAt', 'ownerId'] as const)
+	];
 	const changed = names.filter((name) => JSON.stringify(before[name]) !== JSON.stringify(after[name]));
 	return { revision: after.revision, changed };
 }

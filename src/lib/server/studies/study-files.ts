@@ -4,6 +4,7 @@ import type { ForcePoint } from '../../engine/contract.ts';
 import { curveSeparationsNm } from '../../schemas/curve-separations.ts';
 import { forceRequest } from '../../schemas/force.ts';
 import { decodeStudy } from '../../schemas/study-address.ts';
+import { encodeStudy } from '../../schemas/study-encode.ts';
 import { choiceRequest } from '../../schemas/study-request.ts';
 import { choiceLetter, versionsOf } from '../../schemas/study-slots.ts';
 import type { Study } from '../../schemas/study.ts';
@@ -55,18 +56,13 @@ export async function studyFile(
 			'The address has parts that cannot be read.',
 			problems.map(({ part, message }) => ({ path: part, message }))
 		);
-	return { name: `study-${name}`, type: TYPES[name], content: await contentOf(study, query, name, asking) };
+	return { name: `study-${name}`, type: TYPES[name], content: await contentOf(study, name, asking) };
 }
 
-async function contentOf(
-	study: Study,
-	query: URLSearchParams,
-	name: FileName,
-	asking: Asking
-): Promise<string | Uint8Array> {
+async function contentOf(study: Study, name: FileName, asking: Asking): Promise<string | Uint8Array> {
 	if (name === 'citation.bib' || name === 'citation.ris') return citations(study, name, asking.origin);
 	const answers = await computed(study, asking);
-	const sheet = await sheetOf(study, answers, `${asking.origin}/?${query}`);
+	const sheet = await sheetOf(study, answers, `${asking.origin}/${encodeStudy(study)}`);
 	if (name === 'sheet.pdf') return sheetPdf(sheet, now().toISOString());
 	if (name === 'sheet.svg') return sheetSvg(sheet);
 	const perLength = study.shape.kind === 'cylinderPlate' || study.shape.kind === 'parallelCylinders';

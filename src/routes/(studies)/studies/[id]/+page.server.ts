@@ -1,8 +1,11 @@
 import { fail, redirect } from '@sveltejs/kit';
+import { z } from 'zod';
+import { conduction } from '$lib/schemas/group-defaults.ts';
 import { studyChange } from '$lib/schemas/saved-study.ts';
 import { personOf } from '$lib/server/auth/require.ts';
 import { attempt, field, parseForm } from '$lib/server/people/attempt.ts';
 import * as comments from '$lib/server/studies/comments.ts';
+import * as groupDefaults from '$lib/server/studies/group-defaults.ts';
 import { notesTree } from '$lib/server/studies/notes.ts';
 import * as studies from '$lib/server/studies/studies.ts';
 import { answered } from '../../../(library)/answered.ts';
@@ -20,11 +23,14 @@ export const load: PageServerLoad = async ({ locals, params, url }) => {
 		saved: saved.study,
 		mayEdit: saved.mayEdit,
 		own: saved.own,
+		defaults: saved.study.group ? await groupDefaults.of(actor, saved.study.group.slug) : null,
 		notes: notesTree(saved.study.notes),
 		openComments: await comments.countOpen(params.id),
 		groups: actor.groups.map(({ slug, name }) => ({ slug, name }))
 	};
 };
+
+const decision = z.object({ revision: z.coerce.number().int(), conduction });
 
 export const actions: Actions = {
 	describe: async ({ request, params, locals }) => {
@@ -46,6 +52,19 @@ export const actions: Actions = {
 			)
 		);
 		if (done.failed) return fail(done.status, { ...done.refused, typed });
+		redirect(303, `/studies/${params.id}`);
+	},
+
+	decide: async ({ request, params, locals }) => {
+		const form = await request.formData();
+		const done = await attempt(() =>
+			groupDefaults.decide(
+				personOf(locals.principal),
+				params.id,
+				parseForm(decision, { revision: field(form, 'revision'), conduction: field(form, 'conduction') })
+			)
+		);
+		if (done.failed) return fail(done.status, done.refused);
 		redirect(303, `/studies/${params.id}`);
 	},
 

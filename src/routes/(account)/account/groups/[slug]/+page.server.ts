@@ -1,5 +1,6 @@
 import { error, fail } from '@sveltejs/kit';
 import { z } from 'zod';
+import { groupDefaults as defaultsForm } from '$lib/schemas/group-defaults.ts';
 import { groupName } from '$lib/schemas/group.ts';
 import { newInvitation } from '$lib/schemas/invitation.ts';
 import type { SignedIn } from '$lib/schemas/person.ts';
@@ -7,6 +8,7 @@ import { personOf } from '$lib/server/auth/require.ts';
 import { attempt, field, parseForm, type Attempt } from '$lib/server/people/attempt.ts';
 import * as groups from '$lib/server/people/groups.ts';
 import * as invitations from '$lib/server/people/invitations.ts';
+import * as groupDefaults from '$lib/server/studies/group-defaults.ts';
 import type { Actions, PageServerLoad } from './$types';
 
 export const load: PageServerLoad = async ({ locals, params }) => {
@@ -18,6 +20,7 @@ export const load: PageServerLoad = async ({ locals, params }) => {
 	return {
 		group,
 		self: actor.id,
+		defaults: await groupDefaults.of(actor, params.slug),
 		invitations: open.invitations.filter(({ state }) => state === 'open')
 	};
 };
@@ -41,6 +44,25 @@ export const actions: Actions = {
 			groups.rename(actor, id, parseForm(nameForm, { name: field(form, 'name') }).name)
 		);
 		return done.failed ? fail(done.status, done.refused) : { said: 'The group has its new name.' };
+	},
+
+	defaults: async ({ request, locals, params }) => {
+		const form = await request.formData();
+		const typed = {
+			conduction: field(form, 'conduction'),
+			gold: field(form, 'gold').trim(),
+			temperatureK: field(form, 'temperatureK')
+		};
+		const done = await attempt(() =>
+			groupDefaults.set(
+				personOf(locals.principal),
+				params.slug,
+				parseForm(defaultsForm, { ...typed, gold: typed.gold === '' ? null : typed.gold })
+			)
+		);
+		return done.failed
+			? fail(done.status, { ...done.refused, typed })
+			: { said: 'New studies of the group begin with that.' };
 	},
 
 	invite: async ({ request, locals, params }) => {
