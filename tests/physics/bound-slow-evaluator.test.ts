@@ -2,6 +2,7 @@ import { describe, expect, it } from 'vitest';
 import type { ArrangementOf, BodyOf, MaterialModel, PermittivityModel } from '$lib/engine/contract.ts';
 import { randomRequest } from '../support/random-requests.ts';
 import { tableSusceptibility } from '../support/slow-lifshitz-table.ts';
+import { spreadSusceptibility } from '../support/slow-lifshitz-composed.ts';
 import { slowForces } from '../support/slow-lifshitz.ts';
 
 const bulk = (of: MaterialModel): BodyOf<MaterialModel> => ({ layers: [], substrate: of });
@@ -139,6 +140,23 @@ describe('the slow evaluator', () => {
 	it('transforms a table with a zero point', () => {
 		const chi = tableSusceptibility([1, 2, 4], [0, 3, 1], { kind: 'none' }, { kind: 'none' }, 1);
 		expect(Math.abs(chi / 1.119264170358953 - 1)).toBeLessThan(1e-14);
+	});
+
+	it.each([20, 300, 1e4])('keeps the digits of a spread oscillator at %s times its resonance', (ratio) => {
+		const term = { strengthEv2: 0.07, energyEv: 0.4, dampingEv: 0.08, widthEv: 0.03 };
+		const xi = ratio * term.energyEv;
+		const square = xi * (xi + term.dampingEv);
+		// moments of the normal distribution: mean of 1/(x^2 + b^2) for b far above x
+		const [w, s] = [term.energyEv ** 2 / square, term.widthEv ** 2 / square];
+		const series =
+			1 -
+			(w + s) +
+			(w * w + 6 * w * s + 3 * s * s) -
+			(w ** 3 + 15 * w * w * s + 45 * w * s * s + 15 * s ** 3);
+		const next = 10 * (w + s) ** 4;
+		const value = (spreadSusceptibility(term, xi) * square) / term.strengthEv2;
+		// a thousand terms of one sign, exponents of which up to 45 are rounded
+		expect(Math.abs(value - series)).toBeLessThan(1e-13 + next);
 	});
 
 	it('screens the static term as the derived values do', () => {

@@ -39,7 +39,8 @@ export function spreadSusceptibility(term: Spread, xiEv: number): number {
 		return f * sum;
 	}
 	const b = Math.sqrt(xiEv * (xiEv + gamma));
-	const step = 0.05 * Math.min(1, s / w0);
+	// the bell is s/sqrt(w0^2 + b^2) wide in t: far above the resonance it is the narrower the larger xi
+	const step = 0.05 * Math.min(1, s / Math.hypot(w0, b));
 	const reach = Math.asinh((w0 + 9.5 * s) / b);
 	const low = -Math.min(reach, 45);
 	let sum = 0;

@@ -52,23 +52,24 @@ const EXPONENTIAL_PANELS = [1, 3, 7, 14, 26, 50];
 const PANEL_RATIO = 6;
 
 /**
- * A rule for int_0^inf du of integrands that fall like e^-u and whose singularities keep at least `scale` from u = 0.
+ * A rule for int_0^inf du of integrands that fall like e^-(fall u) and whose singularities keep at least `scale` from
+ * u = 0.
  */
-export function exponentialRule(rule: Rule, scale: number): Rule {
+export function exponentialRule(rule: Rule, scale: number, fall = 1): Rule {
 	const nodes: number[] = [];
 	const weights: number[] = [];
 	const append = (panel: Rule) => {
 		nodes.push(...panel.nodes);
 		weights.push(...panel.weights);
 	};
-	const first = Math.min(scale, 1);
+	const first = Math.min(scale * fall, 1);
 	append(onPanel(rule, 0, first, false));
 	const count = Math.ceil(Math.log(1 / first) / Math.log(PANEL_RATIO) - 1e-9);
 	for (let i = 0; i < count; i++)
 		append(onPanel(rule, first ** (1 - i / count), first ** (1 - (i + 1) / count), true));
 	for (let i = 1; i < EXPONENTIAL_PANELS.length; i++)
 		append(onPanel(rule, EXPONENTIAL_PANELS[i - 1], EXPONENTIAL_PANELS[i], false));
-	return { nodes, weights };
+	return { nodes: nodes.map((u) => u / fall), weights: weights.map((w) => w / fall) };
 }
 
 /** Nodes of the Chebyshev interpolant a block of integers is summed by. */

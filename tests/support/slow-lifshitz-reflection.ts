@@ -52,6 +52,19 @@ export interface Setting {
 	screening: number;
 	/** Relative error of the contrasts, from tables that were subtracted in doubles. */
 	contrastError: number;
+	/** Width of all that is like the medium, in units of d: the gap and outer layers of the medium's own material. */
+	clearance: number;
+}
+
+/** Layers that do not reflect, counted from the gap. */
+function unseen(body: readonly Medium[]): number {
+	let sum = 0;
+	for (const { difference, muDifference, normal, tmSheet, teSheet, ratio } of body) {
+		const seen = difference !== 0 || muDifference !== 0 || normal !== null || tmSheet !== 0 || teSheet !== 0;
+		if (seen || ratio === Infinity) return sum;
+		sum += ratio;
+	}
+	return sum;
 }
 
 interface SlowPlace {
@@ -184,7 +197,8 @@ export function settingAt(prepared: PreparedArrangement, xi: number, distance: n
 		lowest: Math.sqrt(eps * mu * phaseSquared),
 		phaseSquared,
 		screening: xi === 0 && prepared.debyeLength !== undefined ? (2 * distance) / prepared.debyeLength : 0,
-		contrastError
+		contrastError,
+		clearance: 1 + unseen(left) + unseen(right)
 	};
 }
 

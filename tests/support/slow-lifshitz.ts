@@ -123,7 +123,8 @@ function rowAt(setting: Setting, static_: boolean, nodes: number): Float64Array 
 	}
 	const { nodes: us, weights } = exponentialRule(
 		rule,
-		static_ ? 1e-9 : Math.max(nearestSingularity(setting), 1e-8)
+		static_ ? 1e-9 : Math.max(nearestSingularity(setting), 1e-8),
+		setting.clearance
 	);
 	for (let i = 0; i < us.length; i++) {
 		const u = us[i];
@@ -195,12 +196,16 @@ function kinks(arrangement: ArrangementOf<MaterialModel>): number[] {
 	const visit = (model: PermittivityModel) => {
 		if (model.kind === 'imaginaryTable') model.frequenciesRadPerS.forEach((xi) => found.add(xi));
 		if (model.kind === 'sum') model.of.forEach(visit);
+		if (model.kind === 'temperatureDependent') visit(model.of);
+		if (model.kind === 'maxwellGarnett' || model.kind === 'bruggeman')
+			[model.host, model.inclusion].forEach(visit);
 	};
-	for (const body of [arrangement.left, arrangement.right]) {
-		body.layers.forEach((layer) => visit(layer.of.permittivity));
-		visit(body.substrate.permittivity);
+	const { left, medium, right } = arrangement;
+	const bodies = [left, right].flatMap(({ layers, substrate }) => [...layers.map(({ of }) => of), substrate]);
+	for (const { permittivity, normal } of [medium, ...bodies]) {
+		visit(permittivity);
+		if (normal) visit(normal.permittivity);
 	}
-	visit(arrangement.medium.permittivity);
 	return [...found].sort((a, b) => a - b);
 }
 
@@ -275,7 +280,8 @@ function sumOverN(job: Job, firstFrequency: number, breaks: readonly number[], e
 /** int d xi/(2 pi) at T = 0 on panels in ln xi, ends at the kinks; again with fewer nodes to see what is lost. */
 function integrateOverXi(job: Job, breaks: readonly number[]): void {
 	const { ledger } = job;
-	const unit = SPEED_OF_LIGHT / (2 * job.distance);
+	const { clearance } = settingAt(job.prepared, SPEED_OF_LIGHT / job.distance, job.distance);
+	const unit = SPEED_OF_LIGHT / (2 * job.distance * clearance);
 	const [lowest, highest] = [unit * 1e-17, unit * LAST_PHASE];
 	const marks = [lowest, ...breaks.filter((xi) => xi > lowest && xi < highest), highest];
 	for (let i = 1; i < marks.length; i++) {
