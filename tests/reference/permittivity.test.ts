@@ -8,7 +8,10 @@ import {
 	radPerSFromWavelength,
 	type PermittivityModel
 } from '../../src/lib/engine/index.ts';
-import { susceptibility } from '../../src/lib/engine/permittivity/evaluator.ts';
+import { ONE_ELECTRON_EV2 } from '../../src/lib/engine/checks/f-sum-rule.ts';
+import { oscillatorStrength } from '../../src/lib/engine/checks/oscillator-strength.ts';
+import { AVOGADRO, BOLTZMANN, REDUCED_PLANCK, SPEED_OF_LIGHT } from '../../src/lib/engine/constants.ts';
+import { permittivityOnRealAxis, susceptibility } from '../../src/lib/engine/permittivity/evaluator.ts';
 
 /**
  * Figures worked out for this project with 25 to 60 digits, independent of the engine; the unit figures follow from the
@@ -23,6 +26,18 @@ describe('units and frequencies', () => {
 		['1 eV as an ordinary frequency', radPerSFromHz(2.417989242084918e14), 1.519267447878626e15],
 		['1 eV as a wave number', radPerSFromPerCm(8.065543937349212e3), 1.519267447878626e15],
 		['1 eV as a vacuum wavelength', radPerSFromWavelength(1.239841984332003e-6), 1.519267447878626e15],
+		[
+			'a plasma energy of 9 eV as a wavelength',
+			radPerSFromWavelength(1.377602204813336e-7),
+			9 * RAD_PER_S_PER_EV
+		],
+		['hbar', REDUCED_PLANCK, 1.054571817646156e-34],
+		['hbar c', REDUCED_PLANCK * SPEED_OF_LIGHT, 3.16152677349669e-26],
+		[
+			'the thermal length at 300 K',
+			(REDUCED_PLANCK * SPEED_OF_LIGHT) / (BOLTZMANN * 300),
+			7.63294840203578e-6
+		],
 		['the first Matsubara frequency at 300 K', matsubaraFrequency(1, 300), 2.467790253640998e14],
 		['the same at 298.15 K', matsubaraFrequency(1, 298.15), 2.452572213743545e14],
 		['the same at 293.15 K', matsubaraFrequency(1, 293.15), 2.411442376182862e14]
@@ -83,5 +98,33 @@ describe('eps(i xi), energies in eV', () => {
 		['the degenerate segment omega^-2', bare([2, 5], [2 ** -2, 5 ** -2]), 3, 1 + 3.08113464394928e-2, 1e-13]
 	])('%s', (_, model, xiEv, figure, tolerance) => {
 		expect(off(permittivityOnImaginaryAxis(model)(xiEv * RAD_PER_S_PER_EV), figure)).toBeLessThan(tolerance);
+	});
+});
+
+describe("sums over eps''", () => {
+	it('of a straight segment, 1.5 - 0.2 E from 2 to 5 eV, as the sum of two that end at zero', () => {
+		const falling = bare([2, 5], [1.1, 0]);
+		const rising = bare([2, 5], [0, 0.5]);
+		const chi = permittivityOnImaginaryAxis({ kind: 'sum', of: [falling, rising] })(3 * RAD_PER_S_PER_EV) - 1;
+		expect(off(chi, 0.2460426616483167)).toBeLessThan(1e-12);
+	});
+
+	it('count the strength of an oscillator up to 10 eV', () => {
+		const at = permittivityOnRealAxis(lorentz);
+		const upTo10 = (steps: number) => {
+			const energiesEv = Array.from({ length: steps + 1 }, (_, i) => 0.001 * 1e4 ** (i / steps));
+			const epsilon2 = energiesEv.map((energy) => at(energy * RAD_PER_S_PER_EV).epsIm);
+			return Number(oscillatorStrength(bare(energiesEv, epsilon2))) / 16;
+		};
+		// What the points miss of the curve between them falls with the square of their spacing.
+		const [coarse, fine] = [upTo10(2000), upTo10(4000)];
+		expect(off(fine, 0.9661231852067317)).toBeLessThan(1e-4);
+		expect(off((4 * fine - coarse) / 3, 0.9661231852067317)).toBeLessThan(1e-7);
+	});
+
+	it('give the density of electrons that belongs to a plasma energy of 9 eV', () => {
+		const perCubicMetre = (81 / ONE_ELECTRON_EV2) * AVOGADRO * 1e6;
+		// The constant is kept with seven digits.
+		expect(off(perCubicMetre, 5.87449343944773e28)).toBeLessThan(1e-7);
 	});
 });
