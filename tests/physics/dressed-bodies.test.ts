@@ -163,12 +163,6 @@ describe('what is refused', () => {
 		]);
 	});
 
-	it('derivatives to what they do not know', () => {
-		const left: MaterialModel = { ...glass, sheet: { kind: 'constant', siemens: 1e-4 } };
-		const request = { ...between(left, glass), include: ['sensitivity' as const] };
-		expect(paths(request)).toEqual(['include']);
-	});
-
 	it('a sheet against a medium that conducts without ions', () => {
 		const left: MaterialModel = { ...glass, sheet: { kind: 'constant', siemens: 1e-4 } };
 		const medium: MaterialModel = {

@@ -321,7 +321,10 @@ export interface Kernel {
 }
 
 export interface PlaceSensitivity {
-	/** Path in the arrangement: `left.substrate`, `left.layers[0].of`, `medium`. */
+	/**
+	 * Path in the arrangement: `left.substrate`, `left.layers[0].of`, `medium`. A uniaxial place has its permittivity in the
+	 * plane there and, apart, that along its normal as `left.substrate.normal`.
+	 */
 	place: string;
 	/** Derivatives to eps(i xi) of one term n, at the frequencies of the answer (at T = 0 per rad/s of xi). */
 	freeEnergyJPerM2: number[];
@@ -330,8 +333,10 @@ export interface PlaceSensitivity {
 	static?: EnergyAndPressure;
 	/** What integration over wave number leaves open, relative to the largest derivative of all places and frequencies. */
 	errorBound: number;
-	/** Of eps - 1 as a whole. */
+	/** Of eps - 1 as a whole; a plasma frequency that counts at n = 0 in TE moves with it. */
 	elasticity: Elasticity;
+	/** Of the conductivity of a sheet on the place. */
+	sheet?: Elasticity;
 	kernel: Kernel;
 	/** Tables: elasticity of what lies below, inside and above the measured points. */
 	reliance?: { below: Elasticity; inside: Elasticity; above: Elasticity };

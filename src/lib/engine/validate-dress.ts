@@ -1,6 +1,5 @@
 import { materialsByPlace } from './analysis/places.ts';
 import type { ForceRequest, MaterialModel } from './contract.ts';
-import { isDressed } from './dress.ts';
 import { ENGINE_LIMITS as limits } from './limits.ts';
 import { susceptibility } from './permittivity/evaluator.ts';
 import { conducts } from './permittivity/susceptibility.ts';
@@ -55,19 +54,4 @@ export function checkDressedBodies(issues: Issue[], arrangement: ForceRequest['a
 		if ([permittivity, normal.permittivity].some((model) => conducts(susceptibility(model).atZero)))
 			issues.push({ path: `${path}.normal`, message });
 	}
-}
-
-/** Derivatives know isotropic places without sheets only. */
-export function checkDressedExtras(
-	issues: Issue[],
-	{ arrangement, include, rivals = [] }: ForceRequest
-): void {
-	const asked = include.filter((one) => one === 'terms' || one === 'sensitivity' || one === 'uncertainty');
-	if (asked.length === 0) return;
-	const materials = [...materialsByPlace(arrangement).values(), ...rivals.map(({ of }) => of)];
-	if (!materials.some(isDressed)) return;
-	issues.push({
-		path: 'include',
-		message: `asks for ${asked.join(', ')}, which uniaxial bodies and conducting sheets do not have: leave it out`
-	});
 }

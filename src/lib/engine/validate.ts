@@ -4,7 +4,7 @@ import { susceptibility } from './permittivity/evaluator.ts';
 import { conducts } from './permittivity/susceptibility.ts';
 import { Refusal, type Issue } from './refusal.ts';
 import { ionsStated } from './system.ts';
-import { checkDress, checkDressedBodies, checkDressedExtras, checkPlainMedium } from './validate-dress.ts';
+import { checkDress, checkDressedBodies, checkPlainMedium } from './validate-dress.ts';
 import { checkRange } from './validate-number.ts';
 import { checkIons } from './validate-ions.ts';
 import { checkExtras, checkUncertainty } from './validate-uncertainty.ts';
@@ -44,7 +44,6 @@ export function checkRequest(request: ForceRequest): void {
 		checkRange(issues, 'arrangement.temperatureK', arrangement.temperatureK, limits.temperatureK, 'K (or 0)');
 	}
 	checkMedium(issues, request);
-	checkDressedExtras(issues, request);
 	checkExtras(issues, request);
 	request.rivals?.forEach(({ of }, i) => checkMaterial(issues, `rivals[${i}].of`, of));
 	checkRoughness(issues, request, separationsOf);

@@ -60,6 +60,7 @@ const placeSensitivity = z
 		static: z.object({ freeEnergyJPerM2: z.number(), pressurePa: z.number() }).optional(),
 		errorBound: z.number(),
 		elasticity,
+		sheet: elasticity.optional().meta({ description: 'of the conductivity of a sheet on the place' }),
 		kernel,
 		reliance: z
 			.object({ below: elasticity, inside: elasticity, above: elasticity })

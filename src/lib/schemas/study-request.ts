@@ -1,7 +1,7 @@
 import type { Roughness } from '../engine/contract.ts';
 import { closestSeparationNm } from '../engine/shapes/roughness.ts';
 import type { ForceRequestInput, PinnedMaterial } from './force.ts';
-import { materialIn, slotsOf } from './study-slots.ts';
+import { materialIn } from './study-slots.ts';
 import type { ModelChoice, SlotMaterial, Study, StudyBody } from './study.ts';
 
 /** What the engine is asked for one model choice of a study. */
@@ -87,11 +87,5 @@ export function choiceRequest(
 	};
 }
 
-/** The long answers that a choice can be asked for: derivatives know isotropic places without sheets only. */
-export function detailsFor(study: Study, choice: ModelChoice): ForceRequestInput['include'] {
-	const dressed = slotsOf(study).some((slot) => {
-		const material = materialIn(study, choice, slot);
-		return material?.normal !== undefined || material?.sheetSiemens !== undefined;
-	});
-	return dressed ? ['analysis'] : ['analysis', 'terms', 'sensitivity', 'uncertainty'];
-}
+/** The long answers at one separation. */
+export const DETAILS: ForceRequestInput['include'] = ['analysis', 'terms', 'sensitivity', 'uncertainty'];

@@ -1,5 +1,5 @@
 import { encodeStudy } from '../../schemas/study-encode.ts';
-import { choiceRequest, closestNm, detailsFor } from '../../schemas/study-request.ts';
+import { choiceRequest, closestNm, DETAILS } from '../../schemas/study-request.ts';
 import { CHOICES_MAX } from '../../schemas/study-limits.ts';
 import type { Study } from '../../schemas/study.ts';
 import type { Edit } from '../arrangement/edits.ts';
@@ -144,9 +144,7 @@ export class StudySession {
 		this.details.forEach((curve, index) => {
 			const choice = choices[index];
 			if (choice && wanted)
-				curve.ask(choiceRequest(this.study, choice, [atNm], detailsFor(this.study, choice)), {
-					keepPrevious: false
-				});
+				curve.ask(choiceRequest(this.study, choice, [atNm], DETAILS), { keepPrevious: false });
 			else curve.clear();
 		});
 	}

@@ -11,7 +11,13 @@ import type {
 import type { PlateForces } from '../lifshitz/plates.ts';
 import { tableShares, type TableModel } from '../permittivity/table.ts';
 import type { Substance, System } from '../system.ts';
-import { frequencyResponse, type FrequencyResponse } from './frequency-response.ts';
+import type { ZeroFrequencyMaterial } from '../reflection/zero-frequency.ts';
+import {
+	frequencyResponse,
+	type FrequencyResponse,
+	type Responder,
+	type Slots
+} from './frequency-response.ts';
 import { frequencyRule, summed, type RuleNode } from './frequency-rule.ts';
 import { kernelOf } from './kernel.ts';
 
@@ -20,6 +26,11 @@ interface Place {
 	path: string;
 	material: MaterialModel;
 	substance: Substance;
+	/** Where its derivatives stand, and those of a sheet on it. */
+	slot: number;
+	sheet: number | null;
+	/** Place of its undamped carriers at n = 0; along the normal there are none that count. */
+	carriers: ZeroFrequencyMaterial | null;
 }
 
 /** Both quantities at every frequency and at n = 0, in SI units, for one place. */
@@ -28,29 +39,65 @@ export interface PlaceDerivatives {
 	pressure: Float64Array;
 	/** Half weight included; zero where the static term does not depend on it. */
 	static: { freeEnergy: number; pressure: number };
+	/** Of the n = 0 TE term to the logarithm of the square of the plasma frequency, half weight included. */
+	plasma: { freeEnergy: number; pressure: number };
+	/** (rad/s)^2 that the derivative above belongs to. */
+	plasmaSquare: number;
 }
 
 /**
- * Places that derivatives are given for, left body first and from the gap outwards, the medium last; what lies behind an
- * ideal conductor is not seen.
+ * Places that derivatives are given for, left body first and from the gap outwards, then the medium, then permittivities
+ * along the normal of uniaxial places; what lies behind an ideal conductor is not seen.
  */
-function placesOf(system: System, { arrangement }: ForceRequest): Place[] {
-	const of = (side: 'left' | 'right'): Place[] => {
+function placesOf(system: System, { arrangement }: ForceRequest, [left, right]: Responder['slots']): Place[] {
+	const alongNormals: Place[] = [];
+	const of = (side: 'left' | 'right', slots: Slots): Place[] => {
 		const { layers, substrate } = arrangement[side];
+		const body = system[side];
 		const all = [
 			...layers.map((layer, i) => ({ path: `${side}.layers[${i}].of`, material: layer.of })),
 			{ path: `${side}.substrate`, material: substrate }
 		];
-		return system[side].places.map((index, j) => ({ ...all[j], substance: system.substances[index] }));
+		return body.places.map((index, j) => {
+			const { path, material } = all[j];
+			const normal = body.dress?.normals[j] ?? index;
+			if (slots.normal !== null && normal !== index && material.normal !== undefined)
+				alongNormals.push({
+					path: `${path}.normal`,
+					material: { permittivity: material.normal.permittivity },
+					substance: system.substances[normal],
+					slot: slots.normal + j,
+					sheet: null,
+					carriers: null
+				});
+			const covered = slots.sheet !== null && (body.dress?.sheets[j] ?? null) !== null;
+			return {
+				path,
+				material,
+				substance: system.substances[index],
+				slot: slots.own + j,
+				sheet: covered && slots.sheet !== null ? slots.sheet + j : null,
+				carriers: body.zero[j + 1]
+			};
+		});
 	};
-	const medium = { path: 'medium', material: arrangement.medium, substance: system.substances[0] };
-	return [...of('left'), ...of('right'), medium];
+	const bodies = [...of('left', left), ...of('right', right)];
+	const medium = {
+		path: 'medium',
+		material: arrangement.medium,
+		substance: system.substances[0],
+		slot: bodies.length,
+		sheet: null,
+		carriers: null
+	};
+	return [...bodies, medium, ...alongNormals];
 }
 
 /** What a separation's result depends on, prepared: derivatives and the rule that sums them. */
 export interface SeparationResponse {
 	nodes: RuleNode[];
-	places: (Place & PlaceDerivatives)[];
+	places: (Place &
+		PlaceDerivatives & { bySheet: Pick<PlaceDerivatives, 'freeEnergy' | 'pressure'> | null })[];
 	/** Largest error of a derivative over the largest derivative. */
 	errorBound: number;
 }
@@ -73,16 +120,26 @@ export function separationResponse(
 	const scales = { freeEnergy: scale, pressure: -scale / separation };
 	const found = nodes.map(({ xi }) => responder.at(xi));
 	const zero = system.temperature > 0 ? responder.atZero() : null;
-	const places = placesOf(system, request).map((place, index) => ({
+	const plasma = system.temperature > 0 ? responder.plasmaAtZero() : null;
+	const halfOf = (one: FrequencyResponse | null, slot: number): { freeEnergy: number; pressure: number } => ({
+		freeEnergy: one === null ? 0 : (scales.freeEnergy * one.freeEnergyBy[slot]) / 2 + 0,
+		pressure: one === null ? 0 : (scales.pressure * one.pressureBy[slot]) / 2 + 0
+	});
+	const rows = (slot: number): { freeEnergy: Float64Array; pressure: Float64Array } => ({
+		freeEnergy: Float64Array.from(found, (one) => scales.freeEnergy * one.freeEnergyBy[slot] + 0),
+		pressure: Float64Array.from(found, (one) => scales.pressure * one.pressureBy[slot] + 0)
+	});
+	const nothing = { freeEnergy: 0, pressure: 0 };
+	const places = placesOf(system, request, responder.slots).map((place) => ({
 		...place,
-		freeEnergy: Float64Array.from(found, (one) => scales.freeEnergy * one.freeEnergyBy[index] + 0),
-		pressure: Float64Array.from(found, (one) => scales.pressure * one.pressureBy[index] + 0),
-		static: {
-			freeEnergy: zero === null ? 0 : (scales.freeEnergy * zero.freeEnergyBy[index]) / 2 + 0,
-			pressure: zero === null ? 0 : (scales.pressure * zero.pressureBy[index]) / 2 + 0
-		}
+		...rows(place.slot),
+		static: halfOf(zero, place.slot),
+		plasma: place.carriers === null ? nothing : halfOf(plasma, place.slot),
+		plasmaSquare: place.carriers?.square ?? 0,
+		bySheet: place.sheet === null ? null : rows(place.sheet)
 	}));
-	return { nodes, places, errorBound: worstError(zero === null ? found : [...found, zero]) };
+	const all = [...found, ...[zero, plasma].filter((one) => one !== null)];
+	return { nodes, places, errorBound: worstError(all) };
 }
 
 function worstError(found: readonly FrequencyResponse[]): number {
@@ -96,18 +153,23 @@ function worstError(found: readonly FrequencyResponse[]): number {
 	return worst;
 }
 
-/** Change of both quantities where eps - 1 of a place changes by `change(xi)`, to first order, with an absolute error. */
+/**
+ * Change of both quantities where eps - 1 of a place changes by `change(xi)`, to first order, with an absolute error.
+ *
+ * @param changeOfPlasma  relative change of the square of the plasma frequency that counts at n = 0
+ */
 export function changeBy(
 	{ nodes, errorBound }: Pick<SeparationResponse, 'nodes' | 'errorBound'>,
 	place: PlaceDerivatives,
 	change: (xi: number) => number,
-	changeAtZero: number
+	changeAtZero: number,
+	changeOfPlasma = 0
 ): { freeEnergy: { value: number; error: number }; pressure: { value: number; error: number } } {
 	const changes = nodes.map(({ xi }) => change(xi));
 	const of = (quantity: 'freeEnergy' | 'pressure'): { value: number; error: number } => {
 		const derivative = place[quantity];
 		const { value, error } = summed(nodes, (i) => derivative[i] * changes[i]);
-		const still = place.static[quantity] * changeAtZero;
+		const still = place.static[quantity] * changeAtZero + place.plasma[quantity] * changeOfPlasma;
 		const size = nodes.reduce((sum, { fine }, i) => sum + Math.abs(fine * derivative[i] * changes[i]), 0);
 		return { value: value + still, error: error + errorBound * (size + Math.abs(still)) };
 	};
@@ -116,7 +178,7 @@ export function changeBy(
 
 /**
  * What the numbers of one separation depend on: derivatives, their kernel over real frequency, elasticities, and for tables the
- * share that rests on each extrapolation. The rule of the n = 0 term of a conductor is a statement of its own and no part of it.
+ * share that rests on each extrapolation. Whether a conductor counts at n = 0 is a statement of its own and no part of it.
  *
  * @param forces  of the smooth plates at this separation
  */
@@ -137,21 +199,27 @@ export function sensitivity(
 	};
 }
 
+/** A sheet reflects the static TM term wholly and the TE term not at all, whatever it conducts. */
+const NOTHING_STATIC = {
+	static: { freeEnergy: 0, pressure: 0 },
+	plasma: { freeEnergy: 0, pressure: 0 },
+	plasmaSquare: 0
+};
+
 function placeSensitivity(
-	place: Place & PlaceDerivatives,
+	place: SeparationResponse['places'][number],
 	response: SeparationResponse,
 	fine: readonly number[],
 	forces: PlateForces
 ): PlaceSensitivity {
 	const { chi } = place.substance;
 	if (chi === null) throw new RangeError('an ideal conductor has no permittivity to derive by');
-	const elasticityOf = (change: (xi: number) => number, atZero: number): Elasticity => {
-		const { freeEnergy, pressure } = changeBy(response, place, change, atZero);
-		return {
-			...named('freeEnergy', freeEnergy, forces.value[0], forces.bound[0]),
-			...named('pressure', pressure, forces.value[1], forces.bound[1])
-		};
-	};
+	const named = ({ freeEnergy, pressure }: ReturnType<typeof changeBy>): Elasticity => ({
+		...share('freeEnergy', freeEnergy, forces.value[0], forces.bound[0]),
+		...share('pressure', pressure, forces.value[1], forces.bound[1])
+	});
+	const elasticityOf = (change: (xi: number) => number, atZero: number, ofPlasma = 0): Elasticity =>
+		named(changeBy(response, place, change, atZero, ofPlasma));
 	const tables = tablesIn(place.material.permittivity).map(tableShares);
 	const part = (which: 'below' | 'inside' | 'above'): Elasticity =>
 		elasticityOf(
@@ -167,7 +235,12 @@ function placeSensitivity(
 			? {}
 			: { static: { freeEnergyJPerM2: still.freeEnergy, pressurePa: still.pressure } }),
 		errorBound: response.errorBound,
-		elasticity: elasticityOf(chi.atXi, chi.atZero.finite),
+		elasticity: elasticityOf(chi.atXi, chi.atZero.finite, 1),
+		...(place.bySheet === null
+			? {}
+			: {
+					sheet: named(changeBy(response, { ...NOTHING_STATIC, ...place.bySheet }, () => 1, 0))
+				}),
 		kernel: kernelOf(response, place, chi, forces),
 		...(tables.length === 0
 			? {}
@@ -181,7 +254,7 @@ function tablesIn(model: PermittivityModel): TableModel[] {
 }
 
 /** A change over its total; absent where the total is not known from zero. */
-function named<N extends string>(
+function share<N extends string>(
 	name: N,
 	{ value, error }: { value: number; error: number },
 	total: number,

@@ -9,6 +9,7 @@ import type {
 import type { PlateForces } from '../lifshitz/plates.ts';
 import { susceptibility } from '../permittivity/evaluator.ts';
 import { tableShares } from '../permittivity/table.ts';
+import { zeroFrequencyMaterial } from '../reflection/zero-frequency.ts';
 import type { System } from '../system.ts';
 import { byParameter } from './model-parameters.ts';
 import { separationResponse, type SeparationResponse } from './sensitivity.ts';
@@ -18,6 +19,8 @@ import { interpolated, resultByPoint } from './table-weights.ts';
 interface Carried {
 	byNode: number[];
 	still: number;
+	/** To the square of the plasma frequency at n = 0, (rad/s)^-2. */
+	plasma: number;
 }
 
 type Quantity = 'freeEnergy' | 'pressure';
@@ -78,21 +81,31 @@ function carried(
 	const byNode = nodes.map((node, k) =>
 		indices.reduce((sum, index) => sum + node[rule] * places[index][quantity][k], 0)
 	);
-	return { byNode, still: indices.reduce((sum, index) => sum + places[index].static[quantity], 0) };
+	const sum = (of: (place: SeparationResponse['places'][number]) => number): number =>
+		indices.reduce((total, index) => total + of(places[index]), 0);
+	return {
+		byNode,
+		still: sum((place) => place.static[quantity]),
+		plasma: sum(({ plasma, plasmaSquare }) => (plasmaSquare === 0 ? 0 : plasma[quantity] / plasmaSquare))
+	};
 }
 
 function variance(
-	{ permittivity }: MaterialModel,
+	{ permittivity, zeroFrequency }: MaterialModel,
 	uncertainty: Uncertainty,
 	{ nodes }: SeparationResponse,
-	{ byNode, still }: Carried
+	{ byNode, still, plasma }: Carried
 ): number {
-	/** Change of the result by a change of eps - 1 given at the nodes and, last, at xi = 0. */
+	/** Change of the result by a change of eps - 1 given at the nodes and, last, at xi = 0: what stays finite, then carriers. */
 	const change = (chi: readonly number[]): number =>
-		byNode.reduce((sum, derivative, k) => sum + derivative * chi[k], still * chi[byNode.length]);
+		byNode.reduce(
+			(sum, derivative, k) => sum + derivative * chi[k],
+			still * chi[byNode.length] + plasma * chi[byNode.length + 1]
+		);
 	const chiOf = (model: MaterialModel['permittivity']): number[] => {
 		const { atXi, atZero } = susceptibility(model);
-		return [...nodes.map(({ xi }) => atXi(xi)), atZero.finite];
+		const { square } = zeroFrequencyMaterial(atZero, 1, zeroFrequency);
+		return [...nodes.map(({ xi }) => atXi(xi)), atZero.finite, square];
 	};
 	switch (uncertainty.kind) {
 		case 'scale':
