@@ -354,6 +354,8 @@ export interface Sensitivity {
 export interface PointUncertainty {
 	freeEnergyJPerM2: BoundedFigure;
 	pressurePa: BoundedFigure;
+	/** Departure of displaced results from the first order, as a share of it; at 0.2 and more the answer warns. */
+	beyondFirstOrder?: { freeEnergy: number; pressure: number };
 	/** One entry a material with a stated uncertainty; independent of each other, so their squares add up. */
 	contributions: Contribution[];
 }

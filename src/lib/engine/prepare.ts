@@ -13,6 +13,7 @@ import { plates, type PlateForces } from './lifshitz/plates.ts';
 import { nonRetardedLimit } from './analysis/non-retarded.ts';
 import { pointAnalysis } from './analysis/point-analysis.ts';
 import { withRival } from './analysis/places.ts';
+import { COMPARED_ACCURACY } from './analysis/beyond-first-order.ts';
 import { pointUncertainty, spreadOver } from './analysis/uncertainty.ts';
 import { sensitivity } from './analysis/sensitivity.ts';
 import { terms } from './analysis/terms.ts';
@@ -72,6 +73,7 @@ function prepared(request: ForceRequest, asked: ForceRequest): Preparation {
 		return roughness ? roughPlates(evaluateRival, roughness, platesAccuracy) : evaluateRival;
 	});
 	const wantsUncertainty = include.includes('uncertainty');
+	const compared = plates(system, COMPARED_ACCURACY);
 	const wantsSensitivity = include.includes('sensitivity');
 	const cold =
 		wantsTerms && system.temperature > 0
@@ -123,7 +125,9 @@ function prepared(request: ForceRequest, asked: ForceRequest): Preparation {
 				...(wantsSensitivity
 					? { sensitivity: sensitivity(system, request, separation, smooth(separation)) }
 					: {}),
-				...(wantsUncertainty ? { uncertainty: pointUncertainty(system, request, separation) } : {}),
+				...(wantsUncertainty
+					? { uncertainty: pointUncertainty(system, request, separation, compared(separation)) }
+					: {}),
 				...(rivals.length > 0
 					? {
 							spread: spreadOver(

@@ -35,6 +35,7 @@ export function warningsFor(request: ForceRequest, points: readonly ForcePoint[]
 		...curvature(request, points),
 		...roughness(request),
 		...notMet(points),
+		...beyondFirstOrder(points),
 		...reliance(places, arrangement.temperatureK),
 		...imaginaryReach(places, arrangement.temperatureK),
 		...neverFalling(places),
@@ -98,6 +99,26 @@ function notMet(points: readonly ForcePoint[]): Warning[] {
 		{
 			code: 'accuracy',
 			text: `The accuracy asked for was not reached at ${missed} of ${points.length} points; each says why.`
+		}
+	];
+}
+
+/** Departure from the first order, as a share of it, from which on a band is called coarse. */
+const SECOND_ORDER = 0.2;
+
+function beyondFirstOrder(points: readonly ForcePoint[]): Warning[] {
+	const shares = points.flatMap(({ uncertainty }) =>
+		uncertainty?.beyondFirstOrder
+			? [Math.max(uncertainty.beyondFirstOrder.freeEnergy, uncertainty.beyondFirstOrder.pressure)]
+			: []
+	);
+	const large = shares.filter((share) => share >= SECOND_ORDER).length;
+	if (large === 0) return [];
+	const worst = Math.max(...shares);
+	return [
+		{
+			code: 'uncertainty-order',
+			text: `What is stated about the data is so uncertain that displaced results depart from the first order by ${(100 * worst).toPrecision(2)} % of it (at ${large} of ${points.length} points it is above ${100 * SECOND_ORDER} %): the bands there are coarse. Compare rival data instead.`
 		}
 	];
 }

@@ -83,6 +83,10 @@ const pointUncertainty = z
 	.object({
 		freeEnergyJPerM2: bounded,
 		pressurePa: bounded,
+		beyondFirstOrder: z
+			.object({ freeEnergy: z.number(), pressure: z.number() })
+			.optional()
+			.meta({ description: 'departure of displaced results from the first order, as a share of it' }),
 		contributions: z.array(energyAndPressure.extend({ places: z.array(z.string()) }))
 	})
 	.meta({

@@ -12,6 +12,7 @@ import { tableShares } from '../permittivity/table.ts';
 import { zeroFrequencyMaterial } from '../reflection/zero-frequency.ts';
 import type { System } from '../system.ts';
 import { byParameter } from './model-parameters.ts';
+import { departure, keyOf, type Move } from './beyond-first-order.ts';
 import { separationResponse, type SeparationResponse } from './sensitivity.ts';
 import { interpolated, resultByPoint } from './table-weights.ts';
 
@@ -28,29 +29,37 @@ type Quantity = 'freeEnergy' | 'pressure';
 /**
  * Standard uncertainty of free energy and pressure from what is stated about the data, to first order (methods.md section
  * 10). Places that hold the same material move together; different materials are independent. `errorBound` is numerical: what
- * the sum over frequencies leaves open. For uncertainties beyond some ten per cent the first order itself is coarse.
+ * the sum over frequencies leaves open. What the first order itself leaves out is `beyondFirstOrder`, by displaced materials.
  *
  * @param separation  m
+ * @param forces      of the smooth plates, to the accuracy of comparison
  */
 export function pointUncertainty(
 	system: System,
 	request: ForceRequest,
-	separation: number
+	separation: number,
+	forces: PlateForces
 ): PointUncertainty {
 	const response = separationResponse(system, request, separation);
 	const groups = new Map<string, { material: MaterialModel; uncertainty: Uncertainty; places: number[] }>();
 	response.places.forEach(({ material }, index) => {
 		const { permittivity, uncertainty } = material;
 		if (uncertainty === undefined) return;
-		const key = JSON.stringify([permittivity, uncertainty]);
+		const key = keyOf(permittivity, uncertainty);
 		const known = groups.get(key) ?? { material, uncertainty, places: [] };
 		known.places.push(index);
 		groups.set(key, known);
 	});
 	const found = [...groups.values()].map(({ material, uncertainty, places }) => {
 		const of = (quantity: Quantity, rule: 'fine' | 'coarse'): number =>
-			Math.sqrt(variance(material, uncertainty, response, carried(response, places, quantity, rule)));
+			spreadOf(material, uncertainty, response, carried(response, places, quantity, rule)).deviation;
+		const deviations = [of('freeEnergy', 'fine'), of('pressure', 'fine')];
+		const beyond = (['freeEnergy', 'pressure'] as const).map((quantity, q) => {
+			const { move } = spreadOf(material, uncertainty, response, carried(response, places, quantity, 'fine'));
+			return departure(request, separation, material, move, deviations, forces)[q];
+		});
 		return {
+			beyond,
 			places: places.map((index) => response.places[index].path),
 			freeEnergy: [of('freeEnergy', 'fine'), of('freeEnergy', 'coarse')],
 			pressure: [of('pressure', 'fine'), of('pressure', 'coarse')]
@@ -61,9 +70,13 @@ export function pointUncertainty(
 		const errorBound = fine === 0 ? 0 : Math.abs(fine - coarse) / fine + response.errorBound;
 		return { value: fine, errorBound };
 	};
+	const [freeEnergyJPerM2, pressurePa] = [total('freeEnergy'), total('pressure')];
+	const share = (q: 0 | 1, deviation: number): number =>
+		deviation === 0 ? 0 : found.reduce((sum, { beyond }) => sum + beyond[q], 0) / deviation;
 	return {
-		freeEnergyJPerM2: total('freeEnergy'),
-		pressurePa: total('pressure'),
+		freeEnergyJPerM2,
+		pressurePa,
+		beyondFirstOrder: { freeEnergy: share(0, freeEnergyJPerM2.value), pressure: share(1, pressurePa.value) },
 		contributions: found.map(({ places, freeEnergy, pressure }) => ({
 			places,
 			freeEnergyJPerM2: freeEnergy[0],
@@ -90,12 +103,13 @@ function carried(
 	};
 }
 
-function variance(
+/** Standard deviation of a result, and the move of the material by one of its own that makes the result move so. */
+function spreadOf(
 	{ permittivity, zeroFrequency }: MaterialModel,
 	uncertainty: Uncertainty,
 	{ nodes }: SeparationResponse,
 	{ byNode, still, plasma }: Carried
-): number {
+): { deviation: number; move: Move } {
 	/** Change of the result by a change of eps - 1 given at the nodes and, last, at xi = 0: what stays finite, then carriers. */
 	const change = (chi: readonly number[]): number =>
 		byNode.reduce(
@@ -109,7 +123,10 @@ function variance(
 	};
 	switch (uncertainty.kind) {
 		case 'scale':
-			return (uncertainty.relative * change(chiOf(permittivity))) ** 2;
+			return {
+				deviation: Math.abs(uncertainty.relative * change(chiOf(permittivity))),
+				move: { kind: 'scale', relative: uncertainty.relative }
+			};
 		case 'table': {
 			if (permittivity.kind !== 'table') throw new RangeError('uncertainties of a table without a table');
 			const shares = tableShares(permittivity);
@@ -126,17 +143,25 @@ function variance(
 			);
 			const relative = interpolated(uncertainty.energiesEv, uncertainty.relative, permittivity.energiesEv);
 			const changes = points.map((point, i) => point * relative[i]);
-			return uncertainty.correlation === 'common'
-				? changes.reduce((sum, one) => sum + one, 0) ** 2
-				: changes.reduce((sum, one) => sum + one * one, 0);
+			if (uncertainty.correlation === 'common') {
+				const together = changes.reduce((sum, one) => sum + one, 0);
+				return { deviation: Math.abs(together), move: { kind: 'points', relative } };
+			}
+			const deviation = Math.hypot(0, ...changes);
+			const alongSlope = relative.map((one, i) => (deviation === 0 ? 0 : (one * changes[i]) / deviation));
+			return { deviation, move: { kind: 'points', relative: alongSlope } };
 		}
 		case 'parameters': {
 			const slopes = uncertainty.names.map((name) => change(byParameter(permittivity, name, chiOf)));
-			const sum = slopes.reduce(
-				(total, a, i) => total + slopes.reduce((row, b, j) => row + a * uncertainty.covariance[i][j] * b, 0),
-				0
+			const moves = uncertainty.covariance.map((row) => row.reduce((sum, c, j) => sum + c * slopes[j], 0));
+			const deviation = Math.sqrt(
+				Math.max(
+					0,
+					moves.reduce((sum, one, i) => sum + one * slopes[i], 0)
+				)
 			);
-			return Math.max(0, sum);
+			const along = moves.map((one) => (deviation === 0 ? 0 : one / deviation));
+			return { deviation, move: { kind: 'parameters', names: uncertainty.names, change: along } };
 		}
 	}
 }
