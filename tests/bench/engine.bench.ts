@@ -14,6 +14,9 @@ import { screen, screeningMaterials } from './screening.ts';
 const RUNS = 9;
 const WARM_UP = 3;
 
+/** Estimates further than this from what a request takes are remarked on. */
+const MOST_OFF = 2;
+
 const median = (values: number[]): number => values.sort((a, b) => a - b)[values.length >> 1];
 
 /** Processor time of this process: other work on the machine does not count. */
@@ -65,7 +68,10 @@ function print(cases: BenchCase[]): void {
 		const { warm, cold, estimated, evaluations, met } = measure(one);
 		const cells = [warm, cold, estimated].map((value) => (value * 1e6).toFixed(1).padStart(10));
 		const count = evaluations.toFixed(0).padStart(10);
-		console.log(one.name.padEnd(36), ...cells, count, `${Math.round(100 * met)} %`.padStart(6));
+		const ratio = estimated / cold;
+		const remark =
+			ratio < 1 / MOST_OFF || ratio > MOST_OFF ? `  estimate off by ${ratio.toPrecision(2)}` : '';
+		console.log(one.name.padEnd(36), ...cells, count, `${Math.round(100 * met)} %`.padStart(6) + remark);
 	}
 }
 
