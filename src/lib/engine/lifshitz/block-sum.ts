@@ -70,8 +70,15 @@ const POWER_FALL = 4 * Math.LN2;
 /** What polynomials beyond the last measured one may add together, over the geometric estimate. */
 const BLOCK_SAFETY = 20;
 
-/** Beside a zero the coefficients seen may all be small at once; the worst of 10^4 random requests missed by 4.4. */
-const ZERO_SAFETY = 8;
+/**
+ * Beside a zero of steeply falling terms the coefficients seen may all be small at once; the worst of 10^4 random requests
+ * missed by 4.4. Terms that have come back from a zero have grown by this much somewhere in the block.
+ */
+const ZERO_SAFETY = 6;
+const COME_BACK = 1.5;
+
+/** Where terms fall less than this the class above holds their zeros too. */
+const STEEP = 2.5;
 
 /** Next to xi = 0 the last coefficients themselves stand for the error: the rule is far better than that. */
 const REMAINDER_SAFETY = 2;
@@ -117,11 +124,15 @@ export function blockSum(system: System, level: Level, quantities: Quantities): 
 		if (!exact) projected.fill(0);
 		// Terms that grow inside a block have passed a zero, or will not be steep.
 		let rising = false;
+		let comingBack = false;
+		let lowest = Infinity;
 		for (let i = 0; i < xi.length; i++) {
 			at(block, i, separation, time, grade);
 			phases[1] = terms.phase;
 			const size = Math.abs(terms.te[gauge]) + Math.abs(terms.tm[gauge]);
 			rising ||= i > 0 && size > sizes[1];
+			comingBack ||= size > COME_BACK * lowest;
+			lowest = Math.min(lowest, size);
 			sizes[1] = size;
 			if (i === 0) {
 				phases[0] = phases[1];
@@ -157,8 +168,10 @@ export function blockSum(system: System, level: Level, quantities: Quantities): 
 		for (let q = 0; q < 3; q++) tally.magnitude[q] += last[q];
 		if (exact) return;
 		const early = rising ? DOUBLE_ZERO : 0;
-		const falls = fallsOf(block.xi.length, steepness(block, phases, sizes), early);
-		const safety = extrapolate ? BLOCK_SAFETY * (rising ? ZERO_SAFETY : 1) * falls.beyond : REMAINDER_SAFETY;
+		const steep = steepness(block, phases, sizes);
+		const falls = fallsOf(block.xi.length, steep, early);
+		const beside = comingBack && steep > STEEP ? ZERO_SAFETY : 1;
+		const safety = extrapolate ? BLOCK_SAFETY * beside * falls.beyond : REMAINDER_SAFETY;
 		for (let q = 0; q < 3; q++) {
 			const te = lastCoefficient(projected, 6 * q, falls, rising);
 			const tm = lastCoefficient(projected, 6 * q + 3, falls, rising);
