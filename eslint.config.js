@@ -45,11 +45,11 @@ const boundaries = [
 		forbid: [['(^|/)(server|components|routes)(/|$)', 'format serves both sides and imports neither']]
 	},
 	{
-		files: ['src/lib/study-sheet/**'],
+		files: ['src/lib/study-sheet/**', 'src/lib/screening/**'],
 		ignores: ['**/*.test.ts'],
 		forbid: [
-			['(^|/)(server|components|routes)(/|$)', 'the sheet serves page and server and imports neither'],
-			['^\\$app|^\\$env|^svelte', 'the sheet knows no framework']
+			['(^|/)(server|components|routes)(/|$)', 'what page and server share imports neither'],
+			['^\\$app|^\\$env|^svelte', 'what page and server share knows no framework']
 		]
 	},
 	{

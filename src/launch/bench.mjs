@@ -6,9 +6,14 @@ import { fileURLToPath } from 'node:url';
 import { build } from 'vite';
 
 /**
- * `npm run bench`: times the engine on one core and prints a table; `-- --against` also times a nested quadrature. The
+ * `npm run bench`: times the engine on one core and prints a table; `-- --against` also times a nested quadrature, `-- --workers`
+ * times screenings by worker processes instead. The
  * engine is bundled first, as it is for the server: what a loader puts around every module would be timed otherwise.
  */
+if (process.argv.includes('--workers')) {
+	const { benchWorkers } = await import('./bench-workers.mjs');
+	await benchWorkers();
+}
 const root = join(dirname(fileURLToPath(import.meta.url)), '..', '..');
 const folder = mkdtempSync(join(tmpdir(), 'hairsbreadth-bench-'));
 try {

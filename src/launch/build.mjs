@@ -15,7 +15,7 @@ const FILES = [
 	'vite.config.ts',
 	'vite.threads.config.ts'
 ];
-const PRODUCTS = ['build/index.js', 'build/threads/engine-task.js'];
+const PRODUCTS = ['build/index.js', 'build/threads/engine-task.js', 'build/threads/worker.js'];
 
 /** What does not end up in the build need not make it stale. */
 const LEFT_OUT = /\.test\.ts$|^src\/launch\//;

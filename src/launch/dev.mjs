@@ -4,6 +4,7 @@ import { openDatabase } from './database.mjs';
 import { ensurePackages } from './packages.mjs';
 import { startServer, unexpected } from './server.mjs';
 import { runStack } from './stack.mjs';
+import { keepWorkers, SOURCE_WORKER, workersWanted } from './workers.mjs';
 
 await runStack(async ({ onStop, asked }) => {
 	const { host, port, origin } = await chooseAddress();
@@ -25,6 +26,12 @@ await runStack(async ({ onStop, asked }) => {
 		show: true
 	});
 	onStop(server.stop);
+	const workers = await keepWorkers({
+		count: Math.min(1, workersWanted(process.env)),
+		args: SOURCE_WORKER,
+		env: { ...process.env, HAIRSBREADTH_DATABASE_URL: database.url }
+	});
+	onStop(workers.stop);
 	console.log(`\nHairsbreadth (development) is at ${origin}\n`);
 	await Promise.race([asked, server.ended.then(unexpected)]);
 });

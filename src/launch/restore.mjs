@@ -37,6 +37,8 @@ export async function restore(url, folder, { replace = false } = {}) {
 		}
 		if (present > 0) {
 			await sql.begin(async (tx) => {
+				// What waits in the queue comes back with the backup; chunks that were done since are done again.
+				await tx`drop schema if exists pgboss cascade`;
 				await tx`drop schema if exists drizzle cascade`;
 				await tx`drop schema public cascade`;
 				await tx`create schema public`;

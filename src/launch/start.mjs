@@ -7,6 +7,7 @@ import { ensurePackages } from './packages.mjs';
 import { stateFile } from './place.mjs';
 import { startServer, unexpected } from './server.mjs';
 import { runStack } from './stack.mjs';
+import { BUILT_WORKER, keepWorkers, workersWanted } from './workers.mjs';
 
 await runStack(async ({ onStop, asked }) => {
 	const { host, port, origin } = await chooseAddress();
@@ -37,6 +38,17 @@ await runStack(async ({ onStop, asked }) => {
 		healthUrl: `http://${reachable(host)}:${port}/api/v1/health`
 	});
 	onStop(server.stop);
+	const workers = await keepWorkers({
+		count: workersWanted(process.env),
+		args: BUILT_WORKER,
+		env: {
+			HAIRSBREADTH_LOG_FILE: stateFile('worker.log'),
+			...process.env,
+			NODE_ENV: 'production',
+			HAIRSBREADTH_DATABASE_URL: database.url
+		}
+	});
+	onStop(workers.stop);
 
 	console.log(
 		`Log: ${relative(process.cwd(), logFile) || logFile}. Ctrl-C stops everything that was started.`

@@ -13,6 +13,7 @@ import { root, stateFile } from './place.mjs';
 import { startCluster } from './postgres.mjs';
 import { startServer } from './server.mjs';
 import { runStack } from './stack.mjs';
+import { BUILT_WORKER, keepWorkers } from './workers.mjs';
 import { countExit, countReport } from './test-counts.mjs';
 
 /** @typedef {import('./test-counts.mjs').Counts} Counts */
@@ -88,6 +89,17 @@ async function browser({ onStop }) {
 		healthUrl: `${origin}/api/v1/health`
 	});
 	onStop(server.stop);
+	const workers = await keepWorkers({
+		count: 1,
+		args: BUILT_WORKER,
+		env: {
+			...process.env,
+			NODE_ENV: 'production',
+			HAIRSBREADTH_DATABASE_URL: cluster.url,
+			HAIRSBREADTH_LOG_LEVEL: 'warn'
+		}
+	});
+	onStop(workers.stop);
 	const report = freshReport('browser');
 	const { code } = await run(process.execPath, ['node_modules/@playwright/test/cli.js', 'test'], {
 		...shown,

@@ -82,6 +82,10 @@ test('a student is invited, duplicates the lead’s study, changes one choice, s
 		student.getByRole('region', { name: 'Spread over published versions' }).getByRole('row')
 	).toHaveCount(3);
 	await expect(student.getByRole('region', { name: 'Spread over published versions' })).toContainText('Pa');
+	// Where the film has become bulk.
+	await student.getByText(/^Ladder: one parameter swept/).click();
+	await student.getByRole('button', { name: 'Climb it' }).click();
+	await expect(student.getByText(/^A: bulk within 1 % from/)).toBeVisible({ timeout: 20_000 });
 	await expectAccessible(student);
 	await expect(student.getByRole('status').filter({ hasText: /^Saved \d/ })).toBeVisible({ timeout: 10_000 });
 

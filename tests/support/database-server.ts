@@ -3,6 +3,7 @@ import type { TestProject } from 'vitest/node';
 import { startCluster } from '../../src/launch/postgres.mjs';
 import { connect } from '../../src/lib/server/db/client.ts';
 import { migrate } from '../../src/lib/server/db/migrate.ts';
+import { prepareQueue } from '../../src/lib/server/jobs/queue.ts';
 import { seedLibrary } from '../../src/lib/server/library/seed.ts';
 
 /**
@@ -50,6 +51,7 @@ async function makeTemplate(server: URL, template: string): Promise<void> {
 	});
 	const url = new URL(template, server).href;
 	await migrate(url);
+	await prepareQueue(url);
 	const { database, close } = connect(url, 1);
 	try {
 		await seedLibrary(database, 'data-seed');

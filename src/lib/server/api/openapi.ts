@@ -6,6 +6,7 @@ import { withCuration } from './openapi-curation.ts';
 import { forcePaths } from './openapi-forces.ts';
 import { libraryPaths } from './openapi-library.ts';
 import { peoplePaths } from './openapi-people.ts';
+import { screeningPaths } from './openapi-screenings.ts';
 import { studyPaths } from './openapi-studies.ts';
 
 /** The description of the API, made from the schemas that check what comes in and out. */
@@ -16,7 +17,8 @@ const paths: ZodOpenApiPathsObject = {
 	...forcePaths,
 	...withCuration(libraryPaths),
 	...peoplePaths,
-	...studyPaths
+	...studyPaths,
+	...screeningPaths
 };
 
 const [pinned, inPlace] = materialChoiceDescribed.options;

@@ -1,4 +1,5 @@
 import { config } from '../config.ts';
+import { prepareQueue } from '../jobs/queue.ts';
 import { seedLibrary } from '../library/seed.ts';
 import { connect } from './client.ts';
 import { migrate } from './migrate.ts';
@@ -10,6 +11,7 @@ import { migrate } from './migrate.ts';
 const { databaseUrl } = config();
 
 await migrate(databaseUrl);
+await prepareQueue(databaseUrl);
 const { database, close } = connect(databaseUrl, 1);
 try {
 	const { written, unchanged } = await seedLibrary(database, 'data-seed');

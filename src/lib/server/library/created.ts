@@ -19,7 +19,7 @@ const BODY_MAX = 256 * 1024;
 
 function answerJson<Fields>(
 	{ request, url, locals }: PostEvent,
-	status: 200 | 201,
+	status: 200 | 201 | 202,
 	shape: z.ZodType<Fields>,
 	work: (actor: SignedIn, fields: Fields) => Promise<unknown>
 ): Promise<Response> {
@@ -55,3 +55,10 @@ export const steppedJson = <Fields>(
 	shape: z.ZodType<Fields>,
 	work: (actor: SignedIn, fields: Fields) => Promise<unknown>
 ): Promise<Response> => answerJson(event, 200, shape, work);
+
+/** Answers 202 with what was taken on and is not done yet. */
+export const acceptedJson = <Fields>(
+	event: PostEvent,
+	shape: z.ZodType<Fields>,
+	work: (actor: SignedIn, fields: Fields) => Promise<unknown>
+): Promise<Response> => answerJson(event, 202, shape, work);

@@ -21,7 +21,8 @@ const shapes = {
 	'study-input-withdrawn': z.object({ ...base, reason: z.string(), study: z.string(), studyId: z.string() }),
 	'study-comment': z.object({ by: z.string(), study: z.string(), studyId: z.string(), text: z.string() }),
 	'study-mention': z.object({ by: z.string(), study: z.string(), studyId: z.string(), text: z.string() }),
-	'study-given': z.object({ by: z.string(), study: z.string(), studyId: z.string() })
+	'study-given': z.object({ by: z.string(), study: z.string(), studyId: z.string() }),
+	'screening-finished': z.object({ screening: z.string(), screeningId: z.string() })
 };
 
 export type ReviewLetterKind = keyof typeof shapes;
@@ -31,7 +32,7 @@ export type ReviewLetter = {
 }[ReviewLetterKind];
 
 /** Told to owners of studies, who choose apart from reviewers whether they want mail of it. */
-export const isAboutStudy = (kind: ReviewLetterKind): boolean => kind.startsWith('study-');
+export const isAboutStudy = (kind: ReviewLetterKind): boolean => /^(study|screening)-/.test(kind);
 
 export const isReviewLetter = (kind: string): kind is ReviewLetterKind => Object.hasOwn(shapes, kind);
 
@@ -112,6 +113,14 @@ export function writeReviewLetter(kind: ReviewLetterKind, data: unknown, origin:
 				subject: `${by} gave you the study "${study}"`,
 				paragraphs: [`You own it now: you decide who sees it, and you are told of what it rests on.`],
 				link: { text: 'Open the study', href: `${origin}/studies/${studyId}` }
+			};
+		}
+		case 'screening-finished': {
+			const { screening, screeningId } = shapes[kind].parse(data);
+			return {
+				subject: `The screening "${screening}" has ended`,
+				paragraphs: ['Every arrangement is computed, and the list is ranked.'],
+				link: { text: 'See the result', href: `${origin}/screenings/${screeningId}` }
 			};
 		}
 		case 'study-comment':

@@ -29,6 +29,7 @@ export async function health(actor: SignedIn): Promise<HealthLine[]> {
 		clockLine(),
 		diskLine(),
 		mailLine(),
+		queueLine(),
 		chainLine(),
 		backupLine()
 	]);
@@ -73,6 +74,21 @@ async function diskLine(): Promise<HealthLine> {
 		text: `${((bavail * bsize) / GIGABYTE).toFixed(1)} GB are free where the application runs (${Math.round(free * 100)} %).`,
 		good: free >= DISK_LEAST
 	};
+}
+
+/** Screenings that should be under way, and whether anything came of it lately. */
+const QUEUE_SECONDS_MOST = 60;
+
+async function queueLine(): Promise<HealthLine> {
+	const [row] = await database().execute<{ live: number; chunks: number; idle: number | null }>(sql`
+		select count(*)::int as live, coalesce(sum(chunks - chunks_done), 0)::int as chunks,
+			extract(epoch from now() - max(greatest(created_at, coalesce(
+				(select max(done_at) from screening_chunk where screening_id = screening.id), created_at))))::float as idle
+		from screening where state in ('queued', 'running')`);
+	if (row.live === 0) return { name: 'Screenings', text: 'Nothing waits for a worker.', good: true };
+	const text = `${row.live} under way, ${row.chunks} chunks to go; the last one ended ${Math.round(row.idle ?? 0)} s ago.`;
+	const good = (row.idle ?? 0) <= QUEUE_SECONDS_MOST;
+	return { name: 'Screenings', text: good ? text : `${text} Is a worker running?`, good };
 }
 
 async function mailLine(): Promise<HealthLine> {
