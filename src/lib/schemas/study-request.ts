@@ -35,6 +35,14 @@ export function curveSeparations(study: Study): { from: number; to: number; coun
 	return { from, to: study.toNm, count, spacing: 'log' };
 }
 
+/** Enough for a band that is smooth in both logarithms. */
+const BAND_POINTS = 21;
+
+export const bandSeparations = (study: Study): ReturnType<typeof curveSeparations> => ({
+	...curveSeparations(study),
+	count: BAND_POINTS
+});
+
 /** Ions of a choice: its own statement, or that of the arrangement. */
 function ionsOf(
 	study: Study,

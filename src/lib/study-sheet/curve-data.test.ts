@@ -1,5 +1,5 @@
 import { describe, expect, it } from 'vitest';
-import { linePath, magnitudeAxis, magnitudePaths, spreadLabels } from './curve-data.ts';
+import { bandPath, linePath, magnitudeAxis, magnitudePaths, spreadLabels } from './curve-data.ts';
 import { logScale } from './log-scale.ts';
 
 const x = logScale([1, 1000], [0, 300]);
@@ -46,6 +46,14 @@ describe('magnitude strip', () => {
 		expect(magnitudePaths(series([-100, -10, -1], [true, false, false]), x, y).unmet).toBe(
 			'M100.0 50.0L200.0 100.0'
 		);
+	});
+});
+
+describe('bands', () => {
+	it('run around the curve, along the ends of the axis where they leave it', () => {
+		const y = magnitudeAxis([series([-100, -1])], 0, 100);
+		const band = { separationsNm: [10, 100], low: [10, 0], high: [1000, 10] };
+		expect(bandPath(band, x, y)).toBe('M100.0 0.0L200.0 50.0L200.0 100.0L100.0 50.0Z');
 	});
 });
 

@@ -1,4 +1,5 @@
 import type { LogScale } from './log-scale.ts';
+import type { Band } from './bands.ts';
 import type { Series } from './series.ts';
 
 /** From results to paths: pure, in pixels of the strip. */
@@ -81,6 +82,18 @@ export function magnitudePaths(series: Series, x: LogScale, y: MagnitudeAxis): M
 		before = sign;
 	}
 	return paths;
+}
+
+/** The area between the edges of a band; edges beyond the axis run along it. */
+export function bandPath({ separationsNm, low, high }: Band, x: LogScale, y: MagnitudeAxis): string {
+	const [top, bottom] = [y.at(10 ** y.high), y.at(10 ** y.low)];
+	const place = (nm: number, magnitude: number): string => {
+		const at = magnitude > 0 ? Math.max(top, y.at(magnitude)) : bottom;
+		return `${fixed(x.at(nm))} ${fixed(at)}`;
+	};
+	const upper = separationsNm.map((nm, index) => place(nm, high[index]));
+	const lower = separationsNm.map((nm, index) => place(nm, low[index])).reverse();
+	return `M${[...upper, ...lower].join('L')}Z`;
 }
 
 /** A plain line; values outside the limits are held at them, undefined ones break it. */

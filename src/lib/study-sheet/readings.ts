@@ -14,6 +14,8 @@ export interface Reading {
 	why: string | undefined;
 	shapeError: number | undefined;
 	staticShare: number | undefined;
+	/** One standard uncertainty that the data leave, absolute; absent where nothing is stated about them. */
+	deviation?: number | undefined;
 	/** It still answers the question before; the new one is being computed. */
 	stale: boolean;
 }

@@ -7,7 +7,7 @@ function choice(letter: string, ink: number, values: number[]): DrawnChoice {
 	const separationsNm = [1, 100, 10_000].slice(0, values.length);
 	const series = { separationsNm, values, bounds: values.map(() => 1e-9), met: values.map(() => true) };
 	return {
-		...{ letter, ink, name: letter, series, previous: null, runs: signRuns(series) },
+		...{ letter, ink, name: letter, series, previous: null, band: null, runs: signRuns(series) },
 		shares: { separationsNm: [], static: [], te: [] },
 		difference: null,
 		ratio: { ...series, values: values.map((value) => value / 10) }

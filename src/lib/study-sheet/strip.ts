@@ -1,6 +1,7 @@
 import type { Series, Shares } from './series.ts';
 import type { SignRun } from './sign-runs.ts';
 import type { Compared } from './comparison.ts';
+import type { Band } from './bands.ts';
 
 /** What every strip of the stack is given: one model choice, already turned into columns. */
 export interface DrawnChoice {
@@ -17,6 +18,8 @@ export interface DrawnChoice {
 	difference: Compared | null;
 	/** Ratio to ideal conductors, below zero where both attract so that it is drawn solid there. */
 	ratio: Series;
+	/** One standard uncertainty of the data to either side, where something is stated about them. */
+	band: Band | null;
 }
 
 /** Room beside the axis for numerals and for the labels at line ends. */

@@ -1,5 +1,5 @@
 import { encodeStudy } from '../../schemas/study-encode.ts';
-import { choiceRequest, closestNm, DETAILS } from '../../schemas/study-request.ts';
+import { bandSeparations, choiceRequest, closestNm, DETAILS } from '../../schemas/study-request.ts';
 import { CHOICES_MAX } from '../../schemas/study-limits.ts';
 import type { Study } from '../../schemas/study.ts';
 import type { Edit } from '../arrangement/edits.ts';
@@ -30,6 +30,9 @@ export class StudySession {
 	/** One computation a choice: its curve, and the numbers exactly under the hairlines. */
 	readonly curves = Array.from({ length: CHOICES_MAX }, () => new Curve());
 	readonly exact = Array.from({ length: CHOICES_MAX }, () => new Curve());
+
+	/** What uncertain data do to each curve, at few separations; only where something is stated or looked at. */
+	readonly bands = Array.from({ length: CHOICES_MAX }, () => new Curve());
 
 	/** The long answers for the red hairline, computed while somebody looks at them. */
 	readonly details = Array.from({ length: CHOICES_MAX }, () => new Curve());
@@ -123,6 +126,19 @@ export class StudySession {
 		});
 	}
 
+	/** Asks how uncertain the data make each curve: where the study assumes something of them, or its details are open. */
+	computeBands(): void {
+		const wanted = this.detailed || this.study.dataUncertainty !== undefined;
+		this.bands.forEach((curve, index) => {
+			const choice = this.study.choices[index];
+			if (choice && wanted)
+				curve.ask(choiceRequest(this.study, choice, bandSeparations(this.study), ['uncertainty']), {
+					keepPrevious: false
+				});
+			else curve.clear();
+		});
+	}
+
 	/** Numbers exactly under the hairlines, once these are at rest. */
 	computeExact(): void {
 		const { atNm, parkedNm, choices } = this.study;
@@ -151,6 +167,6 @@ export class StudySession {
 
 	stop(): void {
 		clearTimeout(this.#rest);
-		for (const curve of [...this.curves, ...this.exact, ...this.details]) curve.clear();
+		for (const curve of [...this.curves, ...this.exact, ...this.details, ...this.bands]) curve.clear();
 	}
 }

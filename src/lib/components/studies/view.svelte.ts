@@ -4,7 +4,8 @@ import { scaleFor } from '../../format/units.ts';
 import { encodeStudy } from '../../schemas/study-encode.ts';
 import { choiceLetter } from '../../schemas/study-slots.ts';
 import { otherMessages } from '../arrangement/issues.ts';
-import { drawnChoices } from '../../study-sheet/drawn.ts';
+import { deviationAt, deviationsOf } from '../../study-sheet/bands.ts';
+import { drawnChoices, isPerLength } from '../../study-sheet/drawn.ts';
 import { quantityFacts, quantityHeading, quantityWord, shapeName } from '../../study-sheet/quantities.ts';
 import { differencesFrom, readingAt, spreadOf, type Reading } from '../../study-sheet/readings.ts';
 import type { StudySession } from './session.svelte.ts';
@@ -53,7 +54,8 @@ export class StudyView {
 			this.choices.map(({ name }, index) => ({
 				name,
 				points: this.curves[index].points,
-				previous: this.curves[index].previous
+				previous: this.curves[index].previous,
+				uncertain: this.#session.bands[index].points
 			})),
 			this.quantity,
 			this.quantities.solid,
@@ -77,9 +79,11 @@ export class StudyView {
 		)
 	);
 	warnings = $derived(
-		this.curves.flatMap(({ warnings }, index) =>
-			warnings.map(({ text }) => ({ text, letter: this.letters[index] }))
-		)
+		this.curves.flatMap(({ warnings }, index) => {
+			// Of the same arrangement: only what is said of its uncertainty is new.
+			const ofBand = this.#session.bands[index].warnings.filter(({ code }) => code === 'uncertainty-order');
+			return [...warnings, ...ofBand].map(({ text }) => ({ text, letter: this.letters[index] }));
+		})
 	);
 	issues = $derived(this.curves.flatMap(({ problem }) => problem?.issues ?? []));
 	/** Trouble that no field can show, one list a choice. */
@@ -139,7 +143,14 @@ export class StudyView {
 	#readingsAt(atNm: number): Reading[] {
 		return this.sources.flatMap((source, index) => {
 			const reading = readingAt(source, this.#session.exact[index].points, this.quantity, atNm);
-			return reading ? [{ ...reading, stale: !this.curves[index].fresh }] : [];
+			if (!reading) return [];
+			const deviations = deviationsOf(
+				this.#session.bands[index].points,
+				this.quantity,
+				isPerLength(this.shape)
+			);
+			const deviation = deviations === null ? undefined : deviationAt(deviations, atNm);
+			return [{ ...reading, deviation, stale: !this.curves[index].fresh }];
 		});
 	}
 }
