@@ -24,6 +24,21 @@ test('an assumed uncertainty of the data is carried to the pressure', async ({ p
 	await expect(page.getByRole('textbox', { name: 'Every permittivity, relative' })).toHaveValue('5 %');
 	await page.getByText(/^More about/).click();
 	await expect(page.getByRole('row', { name: /Standard uncertainty of pressure.*±/ })).toBeVisible();
+	const block = page.getByRole('region', { name: 'What this number rests on' });
+	await expect(block.getByText(/^±.*% of the value$/)).toBeVisible();
+	await expect(page.locator('[data-band="A"]')).toHaveAttribute('d', /Z$/);
+	await expect(
+		page.getByText('band: data uncertain by one standard deviation', { exact: false })
+	).toBeVisible();
+});
+
+test('a uniaxial body has its terms and its uncertainty too', async ({ page }) => {
+	const sapphire = 'sapphire-ordinary-two-oscillators@1.0*sapphire-extraordinary-two-oscillators@1.0';
+	const medium = 'vacuum@1.0&right=silica-two-oscillators@1.0';
+	await openStudy(page, `?left=${sapphire}&medium=${medium}&at=20&uncertainty=0.02`);
+	await page.getByText(/^More about/).click();
+	await expect(page.getByRole('img', { name: /n = 0 carries/ })).toBeVisible();
+	await expect(page.getByRole('row', { name: /Standard uncertainty of pressure.*±/ })).toBeVisible();
 });
 
 test('salt screens, and roughness ends the curve where peaks come too near', async ({ page }) => {
