@@ -223,6 +223,12 @@ describe('a screening', () => {
 			await names(lead, 'others'),
 			await names(stranger, 'others')
 		]).toEqual([1, 1, 0]);
+		await expect(screenings.share(lead, id, { visibility: 'private', group: null })).rejects.toBeInstanceOf(
+			Forbidden
+		);
 		await screenings.cancel(researcher, id);
+		// Ended or not, who sees it is its owner's to say.
+		await screenings.share(researcher, id, { visibility: 'private', group: null });
+		await expect(screenings.get(curator, id)).rejects.toBeInstanceOf(NotFound);
 	});
 });

@@ -103,7 +103,8 @@ export const POLICY: Readonly<Record<string, Row>> = {
 		'?/cancel': 'people',
 		'?/pause': 'people',
 		'?/resume': 'people',
-		'?/repeat': 'people'
+		'?/repeat': 'people',
+		'?/share': 'people'
 	},
 	'/screenings/[id]/progress': { GET: 'people' },
 	'/screenings/[id]/rows': { GET: 'people' },

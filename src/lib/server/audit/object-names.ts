@@ -7,6 +7,7 @@ import { group } from '../db/schema/group.ts';
 import { invitation } from '../db/schema/invitation.ts';
 import { material } from '../db/schema/material.ts';
 import { person } from '../db/schema/people.ts';
+import { screening } from '../db/schema/screening.ts';
 import { source } from '../db/schema/source.ts';
 import { study } from '../db/schema/study.ts';
 import { apiToken } from '../db/schema/token.ts';
@@ -37,6 +38,7 @@ const KINDS: { types: string[]; of: Named }[] = [
 	{ types: ['source'], of: { table: source, id: source.id, name: source.slug } },
 	{ types: ['dataset'], of: { table: dataset, id: dataset.id, name: dataset.slug } },
 	{ types: ['study'], of: { table: study, id: study.id, name: study.name } },
+	{ types: ['screening'], of: { table: screening, id: screening.id, name: screening.name } },
 	{ types: ['version'], of: { table: version, id: version.id, name: versionRef } }
 ];
 

@@ -14,6 +14,7 @@ import { list as listUploads } from '../library/uploads.ts';
 import { enqueue } from '../outbox/enqueue.ts';
 import { forgetStudies } from '../studies/forget.ts';
 import { ownRecords } from '../records/records.ts';
+import { ownScreenings } from '../screening/screenings.ts';
 import { ownStudies } from '../studies/studies.ts';
 import { exitAll } from './groups.ts';
 import { keepingAnAdministrator } from './people.ts';
@@ -68,6 +69,7 @@ export async function exportData(actor: SignedIn): Promise<Record<string, unknow
 		tokens: await listTokens(actor),
 		mails,
 		records: await ownRecords(actor),
+		screenings: await ownScreenings(actor),
 		studies: await ownStudies(actor),
 		uploads: await listUploads(actor),
 		trail

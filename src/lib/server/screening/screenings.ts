@@ -260,3 +260,26 @@ export async function repeat(actor: SignedIn, id: string): Promise<ScreeningSumm
 	};
 	return create(actor, again, id);
 }
+
+/** By its owner, at any time; what was computed stays as it is. */
+export async function share(
+	actor: SignedIn,
+	id: string,
+	{ visibility, group: slug }: Pick<NewScreening, 'visibility' | 'group'>
+): Promise<void> {
+	const { own } = await get(actor, id);
+	if (!own) throw new Forbidden('Who sees a screening is for its owner to say.');
+	const groupId = groupOf(actor, slug, visibility);
+	await database().transaction(async (tx) => {
+		await tx.update(screening).set({ visibility, groupId }).where(eq(screening.id, id));
+		await audited(tx, actor, 'share', id, { visibility });
+	});
+}
+
+/** Of somebody's own, for the copy of their data. */
+export async function ownScreenings(owner: SignedIn): Promise<ScreeningSummary[]> {
+	const rows = await select(database(), eq(screening.ownerId, owner.id))
+		.orderBy(screening.createdAt)
+		.limit(10_000);
+	return rows.map(toSummary);
+}

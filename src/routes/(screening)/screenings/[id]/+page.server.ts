@@ -2,7 +2,7 @@ import { fail, redirect } from '@sveltejs/kit';
 import { rowsQuery } from '$lib/schemas/screening.ts';
 import { FIGURES, windowOf } from '$lib/screening/criteria.ts';
 import { personOf } from '$lib/server/auth/require.ts';
-import { attempt } from '$lib/server/people/attempt.ts';
+import { attempt, field } from '$lib/server/people/attempt.ts';
 import { citation, differences } from '$lib/server/screening/exports.ts';
 import { grid, rightNames, rows } from '$lib/server/screening/rows.ts';
 import * as screenings from '$lib/server/screening/screenings.ts';
@@ -27,6 +27,7 @@ export const load: PageServerLoad = ({ locals, params, url }) =>
 		return {
 			screening,
 			own,
+			groups: actor.groups.map(({ slug, name }) => ({ slug, name })),
 			statement: row.statement,
 			figure: FIGURES[row.statement.criterion.kind],
 			separationsNm: row.plan.separationsNm,
@@ -66,6 +67,15 @@ export const actions: Actions = {
 	cancel: step('cancel'),
 	pause: step('pause'),
 	resume: step('resume'),
+	share: async ({ request, locals, params }) => {
+		const slug = field(await request.formData(), 'visibility');
+		const to =
+			slug === ''
+				? { visibility: 'private' as const, group: null }
+				: { visibility: 'group' as const, group: slug };
+		const done = await attempt(() => screenings.share(personOf(locals.principal), params.id, to));
+		return done.failed ? fail(done.status, done.refused) : { said: 'done' };
+	},
 	repeat: async ({ locals, params }) => {
 		const made = await attempt(() => screenings.repeat(personOf(locals.principal), params.id));
 		if (made.failed) return fail(made.status, made.refused);
