@@ -27,7 +27,11 @@ const reached: string[] = [];
 beforeAll(async () => {
 	server = await startPeopleServer();
 	browser = await openChromium();
-	const context = await browser.newContext({ baseURL: server.origin });
+	const context = await browser.newContext({
+		baseURL: server.origin,
+		// The header that the server is told to take the client's address from.
+		extraHTTPHeaders: { 'x-test-client': '192.0.2.77' }
+	});
 	page = await context.newPage();
 	await page.exposeFunction('hostile', () => reached.push(`called at ${page.url()}`));
 	page.on('dialog', (dialog) => {
@@ -114,6 +118,47 @@ describe('hostile text', () => {
 		}
 		await expectInert('/library?withoutData=1&search=hostile', []);
 	}, 120_000);
+
+	it('in studies, records and screenings stays text', async () => {
+		await become('Larkmoor researcher');
+		const made = await page.evaluate(async (texts) => {
+			const send = async (to: string, body: unknown) => {
+				const headers = { 'content-type': 'application/json' };
+				return (await fetch(to, { method: 'POST', headers, body: JSON.stringify(body) })).json();
+			};
+			const query = (name: string) =>
+				`?left=gold-drude@1.0&medium=vacuum@1.0&right=gold-drude@1.0&at=50&choice=${encodeURIComponent(name.slice(0, 40).replace(/[%;]/g, ' '))}`;
+			const found = [];
+			for (const text of texts) {
+				const { study } = await send('/api/v1/studies', {
+					...{ name: text, notes: text, reasons: [text] },
+					query: query(text)
+				});
+				const { record } = await send(`/api/v1/studies/${study.id}/freeze`, { revision: 1, authors: [text] });
+				const { screening } = await send('/api/v1/screenings', {
+					name: text,
+					statement: {
+						left: { versions: ['gold-drude@1.0'] },
+						medium: { versions: ['vacuum@1.0'] },
+						separationsNm: [50],
+						criterion: { kind: 'repulsive' }
+					}
+				});
+				found.push({ text, study: study.id, record: record.checksum, screening: screening.id });
+			}
+			return found;
+		}, CORPUS);
+		for (const { text, study, record, screening } of made) {
+			await expectInert(`/studies/${study}`, [text]);
+			await expectInert(`/studies/${study}/freeze`, [text]);
+			await expectInert(`/records/${record}`, [text]);
+			// Opened by itself, the picture is a document of its own.
+			await page.goto(`/records/${record}/sheet.svg`);
+			expect(reached).toEqual([]);
+			await expectInert(`/screenings/${screening}`, [text]);
+		}
+		for (const list of ['/studies', '/records', '/screenings']) await expectInert(list, CORPUS);
+	}, 180_000);
 
 	it('in an address stays text', async () => {
 		for (const text of CORPUS) {
