@@ -20,10 +20,79 @@ const THROUGH_THE_SERVER = ['tests/people/policy-walk.test.ts'];
 /** @typedef {{ file: string, from: string, to: string, tests?: string[] }} Mutation */
 
 const OF_STUDIES = ['tests/db/studies.test.ts'];
+const OF_RECORDS = ['tests/db/records.test.ts'];
+const OF_SHARING = ['tests/db/study-sharing.test.ts'];
+const OF_SCREENINGS = ['tests/db/screenings.test.ts'];
 const OF_THE_DESK = ['tests/db/curators-desk.test.ts'];
 
 /** @type {Mutation[]} */
 const guards = [
+	{
+		file: 'records/access.ts',
+		from: "inArray(recordAccess.visibility, ['signed-in', 'everybody']),",
+		to: "inArray(recordAccess.visibility, ['private', 'group', 'signed-in', 'everybody']),",
+		tests: OF_RECORDS
+	},
+	{
+		file: 'records/access.ts',
+		from: "if (!reader) return eq(recordAccess.visibility, 'everybody');",
+		to: 'if (!reader) return inArray(recordAccess.visibility, ["everybody", "signed-in"]);',
+		tests: OF_RECORDS
+	},
+	{
+		file: 'records/records.ts',
+		from: "if (!own) throw new Forbidden('Who sees a record is for its owner to say.');",
+		to: '',
+		tests: OF_RECORDS
+	},
+	{
+		file: 'records/freeze.ts',
+		from: 'if (is !== wanted)',
+		to: 'if (is !== is)',
+		tests: OF_RECORDS
+	},
+	{
+		file: 'studies/links.ts',
+		from: '						isNull(studyLink.revokedAt),\n							gt(studyLink.expiresAt, now())',
+		to: '						gt(studyLink.expiresAt, now())',
+		tests: OF_SHARING
+	},
+	{
+		file: 'studies/links.ts',
+		from: '							gt(studyLink.expiresAt, now())\n',
+		to: '\n',
+		tests: OF_SHARING
+	},
+	{
+		file: 'studies/links.ts',
+		from: "if (!own) throw new Forbidden('Who sees a study is for its owner to say.');",
+		to: '',
+		tests: OF_SHARING
+	},
+	{
+		file: 'studies/transfer.ts',
+		from: "if (!own) throw new Forbidden('A study is given away by its owner.');",
+		to: '',
+		tests: OF_SHARING
+	},
+	{
+		file: 'studies/group-defaults.ts',
+		from: 'requireManagesGroup(actor, id);',
+		to: '',
+		tests: OF_SHARING
+	},
+	{
+		file: 'screening/screenings.ts',
+		from: "if (!own) throw new Forbidden('A screening is steered by its owner.');",
+		to: '',
+		tests: OF_SCREENINGS
+	},
+	{
+		file: 'screening/access.ts',
+		from: "eq(screening.visibility, 'signed-in'),",
+		to: "inArray(screening.visibility, ['private', 'group', 'signed-in']),",
+		tests: OF_SCREENINGS
+	},
 	{
 		file: 'studies/access.ts',
 		from: "eq(study.visibility, 'signed-in'),",
