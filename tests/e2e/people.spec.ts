@@ -35,6 +35,7 @@ test('signs in by a link from the mailbox, and out again', async ({ page }) => {
 	await page.goto('/demo/mail');
 	const before = await mails.count();
 	await page.goto('/sign-in');
+	await page.waitForLoadState('networkidle');
 	await page.getByLabel('E-mail address').fill('researcher@larkmoor.example');
 	await page.getByRole('button', { name: 'Send a sign-in link' }).click();
 	await expect(page.getByRole('status')).toContainText('a mail with a link is on its way');

@@ -23,6 +23,7 @@ function facts(ref: string, name: string, more: Partial<VersionFacts> = {}): Ver
 			hazards: null,
 			measuredRangeEv: null,
 			sources: [],
+			staticPermittivity: null,
 			reliance: null
 		},
 		material: { slug: name, name, formula: null, class: 'metal' },

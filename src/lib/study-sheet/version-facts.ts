@@ -14,6 +14,8 @@ export interface VersionFacts {
 	/** Full name of the version that supersedes it. */
 	supersededBy: string | null;
 	staticLimit: StaticLimit;
+	/** eps(0) of the model; null where it conducts. */
+	staticPermittivity: number | null;
 	hazards: { codes: string[]; texts: string[]; signalWord: string | null; caution: string } | null;
 	/** Energies between which the table was measured, eV; null for closed forms. */
 	measuredRangeEv: { low: number; high: number } | null;

@@ -13,6 +13,7 @@ function facts(ref: string, slug: string, name: string, datasetTitle: string): V
 			hazards: null,
 			measuredRangeEv: null,
 			sources: [],
+			staticPermittivity: null,
 			reliance: null
 		},
 		material: { slug, name, formula: null, class: 'liquid' }

@@ -18,6 +18,13 @@ describe('marks of the ruler', () => {
 		expect(names(marks.filter(({ own }) => own))).toEqual(['Debye length', 'contact', 'A balances, stable']);
 	});
 
+	it('include the Debye length of salt: 0.304 nm over the root of the molarity in water at 298 K (Israelachvili 2011)', () => {
+		const salted = { ...bare, temperatureK: 298.15, salt: { molPerL: 0.01, valence: 1 as const } };
+		const found = rulerMarks(salted, [], 78.4).find(({ label }) => label === 'Debye length');
+		expect(found?.separationNm).toBeCloseTo(3.04, 2);
+		expect(names(rulerMarks(salted, []))).not.toContain('Debye length');
+	});
+
 	it('let a landmark go unnamed where its label would cover one of the reader', () => {
 		const marks = rulerMarks({ ...bare, marks: [{ label: 'dimple', separationNm: 110 }] }, []);
 		const named = labelled(marks, (nm) => 150 * Math.log10(nm), 80);

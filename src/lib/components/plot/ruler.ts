@@ -1,3 +1,4 @@
+import { debyeLength } from '../../engine/ions.ts';
 import type { Study } from '../../schemas/study.ts';
 
 /** Landmarks that give a separation a size one knows, and lengths that belong to the arrangement. */
@@ -22,9 +23,18 @@ const LANDMARKS: RulerMark[] = [
 /** The length at which thermal photons take over: hbar c / k_B T. */
 export const thermalLengthNm = (temperatureK: number): number => THERMAL_NM_K / temperatureK;
 
+/**
+ * @param mediumAtRest  static permittivity of the medium, where it is known and finite: with it salt has a Debye length
+ */
 export function rulerMarks(
-	{ temperatureK, debyeLengthNm, marks: kept }: Pick<Study, 'temperatureK' | 'debyeLengthNm' | 'marks'>,
-	equilibria: readonly { letter: string; separationNm: number; stable: boolean }[]
+	{
+		temperatureK,
+		debyeLengthNm,
+		salt,
+		marks: kept
+	}: Pick<Study, 'temperatureK' | 'debyeLengthNm' | 'salt' | 'marks'>,
+	equilibria: readonly { letter: string; separationNm: number; stable: boolean }[],
+	mediumAtRest: number | null = null
 ): RulerMark[] {
 	const marks = [...LANDMARKS];
 	if (temperatureK > 0) {
@@ -32,6 +42,12 @@ export function rulerMarks(
 	}
 	if (debyeLengthNm !== undefined)
 		marks.push({ label: 'Debye length', separationNm: debyeLengthNm, own: true });
+	else if (salt && mediumAtRest !== null && temperatureK > 0)
+		marks.push({
+			label: 'Debye length',
+			separationNm: debyeLength(salt.molPerL, salt.valence, temperatureK, mediumAtRest) * 1e9,
+			own: true
+		});
 	marks.push(...kept.map((mark) => ({ ...mark, own: true })));
 	for (const { letter, separationNm, stable } of equilibria) {
 		marks.push({ label: `${letter} balances, ${stable ? 'stable' : 'unstable'}`, separationNm, own: true });

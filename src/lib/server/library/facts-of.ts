@@ -1,3 +1,4 @@
+import { staticPermittivity } from '../../engine/checks/static-permittivity.ts';
 import type { PermittivityModel } from '../../engine/contract.ts';
 import type { ResolvedVersion } from '../../schemas/version.ts';
 import { staticLimit } from '../../study-sheet/conduction.ts';
@@ -48,6 +49,7 @@ export function factsOf(version: ResolvedVersion, sharesOf: SharesOf): VersionFa
 		supersededBy:
 			supersededBy === null || supersededBy.includes('@') ? supersededBy : `${slug}@${supersededBy}`,
 		staticLimit: staticLimit(version.model),
+		staticPermittivity: staticPermittivity(version.model),
 		hazards: material.hazards && {
 			codes: material.hazards.statements.map(({ code }) => code),
 			texts: material.hazards.statements.map(({ text }) => text),
