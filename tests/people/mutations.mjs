@@ -29,14 +29,8 @@ const OF_THE_DESK = ['tests/db/curators-desk.test.ts'];
 const guards = [
 	{
 		file: 'records/access.ts',
-		from: "inArray(recordAccess.visibility, ['signed-in', 'everybody']),",
-		to: "inArray(recordAccess.visibility, ['private', 'group', 'signed-in', 'everybody']),",
-		tests: OF_RECORDS
-	},
-	{
-		file: 'records/access.ts',
 		from: "if (!reader) return eq(recordAccess.visibility, 'everybody');",
-		to: 'if (!reader) return inArray(recordAccess.visibility, ["everybody", "signed-in"]);',
+		to: "if (!reader) return eq(recordAccess.visibility, 'signed-in');",
 		tests: OF_RECORDS
 	},
 	{
@@ -88,15 +82,15 @@ const guards = [
 		tests: OF_SCREENINGS
 	},
 	{
-		file: 'screening/access.ts',
-		from: "eq(screening.visibility, 'signed-in'),",
-		to: "inArray(screening.visibility, ['private', 'group', 'signed-in']),",
-		tests: OF_SCREENINGS
+		file: 'people/sharing.ts',
+		from: 'inArray(visibility, [...open]),',
+		to: "inArray(visibility, [...open, 'private', 'group']),",
+		tests: OF_STUDIES
 	},
 	{
-		file: 'studies/access.ts',
-		from: "eq(study.visibility, 'signed-in'),",
-		to: 'sql`true`,',
+		file: 'people/sharing.ts',
+		from: "and(eq(visibility, 'group'), inArray(groupId, groups))",
+		to: 'inArray(groupId, groups)',
 		tests: OF_STUDIES
 	},
 	{ file: 'studies/access.ts', from: "visibility === 'group' &&", to: '', tests: OF_STUDIES },
