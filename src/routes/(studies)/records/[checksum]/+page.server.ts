@@ -13,6 +13,8 @@ import * as records from '$lib/server/records/records.ts';
 import { notesTree } from '$lib/server/studies/notes.ts';
 import { z } from 'zod';
 import { answered } from '../../../(library)/answered.ts';
+import { BASE_UNITS } from '$lib/study-sheet/curve-table.ts';
+import { quantityFacts } from '$lib/study-sheet/quantities.ts';
 import { rowsOf } from './rows.ts';
 import type { Actions, PageServerLoad } from './$types';
 
@@ -29,6 +31,8 @@ export const load: PageServerLoad = async ({ locals, params, url }) => {
 			...{ letter, name, reason, inputChecksum, warnings, equilibria }
 		})),
 		quantity: study.quantity,
+		unit:
+			quantityFacts(study.quantity, study.shape).unit === 'lineForce' ? 'N/m' : BASE_UNITS[study.quantity],
 		rows: rowsOf(study, choices),
 		notes: notesTree(content.notes),
 		citation: plain(record, url.origin),
